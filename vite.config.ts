@@ -1,0 +1,47 @@
+import react from '@vitejs/plugin-react';
+import tailwindcss from '@tailwindcss/vite';
+import { defineConfig } from 'vitest/config';
+
+const apiPort = process.env['PORT'] ?? '4310';
+
+export default defineConfig({
+  plugins: [react(), tailwindcss()],
+  server: { port: 4311, proxy: { '/api': `http://localhost:${apiPort}` } },
+  build: { outDir: 'dist/client', emptyOutDir: true, sourcemap: false, chunkSizeWarningLimit: 900 },
+  test: {
+    projects: [
+      {
+        extends: true,
+        test: {
+          name: 'node',
+          environment: 'node',
+          include: ['tests/**/*.test.ts'],
+          exclude: ['tests/journeys/**'],
+          testTimeout: 60_000,
+          hookTimeout: 60_000,
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'dom',
+          environment: 'jsdom',
+          include: ['tests/**/*.test.tsx'],
+          setupFiles: ['tests/support/dom-setup.ts'],
+          testTimeout: 30_000,
+        },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'journeys',
+          environment: 'node',
+          include: ['tests/journeys/**/*.test.ts'],
+          fileParallelism: false,
+          testTimeout: 600_000,
+          hookTimeout: 300_000,
+        },
+      },
+    ],
+  },
+});
