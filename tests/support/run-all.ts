@@ -1,0 +1,57 @@
+import { spawnSync } from 'node:child_process';
+import { mkdtempSync, readFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import { join } from 'node:path';
+import * as z from 'zod';
+import { ensureChromium } from './chromium.ts';
+
+/**
+ * `npm test`: lint, types, unit and API tests, build, browser journeys, in that order. Goes on after
+ * a failure so that one run tells everything; ends with one plain line that counts all of it.
+ */
+const reportFolder = mkdtempSync(join(tmpdir(), 'selvage-test-'));
+const Report = z.object({ numPassedTests: z.number(), numFailedTests: z.number(), success: z.boolean() });
+const total = { passed: 0, failed: 0 };
+
+function command(name: string, args: string[]): boolean {
+  console.log(`\n— ${name}`);
+  const { status } = spawnSync('npx', ['--no-install', ...args], { stdio: 'inherit' });
+  return status === 0;
+}
+
+function check(name: string, args: string[]): void {
+  if (command(name, args)) total.passed += 1;
+  else total.failed += 1;
+}
+
+function vitest(name: string, projects: string[]): void {
+  const file = join(reportFolder, `${name.replaceAll(' ', '-')}.json`);
+  const selected = projects.flatMap((project) => ['--project', project]);
+  const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${file}`];
+  const ok = command(name, ['vitest', 'run', ...selected, ...reporters]);
+  try {
+    const report = Report.parse(JSON.parse(readFileSync(file, 'utf8')));
+    total.passed += report.numPassedTests;
+    total.failed += report.numFailedTests;
+    if (!ok && report.numFailedTests === 0) total.failed += 1;
+  } catch {
+    console.log(`${name}: no report was written`);
+    total.failed += 1;
+  }
+}
+
+check('lint', ['eslint', '.', '--max-warnings', '0']);
+check('types', ['tsc', '--noEmit']);
+vitest('unit, reference and API tests', ['node', 'dom']);
+check('build of the client', ['vite', 'build', '--logLevel', 'warn']);
+check('build of the server', ['tsc', '-p', 'tsconfig.server.json']);
+check('layout of the built server', ['tsx', 'server/cli/finish-build.ts']);
+if (ensureChromium()) {
+  vitest('browser journeys', ['journeys']);
+} else {
+  console.log('browser journeys: no Chromium found. Install it (Debian: apt-get install chromium) or set CHROMIUM_PATH.');
+  total.failed += 1;
+}
+
+console.log(`\n${total.passed} passed, ${total.failed} failed`);
+process.exitCode = total.failed === 0 ? 0 : 1;
