@@ -37,4 +37,5 @@ export function applyReadOnlyPragmas(connection: Database, busyTimeoutMs: number
   connection.pragma(`busy_timeout = ${busyTimeoutMs}`);
   connection.pragma(`trusted_schema = ${PRAGMAS.trusted_schema}`);
   connection.pragma(`foreign_keys = ${PRAGMAS.foreign_keys}`);
+  connection.pragma(`synchronous = ${PRAGMAS.synchronous}`);
 }
