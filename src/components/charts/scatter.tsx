@@ -1,0 +1,130 @@
+import type { KeyboardEvent } from 'react';
+import { ChartFrame } from './chart-frame.tsx';
+import { ChartTooltip } from './chart-tooltip.tsx';
+import { isPicked } from './chart-types.ts';
+import { LegendRow } from './legend-row.tsx';
+import { ScatterCanvas } from './scatter-canvas.tsx';
+import { ScatterDrawing } from './scatter-drawing.tsx';
+import { drawingNote, drawingOf, marksMarkup } from './scatter-paint.ts';
+import { nearestRow, rowsByRule, rowsInPolygon } from './scatter-points.ts';
+import { ScatterRule } from './scatter-rule.tsx';
+import { useScatter } from './use-scatter.ts';
+import type { ScatterProps, ScatterState } from './use-scatter.ts';
+import { useScatterGesture } from './use-scatter-gesture.ts';
+
+const REACH_PX = 12;
+const shortName = (label: string) => label.split(',')[0] ?? label;
+
+/** Points of two variables, up to some 200,000: lasso, box, pan, rule; linked hover and selection. */
+export function Scatter(props: ScatterProps) {
+  const state = useScatter(props);
+  const { points, view, slotOf, slots, isShown } = state;
+  const { selected } = props;
+  const gesture = useGesture(props, state);
+  const exportUnder = () => {
+    const { every } = drawingOf(points.rows.length);
+    const picked = (row: number) => isPicked(selected, row);
+    const takes = (row: number, i: number) => (i % every === 0 || picked(row)) && isShown(row);
+    return marksMarkup({ points, view, slotOf, takes }, picked);
+  };
+  return (
+    <ChartFrame
+      {...props}
+      measured={state.measured}
+      usualHeight={340}
+      under={() => <ScatterCanvas layer={{ points, view, slotOf, slots, isShown, picked: selected }} />}
+      exportUnder={exportUnder}
+      over={() => <Pointer props={props} state={state} handlers={gesture.handlers} />}
+      foot={<Foot props={props} state={state} />}
+    >
+      {() => <ScatterDrawing state={state} xLabel={props.xLabel} yLabel={props.yLabel} rays={props.rays} outline={gesture.outline} />}
+    </ChartFrame>
+  );
+}
+
+function useGesture({ onSelect }: ScatterProps, state: ScatterState) {
+  const { points, view, isShown, tool, hover } = state;
+  const nearest = (at: readonly [number, number]) => nearestRow(points, view, at[0], at[1], REACH_PX, isShown);
+  return useScatterGesture(
+    {
+      tool,
+      onPolygon: (polygon, mode) =>
+        onSelect?.(rowsInPolygon(points, view, polygon, isShown), { by: tool === 'box' ? 'box' : 'lasso', mode }),
+      onClick: (at, mode) => {
+        const row = nearest(at);
+        if (row !== null) onSelect?.([row], { by: 'click', mode });
+        else if (mode === 'replace') onSelect?.([], { by: 'clear', mode });
+      },
+      onMove: (at) => hover(at === null ? null : nearest(at)),
+    },
+    view.area,
+  );
+}
+
+interface PartProps {
+  props: ScatterProps;
+  state: ScatterState;
+}
+
+/** Takes the pointer and the keys over the plot area, and shows the tooltip. */
+function Pointer({ props, state, handlers }: PartProps & { handlers: ReturnType<typeof useGesture>['handlers'] }) {
+  const { view, tool, zoom, hovered, measured } = state;
+  const { left, top, width, height } = view.area;
+  const { attach } = zoom;
+  const onKey = (event: KeyboardEvent) => {
+    if (event.key === 'Escape') props.onSelect?.([], { by: 'clear', mode: 'replace' });
+    else zoom.onKey(event);
+  };
+  const at = hovered === null ? null : state.placeOf(hovered);
+  return (
+    <>
+      <div
+        ref={attach}
+        role="application"
+        tabIndex={0}
+        aria-label={`${props.title}, plot area. Plus and minus zoom, arrows move, 0 fits, Escape clears the selection. To choose points by keys take the Rule tool.`}
+        className="absolute"
+        style={{ left, top, width, height, cursor: tool === 'pan' ? 'grab' : 'crosshair', touchAction: tool === 'rule' ? 'auto' : 'none' }}
+        onKeyDown={onKey}
+        {...handlers}
+      />
+      {hovered !== null && at !== null && props.tooltip !== undefined && (
+        <ChartTooltip {...at} box={measured[1]}>
+          {props.tooltip(hovered)}
+        </ChartTooltip>
+      )}
+    </>
+  );
+}
+
+/** Rule form and legend. */
+function Foot({ props, state }: PartProps) {
+  const { x, y, category, onSelect } = props;
+  const { categories, tool, points, view, hidden, toggle } = state;
+  const note = drawingNote(points.rows.length);
+  return (
+    <>
+      {tool === 'rule' && (
+        <ScatterRule
+          xName={props.xName ?? shortName(props.xLabel)}
+          yName={props.yName ?? shortName(props.yLabel)}
+          categories={categories}
+          onRule={(rule) => onSelect?.(rowsByRule(x, y, category, rule), { by: 'rule', mode: 'replace' })}
+        />
+      )}
+      {(categories.length > 0 || note !== null) && (
+        <LegendRow
+          categories={categories}
+          hidden={hidden}
+          onToggle={toggle}
+          onPick={(index) => {
+            const rule = { x: [null, null], y: [null, null], category: index } as const;
+            onSelect?.(rowsByRule(x, y, category, rule), { by: 'legend', mode: 'replace' });
+          }}
+          inset={view.area.left - 4}
+          note={note}
+        />
+      )}
+    </>
+  );
+}
