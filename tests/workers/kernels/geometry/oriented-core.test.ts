@@ -1,0 +1,136 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { coreFromPlane, lineFromCore, planeFromCore } from '#kernels/geometry/oriented-core.ts';
+import { expectWithin } from '#tests/support/expect-within.ts';
+import { loadReference } from '#tests/support/reference.ts';
+
+const set = loadReference('structure_geometry');
+
+describe('planeFromCore', () => {
+  it.each(
+    set.checksOf('structure', 'alpha_beta_to_plane').map((check) => ({ id: check.id, check })),
+  )('$id agrees with numpy 1.24.2', ({ check }) => {
+    const { azimuth, dip, alpha, beta } = check.inputs;
+    const plane = planeFromCore(
+      { azimuth: Number(azimuth), dip: Number(dip) },
+      { alpha: Number(alpha), beta: Number(beta) },
+    );
+    expectWithin(check, { dip_direction: plane.dipDirection, dip: plane.dip });
+  });
+
+  // Computed from vectors, bottom line.
+  it.each([
+    [90, -60, 30, 0, 90, 90],
+    [90, -60, 30, 180, 30, 90],
+    [90, -60, 30, 90, 64.341, 343.898],
+    [90, -60, 90, 217, 30, 270],
+    [315, -55, 45, 40, 74.422842, 163.154496],
+    [45, -70, 25, 215, 49.379, 88.225],
+    [0, -60, 60, 0, 60, 180],
+  ])(
+    'hole %d/%d, alpha %d, beta %d is %d→%d',
+    (azimuth, dip, alpha, beta, planeDip, dipDirection) => {
+      const plane = planeFromCore({ azimuth, dip }, { alpha, beta });
+      expect(plane.dip).toBeCloseTo(planeDip, 3);
+      expect(plane.dipDirection).toBeCloseTo(dipDirection, 3);
+    },
+  );
+
+  it('knows no dip direction for a flat plane: 000/−60, 60, 180', () => {
+    const plane = planeFromCore({ azimuth: 0, dip: -60 }, { alpha: 60, beta: 180 });
+    expect(plane.dip).toBeCloseTo(0, 9);
+    expect(plane.dipDirection).toBeNull();
+  });
+
+  it('takes the top line and the up-hole end as half a turn each', () => {
+    const hole = { azimuth: 315, dip: -55 };
+    const bottom = planeFromCore(hole, { alpha: 45, beta: 40 });
+    const top = planeFromCore(
+      hole,
+      { alpha: 45, beta: 220 },
+      { referenceLine: 'top', ellipseEnd: 'down-hole' },
+    );
+    const upHole = planeFromCore(
+      hole,
+      { alpha: 45, beta: 220 },
+      { referenceLine: 'bottom', ellipseEnd: 'up-hole' },
+    );
+    const both = planeFromCore(
+      hole,
+      { alpha: 45, beta: 40 },
+      { referenceLine: 'top', ellipseEnd: 'up-hole' },
+    );
+    for (const plane of [top, upHole, both]) {
+      expect(plane.dip).toBeCloseTo(bottom.dip, 9);
+      expect(plane.dipDirection).toBeCloseTo(bottom.dipDirection ?? NaN, 9);
+    }
+  });
+
+  it('says what lowers the worth of a reading', () => {
+    expect(planeFromCore({ azimuth: 0, dip: -60 }, { alpha: 90, beta: 0 }).cautions).toEqual([
+      'beta-undefined',
+    ]);
+    expect(planeFromCore({ azimuth: 0, dip: -60 }, { alpha: 9, beta: 0 }).cautions).toEqual([
+      'beta-poorly-defined',
+    ]);
+    expect(planeFromCore({ azimuth: 0, dip: -86 }, { alpha: 40, beta: 0 }).cautions).toEqual([
+      'steep-hole',
+    ]);
+    expect(planeFromCore({ azimuth: 0, dip: -60 }, { alpha: 40, beta: 0 }).cautions).toEqual([]);
+  });
+
+  it('returns to its angles through the plane (315/−55 gives 45, 40 again)', () => {
+    const hole = { azimuth: 315, dip: -55 };
+    const back = coreFromPlane(hole, planeFromCore(hole, { alpha: 45, beta: 40 }).normal);
+    expect(back.alpha).toBeCloseTo(45, 9);
+    expect(back.beta).toBeCloseTo(40, 9);
+    fc.assert(
+      fc.property(
+        fc.double({ min: 0, max: 359.9, noNaN: true }),
+        fc.double({ min: -89, max: 60, noNaN: true }),
+        fc.double({ min: 1, max: 89, noNaN: true }),
+        fc.double({ min: 0, max: 359.9, noNaN: true }),
+        (azimuth, dip, alpha, beta) => {
+          const drilled = { azimuth, dip };
+          const found = coreFromPlane(drilled, planeFromCore(drilled, { alpha, beta }).normal);
+          expect(found.alpha).toBeCloseTo(alpha, 6);
+          const difference = Math.abs(found.beta - beta);
+          expect(Math.min(difference, 360 - difference)).toBeLessThan(1e-5);
+        },
+      ),
+    );
+    expect(coreFromPlane({ azimuth: 0, dip: -90 }, [0, 0, 1])).toEqual({ alpha: 90, beta: 0 });
+  });
+
+  it.each([
+    [-1, 0],
+    [91, 0],
+    [NaN, 0],
+    [45, -1],
+    [45, 361],
+    [45, NaN],
+  ])('refuses alpha %d, beta %d', (alpha, beta) => {
+    expect(() => planeFromCore({ azimuth: 0, dip: -60 }, { alpha, beta })).toThrow(
+      expect.objectContaining({ code: 'bad-parameter' }),
+    );
+  });
+});
+
+describe('lineFromCore', () => {
+  // Computed from vectors: hole 315/−55, alpha 45, beta 40, bottom line.
+  it.each([
+    [0, 62.863, 220.204],
+    [30, 35.898, 241.513],
+    [90, 21.635, 79.503],
+  ])('gamma %d is %d→%d', (gamma, plunge, trend) => {
+    const line = lineFromCore({ azimuth: 315, dip: -55 }, { alpha: 45, beta: 40 }, gamma);
+    expect(line.plunge).toBeCloseTo(plunge, 3);
+    expect(line.trend).toBeCloseTo(trend, 3);
+  });
+
+  it('refuses a gamma that is no angle', () => {
+    expect(() => lineFromCore({ azimuth: 0, dip: -60 }, { alpha: 45, beta: 0 }, NaN)).toThrow(
+      /gamma/,
+    );
+  });
+});
