@@ -20,17 +20,12 @@ export function ChartTooltip({ x, y, box, children }: Props) {
   return (
     <div
       role="tooltip"
-      className="pointer-events-none absolute z-20 w-max rounded-lg border px-2 py-1"
+      className="pointer-events-none absolute z-20 w-max rounded-3 border border-rule bg-sheet px-2 py-1 text-caption text-ink shadow-float"
       style={{
         left: x,
         top: y,
         maxWidth: Math.min(WIDTH_PX, box.width),
         transform: `translate(${shiftX}, ${shiftY})`,
-        background: 'var(--sheet)',
-        borderColor: 'var(--rule)',
-        boxShadow: 'var(--float)',
-        font: 'var(--t-cap)',
-        color: 'var(--ink)',
       }}
     >
       {children}

@@ -65,8 +65,8 @@ export function selectMode(event: { shiftKey: boolean; altKey: boolean }): Selec
   return event.shiftKey ? 'add' : 'replace';
 }
 
-/** Rows chosen: a set of row numbers, or a mask with one byte a row. */
-export type PickedRows = ReadonlySet<number> | Uint8Array;
+/** Rows chosen: a set of row numbers (or anything that knows its rows), or a mask of one byte a row. */
+export type PickedRows = { has: (row: number) => boolean } | Uint8Array;
 
 export function isPicked(picked: PickedRows | undefined, row: number): boolean {
   if (picked === undefined) return false;

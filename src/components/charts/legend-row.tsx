@@ -19,7 +19,7 @@ export function LegendRow({ categories, hidden, onToggle, onPick, inset = 0, not
   const order = categories.map((category, index) => ({ ...category, index })).sort((a, b) => a.slot - b.slot);
   const hint = onPick === undefined ? '' : '; Shift + click takes its points';
   return (
-    <div className="flex flex-wrap items-center gap-x-2 gap-y-0" style={{ paddingLeft: inset, font: 'var(--t-cap)', color: 'var(--ink-2)' }}>
+    <div className="flex flex-wrap items-center gap-x-2 text-caption text-ink-2" style={{ paddingLeft: inset }}>
       {order.map(({ label, slot, index }) => {
         const isHidden = hidden.has(index);
         return (
@@ -28,7 +28,7 @@ export function LegendRow({ categories, hidden, onToggle, onPick, inset = 0, not
             type="button"
             aria-pressed={!isHidden}
             title={`${isHidden ? 'Show' : 'Hide'} ${label}${hint}`}
-            className="inline-flex min-h-6 cursor-pointer items-center gap-1 rounded-sm px-1 hover:bg-(--trough)"
+            className="inline-flex min-h-6 items-center gap-1 rounded-1 px-1 hover:bg-trough"
             style={isHidden ? { color: 'var(--ink-3)', textDecoration: 'line-through' } : {}}
             onClick={(event) => (event.shiftKey && onPick !== undefined ? onPick(index, event) : onToggle(index))}
           >
@@ -40,9 +40,7 @@ export function LegendRow({ categories, hidden, onToggle, onPick, inset = 0, not
         );
       })}
       {note !== undefined && note !== null && (
-        <span className="ml-auto" style={{ color: 'var(--ink-3)' }}>
-          {note}
-        </span>
+        <span className="ml-auto text-ink-3">{note}</span>
       )}
     </div>
   );

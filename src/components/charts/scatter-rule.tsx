@@ -1,5 +1,6 @@
 import { useId, useState } from 'react';
 import type { FormEvent } from 'react';
+import { Button } from '#src/components/ui/button.tsx';
 import type { Category } from './chart-types.ts';
 import type { SelectionRule } from './scatter-points.ts';
 
@@ -10,8 +11,7 @@ interface Props {
   onRule: (rule: SelectionRule) => void;
 }
 
-const FIELD_STYLE = { borderColor: 'var(--rule-firm)', background: 'var(--sheet)', color: 'var(--ink)', font: 'var(--t-small)' };
-const FIELD_CLASS = 'h-7 rounded border px-1.5';
+const FIELD = 'h-7 rounded-2 border border-rule-firm bg-sheet px-1.5 text-small text-ink';
 
 /** An empty limit is open; a comma counts as a decimal point. `undefined` is not a number. */
 export function readLimit(text: string): number | null | undefined {
@@ -43,14 +43,13 @@ export function ScatterRule({ xName, yName, categories, onRule }: Props) {
       aria-label={label}
       aria-describedby={error === null ? undefined : errorId}
       inputMode="decimal"
-      className={`${FIELD_CLASS} w-16 text-right`}
-      style={FIELD_STYLE}
+      className={`${FIELD} w-16 text-right`}
       value={limits[key]}
       onChange={(event) => setLimits({ ...limits, [key]: event.target.value })}
     />
   );
   return (
-    <form onSubmit={submit} aria-label="Choose points by rule" className="flex flex-wrap items-center gap-x-3 gap-y-1 py-1" style={{ font: 'var(--t-small)', color: 'var(--ink-2)' }}>
+    <form onSubmit={submit} aria-label="Choose points by rule" className="flex flex-wrap items-center gap-x-3 gap-y-1 py-1 text-small text-ink-2">
       <span className="flex items-center gap-1">
         {xName} between {limit('xFrom', `${xName} from`)} and {limit('xTo', `${xName} to`)}
       </span>
@@ -60,7 +59,7 @@ export function ScatterRule({ xName, yName, categories, onRule }: Props) {
       {categories.length > 0 && (
         <label className="flex items-center gap-1">
           in
-          <select className={FIELD_CLASS} style={FIELD_STYLE} value={category} onChange={(event) => setCategory(event.target.value)}>
+          <select className={FIELD} value={category} onChange={(event) => setCategory(event.target.value)}>
             <option value="">all groups</option>
             {categories.map(({ label }, index) => (
               <option key={index} value={index}>
@@ -70,11 +69,11 @@ export function ScatterRule({ xName, yName, categories, onRule }: Props) {
           </select>
         </label>
       )}
-      <button type="submit" className="h-7 cursor-pointer rounded border px-2 hover:bg-(--trough)" style={{ ...FIELD_STYLE, font: '500 0.8125rem/1 var(--font-ui)' }}>
+      <Button type="submit" size="tiny">
         Take points
-      </button>
+      </Button>
       {error !== null && (
-        <span id={errorId} role="alert" style={{ color: 'var(--bad)' }}>
+        <span id={errorId} role="alert" className="text-bad">
           {error}
         </span>
       )}
