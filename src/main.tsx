@@ -1,0 +1,30 @@
+import { StrictMode } from 'react';
+import { createRoot } from 'react-dom/client';
+import './fonts.css';
+import '@fontsource/ibm-plex-mono/latin-400.css';
+import '@fontsource/ibm-plex-mono/latin-500.css';
+import '@fontsource/ibm-plex-mono/latin-600.css';
+import './index.css';
+import { App } from './app/app.tsx';
+import { makeRouter } from './app/router.tsx';
+import { signInAddress } from './app/safe-return.ts';
+import { makeQueryClient } from './lib/query-client.ts';
+import { leaveSession } from './lib/session.ts';
+import { followTheme } from './lib/theme.ts';
+
+followTheme();
+
+const queryClient = makeQueryClient(() => {
+  const { pathname, search } = router.state.location;
+  leaveSession(queryClient);
+  void router.navigate(signInAddress(`${pathname}${search}`), { replace: true });
+});
+const router = makeRouter(queryClient);
+
+const root = document.getElementById('root');
+if (!root) throw new Error('Expected an element #root in index.html');
+createRoot(root).render(
+  <StrictMode>
+    <App queryClient={queryClient} router={router} />
+  </StrictMode>,
+);
