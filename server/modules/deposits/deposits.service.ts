@@ -1,5 +1,5 @@
 import type { Knex } from 'knex';
-import type { Deposit, DepositBody, DepositListRow } from '#contract/deposits.ts';
+import type { Deposit, DepositBody, DepositListRow, PayAnalyte } from '#contract/deposits.ts';
 import type { Role } from '#contract/roles.ts';
 import { transact } from '#server/db/transact.ts';
 import type { Actor, Member } from '#server/lib/actor.ts';
@@ -27,6 +27,7 @@ export interface DepositsService {
   listOf(actor: Actor): Promise<DepositListRow[]>;
   create(body: DepositBody, actor: Actor): Promise<Deposit>;
   get(depositId: number, role: Role): Promise<Deposit>;
+  payAnalytes(depositId: number): Promise<PayAnalyte[]>;
   /** @throws {AppError} 412 when somebody changed it since `expectedVersion`. */
   update(member: Member, body: DepositBody, expectedVersion: number, actor: Actor): Promise<Deposit>;
 }
@@ -55,6 +56,8 @@ export function createDeposits({ db, clock, record, depositSummaries }: Deposits
 
   return {
     get,
+
+    payAnalytes: async (depositId) => storedParts(orNotFound(await depositById(db, depositId), 'deposit')).payAnalytes,
 
     async listOf(actor) {
       const rows = await db('deposits')
