@@ -1,6 +1,7 @@
 import compression from 'compression';
 import cookieParser from 'cookie-parser';
 import express, { type Express, type Router } from 'express';
+import { analysisRouters } from './analysis.ts';
 import { AppError } from './lib/errors.ts';
 import { createGuard } from './lib/guard.ts';
 import { createIdempotency } from './lib/idempotency.ts';
@@ -54,6 +55,7 @@ function moduleRouters(deps: AppDeps, services: Services, describe: () => object
     tokensRoutes(services.tokens),
     recordRoutes(services.record),
     mailRoutes(deps.mailer),
+    ...analysisRouters(services.analysis, deps),
   ];
 }
 

@@ -1,5 +1,6 @@
 import type { Knex } from 'knex';
 import type { Compute } from '#workers/client.ts';
+import { createAnalysis } from './analysis.ts';
 import type { Background } from './lib/background.ts';
 import type { Clock } from './lib/clock.ts';
 import type { Env } from './lib/env.ts';
@@ -34,11 +35,9 @@ export interface AppDeps {
   demo: Demo | null;
   /** What must be in order for the service to be ready. */
   checks: readonly Check[];
-  /** Counts for the list of deposits; left out, a deposit has nothing loaded. */
+  /** Counts for the list of deposits; told by the overview unless given. */
   depositSummaries?: DepositSummaries;
 }
-
-const noSummaries: DepositSummaries = () => Promise.resolve(new Map());
 
 /** Every module's service, one line each; a service may stand on those above it. */
 export function createServices(deps: AppDeps) {
@@ -53,11 +52,12 @@ export function createServices(deps: AppDeps) {
   const resets = createResets({ ...deps, passwords, record, sessions, throttle, publicUrl });
   const invitations = createInvitations({ ...deps, record, publicUrl });
   const accept = createAccept({ db, clock, auth, invitations, passwords, sessions, throttle });
-  const deposits = createDeposits({ db, clock, record, depositSummaries: deps.depositSummaries ?? noSummaries });
+  const analysis = createAnalysis(deps, record);
+  const deposits = createDeposits({ db, clock, record, depositSummaries: deps.depositSummaries ?? analysis.overview.summaries });
   const members = createMembers({ db, log, record, invitations });
   const tokens = createTokens({ db, clock, log, record });
   const admin = createAdmin({ db, log, record, sessions, invitations });
-  return { passwords, record, sessions, throttle, auth, resets, invitations, accept, deposits, members, tokens, admin };
+  return { passwords, record, sessions, throttle, auth, resets, invitations, accept, deposits, members, tokens, admin, analysis };
 }
 
 export type Services = ReturnType<typeof createServices>;

@@ -58,6 +58,7 @@ export async function start(env: Env, { ensureSeeded }: StartOptions = {}): Prom
   const demo = env.instance === 'demo' && ensureSeeded ? await ensureSeeded(deps) : null;
   const app = createApp({ ...deps, demo });
   app.describe();
+  await app.services.analysis.jobs.start();
   const server = createServer(app.express);
   const port = await listen(server, env.port);
   log.info({ event: 'started', port, instance: env.instance }, 'started');
@@ -72,8 +73,10 @@ export async function start(env: Env, { ensureSeeded }: StartOptions = {}): Prom
       app.streams.endAll();
       await closed;
       await background.idle();
+      await app.services.analysis.jobs.close();
       await compute.close();
       await mailer.close();
+      app.services.analysis.store.close();
       await closeDatabase(db);
       await dataDir.markClean();
       log.info({ event: 'stopped' }, 'stopped');

@@ -38,15 +38,18 @@ const lettersFor = (text: string): string => [...text].map((mark) => STAND_INS[m
 /** `abcabcabcabc`, `aaaaaaaaaaaa`: one short piece over and over. */
 const isRepeat = (text: string): boolean => /^(.{1,6}?)\1+.{0,2}$/su.test(text);
 
+const isPiece = (text: string): boolean => PIECES.has(text) || PIECES.has(lettersFor(text));
+
 /** Whether a lowercase text is nothing but a few known pieces with digits and marks between them. */
 function isMadeOfPieces(text: string, maxPieces: number): boolean {
   // fewest[i]: the fewest pieces that make the first i characters; digits and marks are free.
   const fewest = new Array<number>(text.length + 1).fill(Number.POSITIVE_INFINITY);
   fewest[0] = 0;
   for (let end = 1; end <= text.length; end++) {
-    let best = /[^\p{L}]/u.test(text.slice(end - 1, end)) ? (fewest[end - 1] ?? Number.POSITIVE_INFINITY) : Number.POSITIVE_INFINITY;
+    const isFree = /[^\p{L}]/u.test(text.slice(end - 1, end));
+    let best = (isFree ? fewest[end - 1] : undefined) ?? Number.POSITIVE_INFINITY;
     for (let start = Math.max(0, end - LONGEST_PIECE); start < end; start++) {
-      if (PIECES.has(text.slice(start, end))) best = Math.min(best, (fewest[start] ?? Number.POSITIVE_INFINITY) + 1);
+      if (isPiece(text.slice(start, end))) best = Math.min(best, (fewest[start] ?? Number.POSITIVE_INFINITY) + 1);
     }
     fewest[end] = best;
   }
@@ -59,5 +62,5 @@ const MAX_PIECES = 3;
 /** Whether a password is among those tried first: known ones, and known pieces with digits put on. */
 export function isCommonPassword(password: string): boolean {
   const text = password.toLowerCase();
-  return isRepeat(text) || isMadeOfPieces(text, MAX_PIECES) || isMadeOfPieces(lettersFor(text), MAX_PIECES);
+  return isRepeat(text) || isMadeOfPieces(text, MAX_PIECES);
 }
