@@ -3,7 +3,7 @@ import type { Knex } from 'knex';
 /**
  * Long work of a deposit. `params` and `result` are JSON; `tries` counts starts, so that a job that
  * keeps ending its process is stopped; `runs_alone` marks one that was running when the compute host
- * ended and may be the cause.
+ * ended and may be the cause; `follow_up_due` one that is done but whose follow-up has yet to be asked for.
  */
 export async function up(knex: Knex): Promise<void> {
   await knex.schema.raw(`
@@ -20,7 +20,8 @@ export async function up(knex: Knex): Promise<void> {
       error_message TEXT,
       result TEXT,
       tries INTEGER NOT NULL DEFAULT 0,
-      runs_alone INTEGER NOT NULL DEFAULT 0,
+      runs_alone INTEGER NOT NULL DEFAULT 0 CHECK (runs_alone IN (0, 1)),
+      follow_up_due INTEGER NOT NULL DEFAULT 0 CHECK (follow_up_due IN (0, 1)),
       started_by INTEGER NOT NULL REFERENCES users (id) ON DELETE RESTRICT,
       created_at TEXT NOT NULL,
       started_at TEXT,

@@ -33,6 +33,9 @@ const INSERT_CHUNK = 'INSERT INTO column_chunks (column_id, chunk_no, qualifier_
 const DELETE_CHUNKS = `DELETE FROM column_chunks WHERE rowid IN (
   SELECT ch.rowid FROM columns co JOIN column_chunks ch ON ch.column_id = co.id WHERE co.table_id = ? LIMIT 4)`;
 
+const LEFTOVERS = `SELECT ct.id FROM column_tables ct LEFT JOIN jobs ON jobs.id = ct.job_id
+  WHERE ct.state = 'pending' AND (jobs.state IN ('done', 'failed', 'cancelled') OR (jobs.id IS NULL AND ct.created_at < ?))`;
+
 /** Every statement of the column store, prepared once per connection. */
 export const prepareStatements = (db: Database.Database) => ({
   insertTable: db.prepare<NewTable>(
@@ -42,6 +45,7 @@ export const prepareStatements = (db: Database.Database) => ({
   pendingOfJob: db.prepare<[number], { id: number }>(
     `SELECT id FROM column_tables WHERE job_id = ? AND state = 'pending'`,
   ),
+  leftovers: db.prepare<[string], { id: number }>(LEFTOVERS),
   setState: db.prepare<['pending' | 'live', number]>('UPDATE column_tables SET state = ? WHERE id = ?'),
   deleteTable: db.prepare<[number]>('DELETE FROM column_tables WHERE id = ?'),
   insertColumn: db.prepare<NewColumn>(

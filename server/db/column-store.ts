@@ -12,7 +12,7 @@ import {
 import {
   addColumn, inShortTransactions, writeNumberChunks, writeTextChunks, type NewColumn,
 } from './column-store-write.ts';
-import { WORKER_BUSY_TIMEOUT_MS, applyPragmas, applyReadOnlyPragmas } from './pragmas.ts';
+import { SERVER_BUSY_TIMEOUT_MS, WORKER_BUSY_TIMEOUT_MS, applyPragmas, applyReadOnlyPragmas } from './pragmas.ts';
 
 export { QUALIFIER } from '#contract/tables.ts';
 export { CHUNK_ROWS, type RowRange } from './column-store-format.ts';
@@ -184,6 +184,12 @@ export class ColumnStore {
     for (const { id } of this.#statements.pendingOfJob.all(jobId)) this.dropTable(id);
   }
 
+  /** Drops what no job will publish any more: the job has ended, or a day has passed without one. */
+  dropLeftovers(): void {
+    const aDayAgo = new Date(Date.now() - 86_400_000).toISOString();
+    for (const { id } of this.#statements.leftovers.all(aDayAgo)) this.dropTable(id);
+  }
+
   close(): void {
     this.db.close();
   }
@@ -221,7 +227,8 @@ export class ColumnStore {
 /** Opens a connection of its own with the project's pragmas; the caller closes it. */
 export function openColumnStore(databaseFile: string, { readonly }: { readonly: boolean }): ColumnStore {
   const db = new Database(databaseFile, { readonly, fileMustExist: true });
-  const applyThem = readonly ? applyReadOnlyPragmas : applyPragmas;
-  applyThem(db, WORKER_BUSY_TIMEOUT_MS);
+  // The server reads on its own thread and must not wait there; a worker may.
+  if (readonly) applyReadOnlyPragmas(db, SERVER_BUSY_TIMEOUT_MS);
+  else applyPragmas(db, WORKER_BUSY_TIMEOUT_MS);
   return new ColumnStore(db);
 }

@@ -182,6 +182,13 @@ describe('faults', () => {
   });
 });
 
+function insertJob(id: number, state: string): void {
+  const insert = `INSERT INTO jobs (id, deposit_id, kind, title, params, state, started_by, created_at)
+    VALUES (?, 1, 'grouping', 'Group', '{}', ?, 1, '2026-01-01T00:00:00.000Z')`;
+  store.db.prepare(insert).run(id, state);
+}
+const tablesLeft = (): number[] => store.db.prepare<[], number>('SELECT id FROM column_tables ORDER BY id').pluck().all();
+
 describe('dropping', () => {
   it('leaves no row of a dropped table and all of the others', () => {
     const kept = tableOf(1);
@@ -196,14 +203,21 @@ describe('dropping', () => {
   });
 
   it('drops what a job began and keeps what it published', () => {
-    const insertJob = `INSERT INTO jobs (id, deposit_id, kind, title, params, state, started_by, created_at)
-      VALUES (?, 1, 'grouping', 'Group', '{}', 'running', 1, '2026-01-01T00:00:00.000Z')`;
-    for (const jobId of [5, 6]) store.db.prepare(insertJob).run(jobId);
+    for (const jobId of [5, 6]) insertJob(jobId, 'running');
     const [pending, live, other] = [tableOf(1, 5), tableOf(1, 5), tableOf(1, 6)];
     store.publish(live);
     store.dropPending(5);
-    const left = store.db.prepare<[], number>('SELECT id FROM column_tables ORDER BY id').pluck().all();
-    expect([pending, left]).toEqual([1, [live, other]]);
+    expect([pending, tablesLeft()]).toEqual([1, [live, other]]);
+  });
+
+  it('drops leftovers: of jobs that have ended, and old ones without a job', () => {
+    insertJob(5, 'failed');
+    insertJob(6, 'running');
+    insertJob(7, 'interrupted');
+    const [, running, interrupted, , fresh] = [tableOf(1, 5), tableOf(1, 6), tableOf(1, 7), tableOf(1), tableOf(1)];
+    store.db.exec(`UPDATE column_tables SET created_at = '2026-01-01T00:00:00.000Z' WHERE id = ${Number(interrupted) + 1}`);
+    store.dropLeftovers();
+    expect(tablesLeft()).toEqual([running, interrupted, fresh]);
   });
 });
 
@@ -230,13 +244,13 @@ describe('DU-01 every connection maker sets the pragmas', () => {
       opened.db.pragma(name, { simple: true }),
     );
   it.each([
-    ['read-write', (file: string) => openColumnStore(file, { readonly: false })],
-    ['read-only', (file: string) => openColumnStore(file, { readonly: true })],
-    ['mapped', openMappedStore],
-  ])('%s', (_name, open) => {
+    ['read-write', 5_000, (file: string) => openColumnStore(file, { readonly: false })],
+    ['read-only', 250, (file: string) => openColumnStore(file, { readonly: true })],
+    ['mapped', 5_000, openMappedStore],
+  ] as const)('%s', (_name, busyTimeoutMs, open) => {
     const opened = open(database.file);
     const found = pragmasOf(opened);
     opened.close();
-    expect(found).toEqual(['wal', 2, 1, 0, 5_000]);
+    expect(found).toEqual(['wal', 2, 1, 0, busyTimeoutMs]);
   });
 });
