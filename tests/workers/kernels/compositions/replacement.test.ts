@@ -1,0 +1,186 @@
+import fc from 'fast-check';
+import { describe, expect, it } from 'vitest';
+import { centredLogRatio } from '#kernels/compositions/centred-log-ratio.ts';
+import { close } from '#kernels/compositions/closure.ts';
+import {
+  harmoniseLimit,
+  replaceBelowLimit,
+  replaceInClosed,
+  VALUE_STATE,
+} from '#kernels/compositions/replacement.ts';
+import { expectWithin } from '#tests/support/expect-within.ts';
+import { loadReference } from '#tests/support/reference.ts';
+import { rawTable, toColumns } from '#tests/support/reference-transform.ts';
+
+const { measured, below, above, missing, notAnalysed } = VALUE_STATE;
+const jura = loadReference('jura_prediction');
+
+describe('replacement agrees with R 4.2.2', () => {
+  it('substitutes .65 of the limit, then clr', () => {
+    const check = jura.check('jura_prediction.censor_substitution');
+    const table = rawTable(jura, check);
+    const limit = Number(check.inputs['censor_below']);
+    const [cd = new Float64Array(0), ...others] = toColumns(table);
+    const censored = harmoniseLimit(cd, new Uint8Array(cd.length), limit);
+    const { values, nReplaced } = replaceBelowLimit(censored.values, censored.states);
+    expect(nReplaced).toBe(check.inputs.report_rows?.length);
+    const columns = [values, ...others];
+    const parts = Float64Array.from(
+      { length: table.values.length },
+      (_, i) => columns[i % 7]![Math.floor(i / 7)]!,
+    );
+    const clr = centredLogRatio(parts, 7);
+    expectWithin(
+      check,
+      (check.inputs.report_rows ?? []).map((row) => clr.subarray(7 * (row - 1), 7 * row)),
+    );
+  });
+
+  it('replaces multiplicatively in closed rows', () => {
+    const check = jura.check('jura_prediction.multiplicative_replacement');
+    const { values } = rawTable(jura, check);
+    const rows = (check.inputs.report_rows ?? []).map((row) => {
+      const others = values.slice(7 * (row - 1) + 1, 7 * row);
+      const sum = others.reduce((a, b) => a + b, 0);
+      const parts = Float64Array.of(0, ...close(others, 6));
+      const replacements = new Float64Array(7).fill((0.65 * 0.4) / sum);
+      return replaceInClosed(parts, 7, replacements);
+    });
+    expectWithin(check, rows);
+  });
+});
+
+describe('replaceInClosed', () => {
+  it('turns (0, .4, .6) with limit .01 into (.0065, .3974, .5961) (computed; identity)', () => {
+    const found = replaceInClosed(
+      Float64Array.of(0, 0.4, 0.6),
+      3,
+      new Float64Array(3).fill(0.65 * 0.01),
+    );
+    [0.0065, 0.3974, 0.5961].forEach((value, i) => expect(found[i]).toBeCloseTo(value, 12));
+    expect(found[1]! / found[2]!).toBeCloseTo(0.4 / 0.6, 12);
+  });
+
+  it.each([
+    ['shape', [0, 1], 2, [0.1]],
+    ['bad-parameter', [0, 0.5, 0.4], 3, [0.1, 0.1, 0.1]],
+    ['bad-parameter', [0, 0.4, 0.6], 3, [0, 0.1, 0.1]],
+    ['bad-parameter', [0, 0.4, 0.6], 3, [1, 0.1, 0.1]],
+    ['not-positive', [-0.1, 0.5, 0.6], 3, [0.1, 0.1, 0.1]],
+    ['not-positive', [NaN, 0.5, 0.6], 3, [0.1, 0.1, 0.1]],
+  ] as const)('refuses with %s: %j', (code, parts, nCols, replacements) => {
+    expect(() =>
+      replaceInClosed(Float64Array.from(parts), nCols, Float64Array.from(replacements)),
+    ).toThrow(expect.objectContaining({ code }));
+  });
+});
+
+describe('replaceBelowLimit', () => {
+  it('uses each cell’s own limit and leaves the rest', () => {
+    const found = replaceBelowLimit(
+      Float64Array.of(7, 0.5, 2, 100, NaN, NaN),
+      Uint8Array.of(measured, below, below, above, missing, notAnalysed),
+    );
+    expect([...found.values]).toEqual([7, 0.325, 1.3, 100, NaN, NaN]);
+    expect([...found.isReplaced]).toEqual([0, 1, 1, 0, 0, 0]);
+    expect(found).toMatchObject({ nReplaced: 2, notes: [] });
+  });
+
+  it('halves the smallest measured value when the replacement would pass it, and says so', () => {
+    const found = replaceBelowLimit(
+      Float64Array.of(0.2, 5, 1),
+      Uint8Array.of(measured, measured, below),
+    );
+    expect([...found.values]).toEqual([0.2, 5, 0.1]);
+    expect(found.notes).toEqual([expect.stringContaining('half of it')]);
+  });
+
+  it('keeps a coarse limit above values of a finer method', () => {
+    const found = replaceBelowLimit(
+      Float64Array.of(0.2, 5, 0.1),
+      Uint8Array.of(measured, below, below),
+    );
+    expect(found.values[1]).toBeCloseTo(3.25, 12);
+    expect(found.notes).toEqual([]);
+  });
+
+  it('takes the smallest measured value for an unknown limit, and says so', () => {
+    const found = replaceBelowLimit(
+      Float64Array.of(2, NaN, 8),
+      Uint8Array.of(measured, below, measured),
+      { fraction: 0.5 },
+    );
+    expect([...found.values]).toEqual([2, 1, 8]);
+    expect(found.notes).toEqual([expect.stringContaining('unknown limit')]);
+  });
+
+  it('writes into shared memory when asked', () => {
+    const out = new Float64Array(new SharedArrayBuffer(16));
+    expect(
+      replaceBelowLimit(Float64Array.of(3, 2), Uint8Array.of(measured, below), { out }).values,
+    ).toBe(out);
+    expect([...out]).toEqual([3, 1.3]);
+  });
+
+  it('leaves a column without values below detection as it is, every replacement under its limit otherwise', () => {
+    const cell = fc.tuple(
+      fc.double({ min: 0.01, max: 1000, noNaN: true }),
+      fc.constantFrom(measured, below, above),
+    );
+    fc.assert(
+      fc.property(
+        fc.array(cell, { minLength: 1, maxLength: 40 }),
+        fc.double({ min: 0.1, max: 1, noNaN: true }),
+        (cells, fraction) => {
+          const values = Float64Array.from(cells, ([value]) => value);
+          const found = replaceBelowLimit(
+            values,
+            Uint8Array.from(cells, ([, state]) => state),
+            { fraction },
+          );
+          cells.forEach(([value, state], row) => {
+            if (state === below) expect(found.values[row]).toBeLessThanOrEqual(value);
+            else expect(found.values[row]).toBe(value);
+            expect(found.values[row]).toBeGreaterThan(0);
+          });
+        },
+      ),
+    );
+  });
+
+  it.each([
+    ['shape', [1, 2], [0], {}],
+    ['bad-parameter', [1], [0], { fraction: 0 }],
+    ['bad-parameter', [1], [0], { fraction: 1.1 }],
+    ['not-positive', [0], [0], {}],
+    ['not-positive', [1, NaN], [0, 0], {}],
+    ['not-positive', [Infinity], [2], {}],
+    ['too-few-rows', [NaN, NaN], [1, 3], {}],
+  ] as const)('refuses with %s: values %j, states %j, %j', (code, values, states, options) => {
+    expect(() =>
+      replaceBelowLimit(Float64Array.from(values), Uint8Array.from(states), options),
+    ).toThrow(expect.objectContaining({ code }));
+  });
+});
+
+describe('harmoniseLimit', () => {
+  it('brings finer limits and small values to one limit', () => {
+    const found = harmoniseLimit(
+      Float64Array.of(0.3, 5, 0.1, 10, NaN),
+      Uint8Array.of(measured, measured, below, below, missing),
+      1,
+    );
+    expect([...found.values]).toEqual([1, 5, 1, 10, NaN]);
+    expect([...found.states]).toEqual([below, measured, below, below, missing]);
+    expect(found.nChanged).toBe(2);
+  });
+
+  it('refuses a limit that is none', () => {
+    expect(() => harmoniseLimit(Float64Array.of(1), Uint8Array.of(0), 0)).toThrow(
+      expect.objectContaining({ code: 'bad-parameter' }),
+    );
+    expect(() => harmoniseLimit(Float64Array.of(1), new Uint8Array(2), 1)).toThrow(
+      expect.objectContaining({ code: 'shape' }),
+    );
+  });
+});
