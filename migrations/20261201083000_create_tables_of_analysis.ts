@@ -20,7 +20,7 @@ export async function up(knex: Knex): Promise<void> {
   });
   await knex.schema.createTable('component_runs', (table) => {
     stamped(knex, table);
-    table.integer('suite_id').notNullable().references('suites.id').onDelete('RESTRICT');
+    table.integer('suite_id').notNullable().references('suites.id').onDelete('NO ACTION');
     table.text('snapshot_id').notNullable();
     table.integer('table_id').notNullable();
     table.integer('seed').notNullable();
@@ -36,7 +36,7 @@ export async function up(knex: Knex): Promise<void> {
   await knex.schema.createTable('groupings', (table) => {
     stamped(knex, table);
     table.text('name').notNullable();
-    table.integer('component_run_id').notNullable().references('component_runs.id').onDelete('RESTRICT');
+    table.integer('component_run_id').notNullable().references('component_runs.id').onDelete('NO ACTION');
     table.integer('table_id').notNullable();
     table.integer('k').notNullable();
     table.integer('components').notNullable();
@@ -74,7 +74,7 @@ export async function up(knex: Knex): Promise<void> {
     table.text('updated_at').notNullable();
     /** Set while the domain is taken back; it can be restored. */
     table.text('deleted_at');
-    table.integer('grouping_id').notNullable().references('groupings.id').onDelete('RESTRICT');
+    table.integer('grouping_id').notNullable().references('groupings.id').onDelete('NO ACTION');
     table.text('code').notNullable().checkLength('<=', 12);
     table.text('name').notNullable();
     table.text('rationale').notNullable();
@@ -120,8 +120,8 @@ export async function up(knex: Knex): Promise<void> {
     stamped(knex, table);
     table.integer('number').notNullable();
     table.text('snapshot_id').notNullable();
-    table.integer('grouping_id').notNullable().references('groupings.id').onDelete('RESTRICT');
-    table.integer('zone_run_id').references('zone_runs.id').onDelete('RESTRICT');
+    table.integer('grouping_id').notNullable().references('groupings.id').onDelete('NO ACTION');
+    table.integer('zone_run_id').references('zone_runs.id').onDelete('NO ACTION');
     table.text('recipe').notNullable();
     table.text('recipe_sha256').notNullable();
     table.text('sha256').notNullable();

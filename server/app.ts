@@ -16,6 +16,7 @@ import { createStreamWatch, type StreamWatch } from './lib/stream-watch.ts';
 import { adminRoutes } from './modules/admin/admin.routes.ts';
 import { authRoutes } from './modules/auth/auth.routes.ts';
 import { roleOn } from './modules/deposits/deposits.repository.ts';
+import { demoRoutes } from './modules/demo/demo.routes.ts';
 import { depositsRoutes } from './modules/deposits/deposits.routes.ts';
 import { healthRoutes } from './modules/health/health.routes.ts';
 import { mailRoutes } from './modules/mail/mail.routes.ts';
@@ -55,6 +56,7 @@ function moduleRouters(deps: AppDeps, services: Services, describe: () => object
     tokensRoutes(services.tokens),
     recordRoutes(services.record),
     mailRoutes(deps.mailer),
+    demoRoutes(demo),
     ...analysisRouters(services.analysis, deps),
   ];
 }

@@ -40,7 +40,7 @@ function stopOn(running: Running): void {
 
 try {
   const env = readEnv(process.env);
-  const running = await start(env);
+  const running = await start(env, (line) => process.stdout.write(`${line}\n`));
   stopOn(running);
   say(running, env.publicUrl);
 } catch (error) {

@@ -6,7 +6,7 @@ import type { Clock } from './lib/clock.ts';
 import type { Env } from './lib/env.ts';
 import type { Log } from './lib/log.ts';
 import { createAdmin } from './modules/admin/admin.service.ts';
-import type { Demo } from './modules/admin/demo.ts';
+import type { DemoInstance } from './modules/demo/demo.ts';
 import { createAccept } from './modules/auth/accept.service.ts';
 import { createAuth } from './modules/auth/auth.service.ts';
 import { createInvitations } from './modules/auth/invitations.service.ts';
@@ -32,7 +32,7 @@ export interface AppDeps {
   compute: Compute;
   hasher: PasswordHasher;
   /** Null on any instance but a demonstration. */
-  demo: Demo | null;
+  demo: DemoInstance | null;
   /** What must be in order for the service to be ready. */
   checks: readonly Check[];
   /** Counts for the list of deposits; told by the overview unless given. */

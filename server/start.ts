@@ -10,21 +10,13 @@ import { prepareDataDir } from './lib/data-dir.ts';
 import type { Env } from './lib/env.ts';
 import { createLog, type Log } from './lib/log.ts';
 import type { Demo } from './modules/admin/demo.ts';
+import { createDemo } from './modules/demo/demo.ts';
 import { computeHasher } from './modules/auth/password-hasher.ts';
 import { databaseCheck, diskCheck, diskSpace, isShortOfSpace } from './modules/health/readiness.ts';
 import { createMailer } from './modules/mail/mailer.ts';
-import type { AppDeps } from './services.ts';
 
 const COMPUTE_THREADS = 2;
 const FINISH_LIMIT_MS = 10 * SECOND_MS;
-
-/** Fills a demonstration's database when it is empty, and says how to sign in and to reset it. */
-export type EnsureSeeded = (deps: Omit<AppDeps, 'demo'>) => Promise<Demo>;
-
-export interface StartOptions {
-  /** Called on a demonstration instance only. */
-  ensureSeeded?: EnsureSeeded;
-}
 
 export interface Running {
   log: Log;
@@ -37,7 +29,7 @@ export interface Running {
 }
 
 /** Opens everything in order: data folder, database, compute host, mail, app, port. */
-export async function start(env: Env, { ensureSeeded }: StartOptions = {}): Promise<Running> {
+export async function start(env: Env, print: (line: string) => void = () => undefined): Promise<Running> {
   const log = createLog(env.logLevel);
   const dataDir = await prepareDataDir(env.paths);
   await warnAtStart(env, dataDir.wasUncleanStop, log);
@@ -55,10 +47,11 @@ export async function start(env: Env, { ensureSeeded }: StartOptions = {}): Prom
   ];
   const deps = { env, db, log, clock: systemClock, mailer, background, compute, hasher: computeHasher(compute), checks };
   await compute.ready();
-  const demo = env.instance === 'demo' && ensureSeeded ? await ensureSeeded(deps) : null;
+  const demo = env.instance === 'demo' ? createDemo(deps, print) : null;
   const app = createApp({ ...deps, demo });
   app.describe();
   await app.services.analysis.jobs.start();
+  await demo?.seed(app.services);
   const server = createServer(app.express);
   const port = await listen(server, env.port);
   log.info({ event: 'started', port, instance: env.instance }, 'started');

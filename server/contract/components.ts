@@ -24,12 +24,14 @@ export const ComponentRun = z.object({
   nFit: z.number().int(),
   nScoredOnly: z.number().int(),
   nLeftOut: z.number().int(),
+  /** Share of all values used that were below detection, and the share of the limit they became. */
   replacedShare: z.number(),
+  replacementFraction: z.number(),
   eigenvalues: z.array(z.number()),
   shares: z.array(z.number()),
   /** parts × stored components, row by row. */
   loadings: z.array(z.array(z.number())),
-  /** Component scores' standard deviation, for biplot scaling. */
+  /** Per component, as shares of the total variance: what a broken stick gives, and the 95th percentile under independence. */
   brokenStick: z.array(z.number()),
   parallel95: z.array(z.number()),
   suggested: z.number().int(),

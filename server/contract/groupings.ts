@@ -17,7 +17,7 @@ export type Sweep = z.infer<typeof Sweep>;
 export const Contiguity = z.object({ runs: z.number().int(), expectedRuns: z.number(), kappa: z.number().nullable(), meanRunM: z.number() });
 
 export const Group = z.object({
-  /** 1 … k; 1 has most metres. */
+  /** 1 … k; 1 has most intervals. */
   label: z.number().int(),
   name: z.string(),
   slot: ColourSlot,

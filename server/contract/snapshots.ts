@@ -42,6 +42,11 @@ export const Snapshot = z.object({
   createdAt: Instant,
   isCurrent: z.boolean(),
   frameTableId: z.number().int(),
+  /** Analyte columns of the drill rows (the frame's first `rows - surfaceRows`) and of the surface rows after them. */
+  assayTableId: z.number().int().nullable(),
+  surfaceTableId: z.number().int().nullable(),
+  /** Structures as planes: hole, depth, dip, dip direction, confidence, structure type. */
+  structureTableId: z.number().int().nullable(),
   revisions: z.array(z.object({ kind: TableKind, revisionId: z.number().int(), number: z.number().int(), rows: z.number().int() })),
   rows: z.number().int(),
   surfaceRows: z.number().int(),

@@ -29,8 +29,8 @@ async function appliedTo(db: Knex): Promise<string[]> {
 const stamp = (): string => new Date().toISOString().replaceAll(/[:.]/g, '-');
 
 /**
- * Brings the database to this version's schema, each migration in a transaction of its own. An
- * existing database is copied first.
+ * Brings the database to this version's schema, in one transaction: all of it, or none. An existing
+ * database is copied first.
  *
  * @throws {NewerSchemaError} when the database knows migrations this version does not.
  */

@@ -125,8 +125,10 @@ export async function testClient(options: TestClientOptions = {}): Promise<TestC
       server.closeAllConnections();
       server.close();
       await background.idle();
+      await app.services.analysis.jobs.close();
       await compute.close();
       await mailer.close();
+      app.services.analysis.store.close();
       await db.destroy();
       remove();
     },

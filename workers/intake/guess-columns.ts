@@ -1,0 +1,61 @@
+import { COLUMN_ROLES, type ColumnGuess, type ColumnRole, type TableKind } from '#contract/files.ts';
+import { parseHeader, type HeaderReading } from '#kernels/units/header.ts';
+
+/** What a kind of table uses beyond its required columns; other columns start as skipped. */
+const ROLES_OF_KIND: Record<TableKind, readonly ColumnRole[]> = {
+  collar: ['hole', 'x', 'y', 'z', 'length', 'azimuth', 'dip', 'campaign', 'date', 'note'],
+  survey: ['hole', 'depth', 'azimuth', 'dip', 'date', 'note'],
+  assay: ['hole', 'from', 'to', 'sample', 'campaign', 'laboratory', 'batch', 'date', 'analyte', 'note'],
+  surface: ['sample', 'x', 'y', 'z', 'code', 'campaign', 'laboratory', 'batch', 'date', 'analyte', 'note'],
+  lithology: ['hole', 'from', 'to', 'code', 'note'],
+  weathering: ['hole', 'from', 'to', 'code', 'note'],
+  structure: ['hole', 'depth', 'alpha', 'beta', 'dip', 'dip-direction', 'structure-type', 'confidence', 'note'],
+  fault: ['name', 'x', 'y', 'z', 'dip', 'dip-direction', 'note'],
+};
+
+const SAMPLE_CELLS = 50;
+
+const isRole = (role: string): role is ColumnRole => COLUMN_ROLES.some((known) => known === role);
+
+function readingsOf(header: readonly string[], rows: readonly string[][]): HeaderReading[] {
+  return header.map((text, index) => {
+    const samples = rows.map((cells) => (cells[index] ?? '').trim()).filter((cell) => cell !== '').slice(0, SAMPLE_CELLS);
+    return parseHeader(text, samples);
+  });
+}
+
+/** The kind a table most likely is, by its columns; the file's name settles what columns leave open. */
+export function guessKind(header: readonly string[], fileName: string, rows: readonly string[][] = []): TableKind {
+  const readings = readingsOf(header, rows);
+  const has = (...roles: string[]): boolean => roles.every((role) => readings.some((reading) => reading.role === role));
+  const name = fileName.toLowerCase();
+  const isAbout = (topic: string, word: RegExp): boolean => readings.some((reading) => reading.topic === topic) || word.test(name);
+  if (has('alpha') || has('structure-type') || (has('depth', 'dip', 'dip-direction') && !isAbout('fault', /fault/))) return 'structure';
+  if (isAbout('fault', /fault/) && has('dip', 'x')) return 'fault';
+  if (has('analyte', 'from', 'to')) return 'assay';
+  if (has('analyte', 'x', 'y')) return 'surface';
+  if (has('depth', 'azimuth', 'dip')) return 'survey';
+  if (has('from', 'to')) return isAbout('weathering', /weath|oxid/) ? 'weathering' : 'lithology';
+  return 'collar';
+}
+
+/** What each column probably is, for a kind; a role is given once, to the first column that fits. */
+export function guessColumns(header: readonly string[], rows: readonly string[][], kind: TableKind): ColumnGuess[] {
+  const used = new Set<ColumnRole>();
+  return readingsOf(header, rows).map((reading, index) => {
+    const text = header[index] ?? '';
+    const firstValue = rows.map((cells) => (cells[index] ?? '').trim()).find((cell) => cell !== '') ?? '';
+    const role = isRole(reading.role) ? reading.role : 'skip';
+    const base = { index, header: text, analyte: null, unit: null, oxide: null, method: null, firstValue };
+    const skipped = (reason: string): ColumnGuess => ({ ...base, role: 'skip', certainty: 'unknown', reason });
+    if (role === 'skip') return skipped(reading.reason);
+    if (!ROLES_OF_KIND[kind].includes(role)) return skipped(`not used in a ${kind} table`);
+    if (role === 'analyte') {
+      const { element, unit, oxide, method, certainty, reason } = reading;
+      return { ...base, role, analyte: element, unit, oxide, method: method?.slice(0, 80) ?? null, certainty, reason };
+    }
+    if (used.has(role)) return skipped(`another column is ${role} already`);
+    used.add(role);
+    return { ...base, role, certainty: reading.certainty, reason: reading.reason };
+  });
+}

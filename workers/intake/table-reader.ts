@@ -1,0 +1,143 @@
+import type { ColumnRole, FileMapping, TableKind } from '#contract/files.ts';
+import { QUALIFIER } from '#contract/tables.ts';
+import { readNumber } from '#kernels/units/number-text.ts';
+import { ColumnLimits, readAssayCell, type AssayCell } from './assay-cells.ts';
+import { planColumns, type AnalyteColumn, type ColumnPlan } from './column-plan.ts';
+import type { FoundProblem, ProblemList } from './problem-list.ts';
+import { checkRow, type CheckContext, type RowValues } from './row-checks.ts';
+import type { TableDraft } from './table-draft.ts';
+
+interface PendingCell {
+  column: AnalyteColumn;
+  index: number;
+  row: number;
+  text: string;
+  magnitude: number | null;
+}
+
+type Teller = (column: string, code: string, message: string, severity: FoundProblem['severity'], value: string) => void;
+
+export const columnName = (role: ColumnRole): string => role.replaceAll('-', ' ');
+
+/** Determinations of one analyte in one file stay apart until the end; the first column has first say. */
+export const determinationName = (column: AnalyteColumn): string => `${column.analyte} ${column.index}`;
+
+/** Reads records into a draft, one by one, and lists what is wrong with them. */
+export class TableReader implements RowValues {
+  readonly plan: ColumnPlan;
+  readonly limits: ColumnLimits[];
+  readonly pending: PendingCell[] = [];
+  readonly #kind: TableKind;
+  readonly #mapping: FileMapping;
+  readonly #context: CheckContext;
+  readonly #draft: TableDraft;
+  readonly #problems: ProblemList;
+  readonly #numbers = new Map<ColumnRole, number>();
+  readonly #texts = new Map<ColumnRole, string>();
+  readonly #assays: AssayCell[] = [];
+  readonly #headers = new Map<ColumnRole, string>();
+
+  constructor(mapping: FileMapping, context: CheckContext, draft: TableDraft, problems: ProblemList) {
+    this.plan = planColumns(mapping);
+    this.limits = this.plan.analytes.map(() => new ColumnLimits());
+    this.#kind = mapping.kind;
+    this.#mapping = mapping;
+    this.#context = context;
+    this.#draft = draft;
+    this.#problems = problems;
+    for (const { role, header } of mapping.columns) if (!this.#headers.has(role)) this.#headers.set(role, header);
+  }
+
+  number(role: ColumnRole): number {
+    return this.#numbers.get(role) ?? Number.NaN;
+  }
+
+  text(role: ColumnRole): string {
+    return this.#texts.get(role) ?? '';
+  }
+
+  has(role: ColumnRole): boolean {
+    return this.#numbers.has(role) || this.#texts.has(role);
+  }
+
+  /** Takes one record; blank ones are passed over. Answers whether it was kept. */
+  read(row: number, cells: readonly string[]): boolean {
+    if (cells.length === 1 && cells[0]?.trim() === '') return false;
+    const tell = this.#teller(row, cells);
+    if (cells.length < this.plan.width) {
+      tell('', 'row-short', `expected at least ${this.plan.width} cells, found ${cells.length}`, 'aside', '');
+      return false;
+    }
+    const isReadable = [this.#readPlain(cells, tell), this.#readAssays(cells, tell)].every(Boolean);
+    const findings = isReadable ? checkRow(this.#kind, this, this.#context) : [];
+    for (const { role, code, message, severity } of findings) {
+      tell(this.#headers.get(role) ?? role, code, message, severity, this.#written(role));
+    }
+    if (!isReadable || findings.some(({ severity }) => severity === 'aside')) return false;
+    this.#keep(row, cells);
+    return true;
+  }
+
+  #written(role: ColumnRole): string {
+    const value = this.#texts.get(role) ?? this.#numbers.get(role);
+    return value === undefined || Number.isNaN(value) ? '' : String(value);
+  }
+
+  #teller(row: number, cells: readonly string[]): Teller {
+    return (column, code, message, severity, value) =>
+      this.#problems.add({ row, column, code, message, severity, value, original: cells.join(this.#mapping.delimiter) });
+  }
+
+  #readPlain(cells: readonly string[], tell: Teller): boolean {
+    let isReadable = true;
+    for (const { index, role } of this.plan.categories) this.#texts.set(role, (cells[index] ?? '').trim());
+    for (const { index, role } of this.plan.texts) this.#texts.set(role, (cells[index] ?? '').trim());
+    for (const { index, role, header } of this.plan.numbers) {
+      const text = (cells[index] ?? '').trim();
+      const value = text === '' ? Number.NaN : readNumber(text, this.#mapping.decimalMark);
+      if (value === null) {
+        tell(header, 'not-a-number', `expected a number for ${columnName(role)}, found “${text}”`, 'aside', text);
+        isReadable = false;
+      }
+      this.#numbers.set(role, this.#signed(role, value ?? Number.NaN));
+    }
+    return isReadable;
+  }
+
+  /** Dips are kept negative when they point down, whatever sign the file uses. */
+  #signed(role: ColumnRole, value: number): number {
+    const isSurveyDip = role === 'dip' && this.#kind === 'survey';
+    return isSurveyDip && this.#mapping.downIs === 'positive' ? -value : value;
+  }
+
+  #readAssays(cells: readonly string[], tell: Teller): boolean {
+    let isReadable = true;
+    this.plan.analytes.forEach(({ index, header }, place) => {
+      const text = (cells[index] ?? '').trim();
+      const cell = readAssayCell(text, this.#mapping.decimalMark);
+      this.#assays[place] = cell;
+      if (cell.kind !== 'refused') return;
+      tell(header, 'not-a-number', cell.message, 'aside', text);
+      isReadable = false;
+    });
+    return isReadable;
+  }
+
+  #keep(row: number, cells: readonly string[]): void {
+    const draft = this.#draft;
+    for (const { role } of this.plan.numbers) draft.numberColumn(columnName(role)).push(this.number(role));
+    for (const { role } of this.plan.categories) draft.categoryColumn(columnName(role)).push(this.text(role));
+    for (const { role } of this.plan.texts) draft.textColumn(columnName(role)).push(this.text(role));
+    this.plan.analytes.forEach((column, place) => {
+      const cell = this.#assays[place];
+      if (!cell || cell.kind === 'refused') return;
+      this.limits[place]?.see(cell);
+      const { values, qualifiers } = draft.assayColumn(determinationName(column), column.unit, column.method);
+      const isTold = cell.kind === 'told';
+      values.push(isTold ? cell.value * column.toPpm : Number.NaN);
+      qualifiers.push(isTold ? cell.qualifier : QUALIFIER.missing);
+      if (!isTold) this.pending.push({ column, index: draft.rows, row, text: cells[column.index] ?? '', magnitude: cell.magnitude });
+    });
+    draft.sourceRow.push(row);
+  }
+}
