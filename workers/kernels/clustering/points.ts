@@ -1,0 +1,147 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+
+/** Complete rows of a table, packed row by row for fast distances. */
+export interface PackedPoints {
+  /** Row-major, shape (n, p). */
+  points: Float64Array;
+  n: number;
+  p: number;
+  /** Index of each packed row in the input columns; null when every row was complete. */
+  rowOf: Uint32Array | null;
+  /** Rows left out because a coordinate is missing (NaN). */
+  nDropped: number;
+}
+
+/** Progress of a long loop, 0 to 1; may throw to cancel. */
+export type OnProgress = (share: number) => void;
+
+/**
+ * Packs columns into rows. A row with a missing coordinate (NaN) is left out and counted; an
+ * infinite coordinate is refused.
+ *
+ * @param columns p arrays of one length, any one unit per column.
+ * @throws {KernelError} `too-few-parts` without columns; `shape` when lengths differ; `not-finite`
+ *   with { row, col }; `too-few-rows` when no row is complete.
+ */
+export function packPoints(columns: readonly Float64Array[]): PackedPoints {
+  const p = columns.length;
+  const nRows = columns[0]?.length ?? 0;
+  if (p === 0) throw new KernelError('too-few-parts', 'expected at least one column, found none');
+  for (const [col, column] of columns.entries()) {
+    if (column.length !== nRows) {
+      throw new KernelError(
+        'shape',
+        `column ${col} has ${column.length} rows, the first has ${nRows}`,
+        { col },
+      );
+    }
+  }
+  const rowOf = completeRows(columns, nRows);
+  const n = rowOf?.length ?? nRows;
+  if (n === 0)
+    throw new KernelError('too-few-rows', `none of ${nRows} rows is complete in all ${p} columns`, {
+      nRows,
+    });
+  const points = new Float64Array(n * p);
+  for (let start = 0; start < n; start += BLOCK) {
+    const end = Math.min(n, start + BLOCK);
+    for (let col = 0; col < p; col++) copyBlock(columns[col]!, rowOf, points, col, p, start, end);
+  }
+  return { points, n, p, rowOf, nDropped: nRows - n };
+}
+
+/** Rows packed at a time, so that a block of every column stays in cache. */
+const BLOCK = 2048;
+
+function copyBlock(
+  column: Float64Array,
+  rowOf: Uint32Array | null,
+  points: Float64Array,
+  col: number,
+  p: number,
+  start: number,
+  end: number,
+): void {
+  if (rowOf) for (let i = start; i < end; i++) points[i * p + col] = column[rowOf[i]!]!;
+  else for (let i = start; i < end; i++) points[i * p + col] = column[i]!;
+}
+
+/** Indices of rows without NaN, or null when that is all of them. */
+function completeRows(columns: readonly Float64Array[], nRows: number): Uint32Array | null {
+  if (columns.every(isAllFinite)) return null;
+  const rows = new Uint32Array(nRows);
+  let count = 0;
+  for (let row = 0; row < nRows; row++) {
+    let complete = true;
+    for (let col = 0; col < columns.length; col++) {
+      const value = columns[col]![row]!;
+      if (Math.abs(value) === Infinity) {
+        throw new KernelError(
+          'not-finite',
+          `expected a finite coordinate, found ${value} in row ${row}, column ${col}`,
+          { row, col },
+        );
+      }
+      complete &&= value === value;
+    }
+    if (complete) rows[count++] = row;
+  }
+  return rows.slice(0, count);
+}
+
+/** x - x is 0 for finite x and NaN otherwise. */
+function isAllFinite(column: Float64Array): boolean {
+  let sum = 0;
+  for (let i = 0; i < column.length; i++) sum += column[i]! - column[i]!;
+  return sum === 0;
+}
+
+/** The packed rows' share of a per-row array (weights, labels), in packed order. */
+export function packedWeights(
+  weights: Float64Array | undefined,
+  packed: PackedPoints,
+  nRows: number,
+): Float64Array | null {
+  if (!weights) return null;
+  if (weights.length !== nRows) {
+    throw new KernelError('shape', `${weights.length} weights for ${nRows} rows`);
+  }
+  const out = packed.rowOf
+    ? Float64Array.from(packed.rowOf, (row) => weights[row] ?? NaN)
+    : weights;
+  for (let i = 0; i < out.length; i++) {
+    const weight = out[i]!;
+    if (!(weight > 0 && weight < Infinity)) {
+      const row = packed.rowOf?.[i] ?? i;
+      throw new KernelError(
+        'not-positive',
+        `expected a weight > 0, found ${weight} in row ${row}`,
+        { row },
+      );
+    }
+  }
+  return out;
+}
+
+/** True when at least `wanted` rows differ from each other. */
+export function hasDistinctRows({ points, n, p }: PackedPoints, wanted: number): boolean {
+  const found: number[] = [];
+  for (let i = 0; i < n && found.length < wanted; i++) {
+    const isNew = found.every((other) => {
+      for (let j = 0; j < p; j++) if (points[i * p + j] !== points[other * p + j]) return true;
+      return false;
+    });
+    if (isNew) found.push(i);
+  }
+  return found.length >= wanted;
+}
+
+/** Copies the given rows of a packed table. */
+export function takeRows(points: Float64Array, p: number, rows: Uint32Array): Float64Array {
+  const out = new Float64Array(rows.length * p);
+  for (let i = 0; i < rows.length; i++) {
+    const from = rows[i]! * p;
+    for (let j = 0; j < p; j++) out[i * p + j] = points[from + j]!;
+  }
+  return out;
+}
