@@ -14,15 +14,32 @@ const isAbsent = (error: unknown): boolean =>
 const isOldPage = (error: unknown): boolean =>
   error instanceof TypeError && /dynamically imported module|module script/i.test(error.message);
 
-/** What is shown where a page could not be. */
+/** What is shown where a whole page could not be. */
 export function RouteError() {
-  const error = useRouteError();
+  return (
+    <main id="main" tabIndex={-1} className="px-5 py-6">
+      <PageError />
+    </main>
+  );
+}
+
+/** The same inside a shell, whose bar and rail stay. */
+export function PageError() {
+  return <Failure error={useRouteError()} />;
+}
+
+/** An address that has no page. */
+export function NothingHere() {
+  return <Failure error={new Absent()} />;
+}
+
+function Failure({ error }: { error: unknown }) {
   const isMissing = isAbsent(error);
   useEffect(() => {
     document.title = isMissing ? 'Not here · Selvage' : 'Something failed · Selvage';
   }, [isMissing]);
   return (
-    <main id="main" tabIndex={-1} className="mx-auto grid w-full max-w-[36rem] gap-3 px-5 py-10">
+    <div className="mx-auto grid w-full max-w-[36rem] gap-3 py-6">
       <h1 className="font-read text-title">{isMissing ? 'Nothing at this address' : 'This page could not be shown'}</h1>
       {isMissing ? (
         <p className="font-read text-finding text-ink-2">
@@ -41,6 +58,6 @@ export function RouteError() {
         )}
         <LinkButton to="/deposits">All deposits</LinkButton>
       </div>
-    </main>
+    </div>
   );
 }

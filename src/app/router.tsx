@@ -5,7 +5,7 @@ import { hasStatus } from '#src/lib/api-problem.ts';
 import { depositQuery, stagesQuery } from '#src/lib/deposit-queries.ts';
 import { setPreferencePerson } from '#src/lib/preferences.ts';
 import { instanceQuery, meQuery } from '#src/lib/session.ts';
-import { RouteError } from './route-error.tsx';
+import { NothingHere, PageError, RouteError } from './route-error.tsx';
 import { RoutePending } from './route-pending.tsx';
 import { signInAddress } from './safe-return.ts';
 
@@ -78,7 +78,7 @@ export const makeRoutes = (queryClient: QueryClient): RouteObject[] => [
         children: [
           {
             lazy: async () => ({ Component: (await import('./shell/plain-shell.tsx')).PlainShell }),
-            children: [{ ErrorBoundary: RouteError, children: peopleRoutes }],
+            children: [{ ErrorBoundary: PageError, children: peopleRoutes }],
           },
           {
             path: 'deposits/:depositId',
@@ -86,7 +86,7 @@ export const makeRoutes = (queryClient: QueryClient): RouteObject[] => [
             shouldRevalidate: ({ currentParams, nextParams }) => currentParams['depositId'] !== nextParams['depositId'],
             ErrorBoundary: RouteError,
             lazy: async () => ({ Component: (await import('./shell/deposit-shell.tsx')).DepositShell }),
-            children: [{ ErrorBoundary: RouteError, children: [...depositRoutes, { path: '*', Component: NoSuchPage }] }],
+            children: [{ ErrorBoundary: PageError, children: [...depositRoutes, { path: '*', Component: NothingHere }] }],
           },
         ],
       },
@@ -95,8 +95,12 @@ export const makeRoutes = (queryClient: QueryClient): RouteObject[] => [
   },
 ];
 
-function NoSuchPage(): never {
-  throw new Absent();
+function NoSuchPage() {
+  return (
+    <main id="main" tabIndex={-1} className="px-5 py-6">
+      <NothingHere />
+    </main>
+  );
 }
 
 export const makeRouter = (queryClient: QueryClient) => createBrowserRouter(makeRoutes(queryClient));

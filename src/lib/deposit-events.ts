@@ -2,7 +2,7 @@ import { useQueryClient, type QueryClient } from '@tanstack/react-query';
 import { useEffect } from 'react';
 import { DepositEvent, streamEvents } from '#contract/jobs.ts';
 import { endpointUrl } from './api-client.ts';
-import { isActive, jobsQuery, rememberJob } from './jobs.ts';
+import { jobsQuery, rememberJob } from './jobs.ts';
 
 /** What almost any change may alter. */
 const ALWAYS = ['stages', 'overview'];
@@ -10,8 +10,7 @@ const ALWAYS = ['stages', 'overview'];
 /** One event: a job moved, or a resource changed and what was read of it is old. */
 export function applyDepositEvent(queryClient: QueryClient, depositId: number, event: DepositEvent): void {
   if (event.type === 'job') {
-    rememberJob(queryClient, event.job);
-    if (!isActive(event.job)) refresh(queryClient, depositId, ALWAYS);
+    if (rememberJob(queryClient, event.job)) refresh(queryClient, depositId, ALWAYS);
     return;
   }
   refresh(queryClient, depositId, [event.resource, ...ALWAYS]);

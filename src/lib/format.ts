@@ -1,7 +1,10 @@
 import type { GradeUnit } from '#contract/deposits.ts';
 
-/** Thin, and does not break: stands between a number and its unit. */
-export const THIN_SPACE = '\u202f';
+/**
+ * Stands between a number and its unit and does not break. In our type a no-break space is a fifth of
+ * an em, a thin space by width; its own thin space is a tenth, too little to see.
+ */
+export const THIN_SPACE = '\u00a0';
 export const MINUS = '\u2212';
 export const MISSING = '\u2013';
 
@@ -38,14 +41,14 @@ export const formatFixed = (value: number, decimals: number): string =>
   written(value, { minimumFractionDigits: decimals, maximumFractionDigits: decimals });
 
 /**
- * With so many significant figures, but whole numbers are never rounded away: 1,110 stays 1,110
- * with two figures or three. A value of 0 is "0".
+ * With at most so many significant figures, but whole numbers are never rounded away: 1,114 stays
+ * 1,114 with three. Zeros that only fill up are left out: 0.53, not 0.530.
  */
 export function formatFigures(value: number, figures = 3): string {
   if (!Number.isFinite(value)) return MISSING;
   if (value === 0) return '0';
   const magnitude = Math.floor(Math.log10(Math.abs(value)));
-  return formatFixed(value, Math.min(10, Math.max(0, figures - 1 - magnitude)));
+  return written(value, { maximumFractionDigits: Math.min(10, Math.max(0, figures - 1 - magnitude)) });
 }
 
 export const formatCount = (count: number): string => written(count, { maximumFractionDigits: 0 });

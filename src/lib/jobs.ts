@@ -18,17 +18,24 @@ export const jobQuery = (depositId: number, jobId: number) =>
 export const isActive = (job: Job): boolean =>
   job.state === 'queued' || job.state === 'running' || job.state === 'interrupted';
 
-/** Puts what a job has become into the list and the single entry. Progress never runs backwards. */
-export function rememberJob(queryClient: QueryClient, job: Job): void {
+/**
+ * Puts what a job has become into the list and the single entry. Progress never runs backwards.
+ *
+ * @returns whether a job known to be under way has ended by it.
+ */
+export function rememberJob(queryClient: QueryClient, job: Job): boolean {
   const { depositId, id } = job;
-  const known = queryClient.getQueryData(jobQuery(depositId, id).queryKey);
-  if (known && !isNews(known, job)) return;
-  queryClient.setQueryData(jobQuery(depositId, id).queryKey, job);
-  queryClient.setQueryData(jobsQuery(depositId).queryKey, (jobs) => {
+  const listKey = jobsQuery(depositId).queryKey;
+  const oneKey = jobQuery(depositId, id).queryKey;
+  const known = queryClient.getQueryData(oneKey) ?? queryClient.getQueryData(listKey)?.find((other) => other.id === id);
+  if (known && !isNews(known, job)) return false;
+  queryClient.setQueryData(oneKey, job);
+  queryClient.setQueryData(listKey, (jobs) => {
     if (!jobs) return jobs;
     const others = jobs.filter((other) => other.id !== id);
     return [job, ...others].sort((a, b) => b.id - a.id);
   });
+  return known !== undefined && isActive(known) && !isActive(job);
 }
 
 function isNews(known: Job, job: Job): boolean {

@@ -22,7 +22,7 @@ export function DepositSwitcher() {
           heading: 'Deposits',
           items: deposits.map(({ id, name, metres, isDemo }) => ({
             label: name,
-            hint: `${formatMetres(metres)}${isDemo ? ' · demonstration' : ''}`,
+            hint: `${metres > 0 ? formatMetres(metres) : 'nothing loaded yet'}${isDemo ? ' · demonstration' : ''}`,
             isChosen: id === deposit.id,
             run: go(`/deposits/${id}`),
           })),
@@ -36,7 +36,8 @@ export function DepositSwitcher() {
         { items: [{ label: 'All deposits', run: go('/deposits') }, { label: 'New deposit', run: go('/deposits/new') }] },
       ]}
       trigger={
-        <button type="button" aria-label={`Deposit: ${deposit.name}`} className="flex max-w-full min-w-0 items-center gap-1.5 rounded-2 border-0 bg-transparent px-1.5 py-0.5 hover:bg-trough max-md:min-h-9">
+        <button type="button" className="flex max-w-full min-w-0 items-center gap-1.5 rounded-2 border-0 bg-transparent px-1.5 py-0.5 hover:bg-trough max-md:min-h-9">
+          <span className="sr-only">Deposit: </span>
           <span className="truncate text-[0.9375rem] font-semibold">{deposit.name}</span>
           {about && <span className="truncate text-small text-ink-3 max-lg:hidden">{about}</span>}
           <Icon icon={ChevronsUpDown} size={14} className="text-ink-2" />

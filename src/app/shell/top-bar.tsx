@@ -91,8 +91,9 @@ function YouMenu() {
         { items: [{ label: 'Sign out', run: () => signOut.mutate(undefined, { onError: notifyProblem }) }] },
       ]}
       trigger={
-        <button type="button" aria-label={`Your account: ${me.name}`} className="grid size-7 shrink-0 place-items-center rounded-full border-0 bg-trough-deep text-caption font-semibold text-ink max-md:size-8">
-          {initials(me.name)}
+        <button type="button" className="grid size-7 shrink-0 place-items-center rounded-full border-0 bg-trough-deep text-caption font-semibold text-ink max-md:size-8">
+          <span aria-hidden>{initials(me.name)}</span>
+          <span className="sr-only">Your account: {me.name}</span>
         </button>
       }
     />

@@ -22,7 +22,7 @@ export function StageRail({ depositId, stages, foot }: Props) {
           </li>
         ))}
       </ol>
-      {foot && <div className="mt-auto grid border-t border-rule px-3 py-2 text-caption text-ink-3 max-lg:hidden">{foot}</div>}
+      {foot && <div className="mt-auto grid border-t border-rule px-3 py-2 text-caption text-ink-3 empty:hidden max-lg:hidden">{foot}</div>}
     </nav>
   );
 }

@@ -20,6 +20,15 @@ interface Props {
 export const OVERLAY = 'fixed inset-0 z-40 bg-[#1714118c]';
 export const FLOATING = 'opens fixed left-1/2 z-50 -translate-x-1/2 rounded-3 border border-rule bg-sheet text-ink shadow-float';
 
+/** Focus goes to the first thing to fill in; a dialog without one takes it itself. */
+function focusFirstField(event: Event): void {
+  const content = event.currentTarget;
+  if (!(content instanceof HTMLElement)) return;
+  event.preventDefault();
+  const field = content.querySelector<HTMLElement>('input:not([type="hidden"]), select, textarea');
+  (field ?? content).focus();
+}
+
 /** Only for signing, sharing, and what cannot be undone; all else happens in place. */
 export function Dialog({ isOpen, onClose, title, description, children, actions, width = 'narrow' }: Props) {
   return (
@@ -28,6 +37,7 @@ export function Dialog({ isOpen, onClose, title, description, children, actions,
         <Radix.Overlay className={OVERLAY} />
         <Radix.Content
           {...(description ? {} : { 'aria-describedby': undefined })}
+          onOpenAutoFocus={focusFirstField}
           className={cx(FLOATING, 'top-[12vh] max-h-[80dvh] w-[calc(100vw-2rem)] overflow-auto p-4', width === 'narrow' ? 'max-w-[28rem]' : 'max-w-[44rem]')}
         >
           <div className="flex items-start gap-2">

@@ -6,8 +6,11 @@ import { ToneMark } from './chip.tsx';
 /** What a form library or a server says about one field. */
 export type FieldError = { message?: string | undefined } | string | null | undefined;
 
-export const errorText = (error: FieldError): string | undefined =>
-  typeof error === 'string' ? error || undefined : error?.message || (error ? 'expected another value' : undefined);
+export function errorText(error: FieldError): string | undefined {
+  if (!error) return undefined;
+  const text = (typeof error === 'string' ? error : error.message) || 'Expected another value';
+  return text.charAt(0).toUpperCase() + text.slice(1);
+}
 
 export interface FieldLook {
   label: ReactNode;

@@ -33,7 +33,7 @@ interface Props {
 
 export function Menu({ trigger, groups, align = 'end', head }: Props) {
   return (
-    <DropdownMenu.Root>
+    <DropdownMenu.Root modal={false}>
       <DropdownMenu.Trigger asChild>{trigger}</DropdownMenu.Trigger>
       <DropdownMenu.Portal>
         <DropdownMenu.Content align={align} sideOffset={5} collisionPadding={8} className="opens z-40 max-h-[var(--radix-dropdown-menu-content-available-height)] max-w-80 min-w-48 overflow-auto rounded-3 border border-rule bg-sheet p-1 shadow-float">

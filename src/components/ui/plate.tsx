@@ -57,40 +57,45 @@ export function Plate(props: Props) {
       className={cx('relative flex min-w-0 flex-col rounded-b-2 border border-t-2 border-rule bg-sheet', tone === 'signing' ? 'border-t-copper' : 'border-t-ink-3', className)}
     >
       {stale && <span aria-hidden className="hatch absolute inset-x-[-1px] -top-0.5 h-[5px] bg-sheet" />}
-      {isBusyShown && busy && <PlateProgress busy={busy} title={title} />}
-      <header className="flex min-h-[30px] flex-wrap items-center gap-x-2 gap-y-1 px-3 pt-[5px] pr-2 pb-[3px]">
-        <h2 id={id} className="text-body font-semibold">{title}</h2>
-        {qualifier && <span className="min-w-0 text-caption text-ink-3">{qualifier}</span>}
-        {stale && <Chip tone="stale">stale: {stale}</Chip>}
-        <span className="flex-1" />
-        {tools}
+      {isBusyShown && busy && (
+        <div className="absolute inset-x-[-1px] -top-0.5">
+          <ProgressRun value={busy.progress} label={`${title}: ${busy.phase ?? 'at work'}`} />
+        </div>
+      )}
+      <header className="flex min-h-[30px] items-center gap-x-2 gap-y-1 px-3 pt-[5px] pr-2 pb-[3px] max-md:flex-wrap">
+        <div className="flex min-w-0 flex-1 flex-wrap items-center gap-x-2 max-md:basis-1/2">
+          <h2 id={id} className="text-body font-semibold">{title}</h2>
+          {qualifier && <span className="min-w-0 text-caption text-ink-3">{qualifier}</span>}
+          {stale && <Chip tone="stale">stale: {stale}</Chip>}
+        </div>
+        {tools && <div className="flex shrink-0 flex-wrap items-center gap-2 max-md:max-w-full">{tools}</div>}
         {exports && exports.length > 0 && <Menu trigger={<IconButton icon={Download} label={`Download: ${title}`} />} groups={[{ items: exports }]} />}
         {help && <HelpButton subject={title} help={help} />}
       </header>
-      <div className={cx('min-h-0 min-w-0 flex-1 transition-opacity', isFlush ? 'pb-0' : 'px-3 pb-2', isBusyShown && 'opacity-40')}>
-        {error ? <Problem error={error} {...(onRetry ? { action: { label: 'Try again', run: onRetry } } : {})} /> : (empty ?? children)}
+      <div className="relative flex min-h-0 min-w-0 flex-1 flex-col">
+        {isBusyShown && busy && <BusyLine busy={busy} />}
+        <div className={cx('min-h-0 min-w-0 flex-1 transition-opacity', !isFlush && 'px-3 pb-2', isBusyShown && 'opacity-40')}>
+          {error ? <Problem error={error} {...(onRetry ? { action: { label: 'Try again', run: onRetry } } : {})} /> : (empty ?? children)}
+        </div>
       </div>
       {caption && <footer className="border-t border-dotted border-rule px-3 pt-1 pb-1.5 text-caption text-ink-3">{caption}</footer>}
     </section>
   );
 }
 
-function PlateProgress({ busy, title }: { busy: PlateBusy; title: string }) {
+/** Over one second: what it is at, how far, and the way out. */
+function BusyLine({ busy }: { busy: PlateBusy }) {
   const isLong = useDelayed(true, 700);
+  if (!isLong) return null;
   return (
-    <>
-      <div className="absolute inset-x-[-1px] -top-0.5">
-        <ProgressRun value={busy.progress} label={`${title}: ${busy.phase ?? 'at work'}`} />
-      </div>
-      {isLong && (
-        <div className="absolute inset-x-3 top-1.5 z-10 flex items-center justify-end gap-2 text-caption">
-          <span className="rounded-1 bg-sheet px-1.5 text-ink-2">
-            {busy.phase ?? 'at work'}
-            {busy.progress !== null && `, ${formatShare(busy.progress)}`}
-          </span>
-          {busy.onCancel && <Button size="tiny" onClick={busy.onCancel}>Cancel</Button>}
-        </div>
+    <div className="absolute top-0 right-3 z-10 flex items-center gap-2 rounded-2 border border-rule bg-sheet py-1 pr-1 pl-2 text-caption text-ink-2">
+      {busy.phase ?? 'at work'}
+      {busy.progress !== null && `, ${formatShare(busy.progress)}`}
+      {busy.onCancel && (
+        <Button size="tiny" onClick={busy.onCancel}>
+          Cancel
+        </Button>
       )}
-    </>
+    </div>
   );
 }

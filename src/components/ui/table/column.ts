@@ -17,6 +17,8 @@ export interface Column<Row> {
   isMono?: boolean;
   /** Width in rem. Long tables keep their widths while rows go by, so give one to all but the last. */
   widthRem?: number;
+  /** Stays on one line: dates, intervals. Numbers do anyway. */
+  isWhole?: boolean;
   /** False: no sort button. */
   isSortable?: boolean;
   /** Not in CSV and TSV: buttons and other controls. */

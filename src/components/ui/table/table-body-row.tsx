@@ -50,6 +50,7 @@ export function TableBodyRow<Row>(props: Props<Row>) {
           'align-middle text-ink',
           ALIGN[column.align ?? 'left'],
           column.isMono && 'font-mono text-[0.75rem]',
+          (column.isWhole || column.isMono || column.align === 'right') && 'whitespace-nowrap',
           isVirtual && 'truncate',
         );
         const key = `${column.header} ${column.unit ?? ''}`;

@@ -4,6 +4,7 @@ import { cx } from '#src/lib/cx.ts';
 import type { Column } from './column.ts';
 import { TableBodyRow } from './table-body-row.tsx';
 import { TableHead } from './table-head.tsx';
+import { useOverflows } from './use-overflows.ts';
 import { useRowCursor } from './use-row-cursor.ts';
 import { useTableModel, type SortBy } from './use-table-model.ts';
 
@@ -39,6 +40,7 @@ export function Table<Row extends object>(props: TableProps<Row>) {
   const { caption, isCaptionShown, columns, rows, rowKey, firstSort, isDense, empty, className } = props;
   const { onPick, isPicked, onHover, rowClass } = props;
   const scroller = useRef<HTMLDivElement>(null);
+  const isScrolling = useOverflows(scroller, rows.length > 0 || empty === undefined);
   const model = useTableModel(columns, rows, rowKey, firstSort);
   const isVirtual = model.rows.length >= VIRTUAL_FROM;
   const maxHeightRem = props.maxHeightRem ?? (isVirtual ? 28 : undefined);
@@ -62,7 +64,7 @@ export function Table<Row extends object>(props: TableProps<Row>) {
   return (
     <div
       ref={scroller}
-      {...(maxHeightRem ? { tabIndex: onPick ? -1 : 0, role: 'group', 'aria-label': `${caption}, scrolls` } : {})}
+      {...(isScrolling ? { tabIndex: 0, role: 'group', 'aria-label': `${caption}, scrolls` } : {})}
       className={cx('relative min-w-0 overflow-auto', className)}
       style={maxHeightRem ? { maxHeight: `${maxHeightRem}rem` } : undefined}
     >

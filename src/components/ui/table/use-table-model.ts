@@ -1,5 +1,6 @@
 import { createSortedRowModel, rowSortingFeature, tableFeatures, useTable, type ColumnDef, type SortingState } from '@tanstack/react-table';
 import { useMemo, useState } from 'react';
+import type { Cell } from '#src/lib/delimited.ts';
 import { compareCells, isMissing, valueOf, type Column } from './column.ts';
 
 const features = tableFeatures({ rowSortingFeature, sortedRowModel: createSortedRowModel() });
@@ -29,7 +30,7 @@ function definition<Row extends object>(column: Column<Row>): ColumnDef<typeof f
     },
     enableSorting: column.isSortable !== false && !column.isControl,
     sortUndefined: 'last',
-    sortFn: (a, b) => compareCells(valueOf(column, a.original), valueOf(column, b.original)),
+    sortFn: (a, b, id) => compareCells(a.getValue<Cell>(id), b.getValue<Cell>(id)),
   };
 }
 

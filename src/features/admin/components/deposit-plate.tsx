@@ -16,7 +16,7 @@ const COLUMNS: Column<AdminDeposit>[] = [
   { header: 'Leads', cell: ({ leads }) => leads.join(', ') },
   { header: 'Members', align: 'right', cell: ({ members }) => members },
   { header: 'Stored', align: 'right', cell: ({ bytesStored }) => formatBytes(bytesStored), value: ({ bytesStored }) => bytesStored },
-  { header: 'Created', cell: ({ createdAt }) => formatDate(createdAt), value: ({ createdAt }) => createdAt },
+  { header: 'Created', isWhole: true, cell: ({ createdAt }) => formatDate(createdAt), value: ({ createdAt }) => createdAt },
 ];
 
 /** All deposits by name and size; administration opens no deposit's contents. */

@@ -46,9 +46,9 @@ const WORDS: Record<Switch, readonly [string, string]> = {
 };
 
 const userColumns = (myId: number, flip: (user: AdminUser, field: Switch) => void): Column<AdminUser>[] => [
-  { header: 'Name', rowHeader: true, cell: ({ name, email }) => <><span>{name}</span> <span className="block font-normal break-all text-ink-3">{email}</span></>, value: ({ name }) => name },
+  { header: 'Name', rowHeader: true, cell: ({ name, email }) => <><span>{name}</span> <span className="block font-normal whitespace-nowrap text-ink-3">{email}</span></>, value: ({ name }) => name },
   { header: 'Deposits', align: 'right', cell: ({ deposits }) => deposits },
-  { header: 'Last seen', cell: ({ lastSeenAt }) => (lastSeenAt ? formatWhen(lastSeenAt) : 'never'), value: ({ lastSeenAt }) => lastSeenAt },
+  { header: 'Last seen', isWhole: true, cell: ({ lastSeenAt }) => (lastSeenAt ? formatWhen(lastSeenAt) : 'never'), value: ({ lastSeenAt }) => lastSeenAt },
   {
     header: 'State',
     value: ({ isActive, isAdministrator }) => `${isActive ? 'open' : 'ended'}${isAdministrator ? ', administrator' : ''}`,

@@ -28,8 +28,8 @@ export function SessionTable() {
 const sessionColumns = (onEnd: (sessionId: string) => void): Column<SessionRow>[] => [
   { header: 'Browser', rowHeader: true, cell: ({ userAgent }) => <span title={userAgent}>{deviceWords(userAgent)}</span>, value: ({ userAgent }) => deviceWords(userAgent) },
   { header: 'Address', cell: ({ address }) => address, isMono: true },
-  { header: 'Since', cell: ({ createdAt }) => formatInstant(createdAt), value: ({ createdAt }) => createdAt },
-  { header: 'Last seen', cell: ({ lastSeenAt }) => formatInstant(lastSeenAt), value: ({ lastSeenAt }) => lastSeenAt },
+  { header: 'Since', isWhole: true, cell: ({ createdAt }) => formatInstant(createdAt), value: ({ createdAt }) => createdAt },
+  { header: 'Last seen', isWhole: true, cell: ({ lastSeenAt }) => formatInstant(lastSeenAt), value: ({ lastSeenAt }) => lastSeenAt },
   {
     header: 'End',
     isControl: true,

@@ -63,7 +63,7 @@ function MetresLine({ run, total, step }: LineProps) {
   const notches = Array.from({ length: Math.ceil(metres / step) - 1 }, (_, index) => ((index + 1) * step) / total);
   return (
     <>
-      <span className="text-right text-ink-2">{label}</span>
+      <span className="col-start-1 text-right text-ink-2">{label}</span>
       <div className="h-4 rounded-1 border border-trough-deep bg-trough py-px" role="img" aria-label={`${label}: ${formatMetres(metres)} of ${formatMetres(total)}${isStale ? ', stale' : ''}${note ? `, ${note}` : ''}`}>
         <div className="relative h-full">
           <span className={cx('block h-full', isStale ? 'hatch bg-sheet' : 'bg-ink-3')} style={{ width: `${share * 100}%` }} />

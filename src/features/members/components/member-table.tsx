@@ -45,8 +45,17 @@ type ChangeRole = (member: Member, role: Role) => void;
 
 function columnsFor(mayChange: boolean, onRemove: (member: Member) => void, onChange: ChangeRole): Column<Member>[] {
   const base: Column<Member>[] = [
-    { header: 'Name', rowHeader: true, cell: ({ name }) => name },
-    { header: 'E-mail', cell: ({ email }) => <span className="break-all">{email}</span>, value: ({ email }) => email },
+    {
+      header: 'Name',
+      rowHeader: true,
+      value: ({ name }) => name,
+      cell: ({ name, email }) => (
+        <>
+          {name}
+          <span className="block font-normal whitespace-nowrap text-ink-3">{email}</span>
+        </>
+      ),
+    },
     {
       header: 'Role',
       value: ({ role }) => ROLES.indexOf(role),
@@ -57,7 +66,7 @@ function columnsFor(mayChange: boolean, onRemove: (member: Member) => void, onCh
           ROLE_NAMES[member.role]
         ),
     },
-    { header: 'Since', cell: ({ since }) => formatDate(since), value: ({ since }) => since },
+    { header: 'Since', isWhole: true, cell: ({ since }) => formatDate(since), value: ({ since }) => since },
   ];
   if (!mayChange) return base;
   const remove: Column<Member> = {

@@ -57,9 +57,10 @@ const tokenColumns = (onRevoke: (token: ApiToken) => void): Column<ApiToken>[] =
   { header: 'Name', rowHeader: true, cell: ({ name }) => name },
   { header: 'Right', cell: ({ right }) => RIGHT_WORDS[right].label },
   { header: 'Of', cell: ({ owner }) => owner.name },
-  { header: 'Last used', cell: ({ lastUsedAt }) => (lastUsedAt ? formatDate(lastUsedAt) : 'never'), value: ({ lastUsedAt }) => lastUsedAt },
+  { header: 'Last used', isWhole: true, cell: ({ lastUsedAt }) => (lastUsedAt ? formatDate(lastUsedAt) : 'never'), value: ({ lastUsedAt }) => lastUsedAt },
   {
     header: 'Ends',
+    isWhole: true,
     value: ({ expiresAt }) => expiresAt,
     cell: ({ expiresAt }) => (Date.parse(expiresAt) < Date.now() ? <Chip tone="bad">ended</Chip> : formatDate(expiresAt)),
   },

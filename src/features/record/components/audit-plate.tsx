@@ -18,7 +18,7 @@ import { auditQuery, PAGE_SIZE } from '../api/record-queries.ts';
 const VIEW = { text: urlText(), page: urlNumber(1) };
 
 const COLUMNS: Column<AuditEntry>[] = [
-  { header: 'When', widthRem: 10, isSortable: false, cell: ({ at }) => <time dateTime={at} title={formatInstantFully(at)}>{formatInstant(at)}</time>, value: ({ at }) => at },
+  { header: 'When', isWhole: true, widthRem: 10, isSortable: false, cell: ({ at }) => <time dateTime={at} title={formatInstantFully(at)}>{formatInstant(at)}</time>, value: ({ at }) => at },
   { header: 'Who', widthRem: 9, isSortable: false, cell: ({ who }) => who, rowHeader: true },
   { header: 'What', isSortable: false, cell: ({ sentence }) => sentence },
   { header: 'Kind', widthRem: 11, isSortable: false, isMono: true, cell: ({ action }) => action },
