@@ -60,6 +60,16 @@ export function association(counts: Float64Array, nCols: number): Association | 
   };
 }
 
+/**
+ * V in a word: none below .1, weak to .3, moderate to .5, strong above (common practice, from memory;
+ * a reading aid, not a test).
+ */
+export function strengthInWords(v: number): 'none' | 'weak' | 'moderate' | 'strong' {
+  if (v < 0.1) return 'none';
+  if (v < 0.3) return 'weak';
+  return v < 0.5 ? 'moderate' : 'strong';
+}
+
 /** phi^2 = chi-square / n. */
 function meanSquareContingency(
   counts: Float64Array,

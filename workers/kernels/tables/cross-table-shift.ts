@@ -36,11 +36,12 @@ export function crossTableShiftTest(
   if (new Set(rowCodes).size < 2 || new Set(colCodes).size < 2) return null;
   const weights = cellWeights(rowCodes, colCodes, rows.levels.length, cols.levels.length);
   const nCols = cols.levels.length;
-  const cells = new Float64Array(rows.levels.length * nCols);
+  const cells = new Int32Array(rows.levels.length * nCols);
+  const rowBase = rowCodes.map((code) => code * nCols);
   const chiSquare = new Float64Array(1);
   const statistics = (source: Int32Array): Float64Array => {
     cells.fill(0);
-    for (let i = 0; i < nUsed; i++) cells[rowCodes[i]! * nCols + colCodes[source[i]!]!]! += 1;
+    for (let i = 0; i < nUsed; i++) cells[rowBase[i]! + colCodes[source[i]!]!]! += 1;
     let sum = 0;
     for (let cell = 0; cell < cells.length; cell++)
       sum += cells[cell]! * cells[cell]! * weights[cell]!;

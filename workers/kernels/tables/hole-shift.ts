@@ -122,5 +122,7 @@ function drawShift(
 }
 
 function turn(start: number, rows: number, by: number, source: Int32Array): void {
-  for (let i = 0; i < rows; i++) source[start + i] = start + ((i + by) % rows);
+  const kept = rows - by;
+  for (let i = 0; i < kept; i++) source[start + i] = start + by + i;
+  for (let i = kept; i < rows; i++) source[start + i] = start + i - kept;
 }

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { association, entropy, millerMadow } from '#kernels/tables/association.ts';
+import { association, entropy, millerMadow, strengthInWords } from '#kernels/tables/association.ts';
 import { categoryFrom } from '#kernels/tables/category.ts';
 import { chiSquareTest, residualSignificance } from '#kernels/tables/chi-square.ts';
 import { crossTabulate } from '#kernels/tables/cross-tabulation.ts';
@@ -8,7 +8,7 @@ import { chiSquareTail } from '#kernels/tables/special-functions.ts';
 import { expectWithin } from '#tests/support/expect-within.ts';
 import { givenLabels, loadReference, textsOf } from '#tests/support/reference.ts';
 
-/** Party by gender, Agresti (2007), An Introduction to Categorical Data Analysis, table 2.5. */
+/** Gender by party, Agresti (2007), An Introduction to Categorical Data Analysis (counts from memory). */
 const agresti = Float64Array.from([762, 327, 468, 484, 239, 477]);
 const tested = (counts: Float64Array, nCols: number) => {
   const test = chiSquareTest(counts, nCols);
@@ -97,6 +97,15 @@ describe('association', () => {
     expect(entropy(Float64Array.of(7, 0))).toBe(0);
     expect(entropy(new Float64Array(0))).toBe(0);
     expect(millerMadow(3, 50)).toBeCloseTo(0.02, 12);
+  });
+
+  it.each([
+    [0.09, 'none'],
+    [0.1, 'weak'],
+    [0.3, 'moderate'],
+    [0.5, 'strong'],
+  ])('reads V %f as %s', (v, words) => {
+    expect(strengthInWords(v)).toBe(words);
   });
 
   it('is 1 when one label decides the other and null with one level', () => {
