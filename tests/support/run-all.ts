@@ -44,8 +44,7 @@ check('lint', ['eslint', '.', '--max-warnings', '0']);
 check('types', ['tsc', '--noEmit']);
 vitest('unit, reference and API tests', ['node', 'dom']);
 check('build of the client', ['vite', 'build', '--logLevel', 'warn']);
-check('build of the server', ['tsc', '-p', 'tsconfig.server.json']);
-check('layout of the built server', ['tsx', 'server/cli/finish-build.ts']);
+check('build of the server', ['tsx', 'server/cli/build-server.ts']);
 if (ensureChromium()) {
   vitest('browser journeys', ['journeys']);
 } else {

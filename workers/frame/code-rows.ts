@@ -1,5 +1,7 @@
 import { UNASSIGNED } from '#contract/domains.ts';
 import { FRAME } from '#contract/snapshots.ts';
+import { assignDomains, type GroupRule } from '#kernels/recipe/assign-domains.ts';
+import type { Category } from '#kernels/tables/category.ts';
 import type { ColumnStore } from '#server/db/column-store.ts';
 import type { CodeRow } from './code-lines.ts';
 import { ofSupport, readFrameCategory, readLengths, supportRange, type SnapshotTables, type Support } from './snapshot-tables.ts';
@@ -17,10 +19,9 @@ export interface CodeRowsInput {
 /** Frame column of a zone run that tells whether a row lies in a zone of an analyte. */
 export const zoneColumn = (analyte: string): string => `zone of ${analyte}`;
 
-/** Code of each group label; a group in no rule is unassigned, and a group has one code at most. */
-export function codeByGroup(rules: readonly { code: string; groupLabels: readonly number[] }[]): (label: number) => string {
-  const codes = new Map(rules.flatMap(({ code, groupLabels }) => groupLabels.map((label): [number, string] => [label, code])));
-  return (label) => codes.get(label) ?? UNASSIGNED;
+/** One code for every row by its group, UNASSIGNED included. */
+export function domainsOf(groups: Float64Array, rules: readonly GroupRule[], lengthsM: Float64Array): Category {
+  return assignDomains(Int32Array.from(groups, (group) => (Number.isNaN(group) ? 0 : group)), rules, lengthsM).domains;
 }
 
 /** Every row of the support with its code, in stored order: by hole, then by depth. */
@@ -31,12 +32,12 @@ export function readCodeRows(store: ColumnStore, input: CodeRowsInput): CodeRow[
   const memberships = ofSupport(store, groupingTableId, 'membership', tables, support);
   const lengths = readLengths(store, tables, support);
   const zones = zoneTableId === null ? [] : zoneAnalytes.map((analyte) => ofSupport(store, zoneTableId, zoneColumn(analyte), tables, support));
-  const codeOf = codeByGroup(rules);
+  const { levels, codes } = domainsOf(groups, rules, lengths);
   const names = support === 'drill' ? holeNames(store, tables) : store.readText(tables.frameTableId, FRAME.sample, range);
   const from = store.readNumbers(tables.frameTableId, FRAME.from, range);
   const to = store.readNumbers(tables.frameTableId, FRAME.to, range);
   return Array.from(groups, (group, i) => ({
-    hole: names[i] ?? '', fromM: from[i] ?? Number.NaN, toM: to[i] ?? Number.NaN, lengthM: lengths[i] ?? 0, code: codeOf(group), group, membership: memberships[i] ?? Number.NaN,
+    hole: names[i] ?? '', fromM: from[i] ?? Number.NaN, toM: to[i] ?? Number.NaN, lengthM: lengths[i] ?? 0, code: levels[codes[i] ?? -1] ?? UNASSIGNED, group, membership: memberships[i] ?? Number.NaN,
     deleterious: zoneAnalytes.filter((_, place) => zones[place]?.[i] === 1),
   }));
 }

@@ -1,4 +1,3 @@
-import { UNASSIGNED } from '#contract/domains.ts';
 import type { Zone, ZoneRun } from '#contract/geomet.ts';
 import { FRAME } from '#contract/snapshots.ts';
 import { QUALIFIER } from '#contract/tables.ts';
@@ -6,7 +5,7 @@ import { deleteriousZones, type DeleteriousZones } from '#kernels/geomet/deleter
 import { flaggedShares } from '#kernels/geomet/flagged-shares.ts';
 import type { Category } from '#kernels/tables/category.ts';
 import type { ColumnStore } from '#server/db/column-store.ts';
-import { codeByGroup, zoneColumn } from '#workers/frame/code-rows.ts';
+import { domainsOf, zoneColumn } from '#workers/frame/code-rows.ts';
 import { holeStartsOf } from '#workers/frame/hole-starts.ts';
 import { ofSupport, overFrame, readAssay, readFrameCategory, readLengths, supportRange, type SnapshotTables, type Support } from '#workers/frame/snapshot-tables.ts';
 import { defineTask } from '#workers/task.ts';
@@ -56,10 +55,7 @@ function elementsOf(store: ColumnStore, { tables, support, limits }: ZonesInput)
 
 function codesOf(store: ColumnStore, { groupingTableId, domains, tables, support }: ZonesInput): Category | null {
   if (groupingTableId === null || domains.length === 0) return null;
-  const codeOf = codeByGroup(domains);
-  const levels = [...domains.map(({ code }) => code), UNASSIGNED];
-  const groups = ofSupport(store, groupingTableId, 'group', tables, support);
-  return { levels, codes: Int32Array.from(groups, (group) => levels.indexOf(codeOf(group))) };
+  return domainsOf(ofSupport(store, groupingTableId, 'group', tables, support), domains, readLengths(store, tables, support));
 }
 
 function sharesByDomain(domains: Category | null, lengths: Float64Array, zones: DeleteriousZones): ZoneRun['byDomain'] {
