@@ -44,7 +44,8 @@ export type CategorySplit = z.infer<typeof CategorySplit>;
 
 export const OrientationSet = z.object({
   structureType: z.string(), confidence: z.string(), n: z.number().int(),
-  meanPlane: z.object({ dip: z.number(), dipDirection: z.number() }).nullable(), fisherK: z.number().nullable(), alpha95: z.number().nullable(),
+  /** A horizontal plane has no dip direction. */
+  meanPlane: z.object({ dip: z.number(), dipDirection: z.number().nullable() }).nullable(), fisherK: z.number().nullable(), alpha95: z.number().nullable(),
   eigenvalues: z.tuple([z.number(), z.number(), z.number()]).nullable(), woodcockK: z.number().nullable(), strengthC: z.number().nullable(), uniformityP: z.number().nullable(), reading: z.string(),
 });
 export type OrientationSet = z.infer<typeof OrientationSet>;

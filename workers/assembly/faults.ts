@@ -1,5 +1,6 @@
 import type { FaultPlane } from '#contract/snapshots.ts';
-import { planeNormal } from '#kernels/geometry/planes.ts';
+import { distancesToFault, sidesOfFault } from '#kernels/recipe/fault-sides.ts';
+import { NOT_LOGGED } from '#kernels/tables/category.ts';
 import type { LoadedTable } from './read-rows.ts';
 
 export function faultPlanes(table: LoadedTable | null): FaultPlane[] {
@@ -11,13 +12,10 @@ export function faultPlanes(table: LoadedTable | null): FaultPlane[] {
   });
 }
 
-export const SIDES = ['above', 'below'];
-
-/** Side of a fault plane each point lies on: 0 above (hanging wall), 1 below, NaN without coordinates. */
+/** Side of a fault each point lies on, as places in FAULT_SIDES; NaN without coordinates. */
 export function sidesOf(fault: FaultPlane, x: Float64Array, y: Float64Array, z: Float64Array): Float64Array {
-  const [east, north, up] = planeNormal(fault.dip, fault.dipDirection);
-  return x.map((easting, row) => {
-    const distance = (easting - fault.x) * east + ((y[row] ?? 0) - fault.y) * north + ((z[row] ?? 0) - fault.z) * up;
-    return Number.isNaN(distance) ? distance : distance >= 0 ? 0 : 1;
-  });
+  const points = new Float64Array(3 * x.length);
+  for (let row = 0; row < x.length; row++) points.set([x[row] ?? Number.NaN, y[row] ?? Number.NaN, z[row] ?? Number.NaN], 3 * row);
+  const { codes } = sidesOfFault(distancesToFault(points, fault));
+  return Float64Array.from(codes, (code) => (code === NOT_LOGGED ? Number.NaN : code));
 }

@@ -1,7 +1,8 @@
 import { FRAME, sideColumn, type FaultPlane } from '#contract/snapshots.ts';
+import { FAULT_SIDES } from '#kernels/recipe/fault-sides.ts';
 import type { ColumnStore } from '#server/db/column-store.ts';
 import type { DrillRows } from './drill-rows.ts';
-import { SIDES, sidesOf } from './faults.ts';
+import { sidesOf } from './faults.ts';
 import type { LoggedCategory } from './logged-categories.ts';
 import type { SurfaceRows } from './surface-rows.ts';
 
@@ -61,6 +62,6 @@ export function writeFrame(store: ColumnStore, depositId: number, jobId: number,
   store.writeCategory(tableId, { name: FRAME.lithology }, rock.codes, rock.dictionary);
   store.writeNumbers(tableId, { name: FRAME.lithologyDominance }, join(lithology.dominance, none));
   store.writeCategory(tableId, { name: FRAME.weathering }, join(weathering.codes, none), weathering.dictionary);
-  for (const fault of parts.faults) store.writeCategory(tableId, { name: sideColumn(fault.name) }, sidesOf(fault, x, y, z), SIDES);
+  for (const fault of parts.faults) store.writeCategory(tableId, { name: sideColumn(fault.name) }, sidesOf(fault, x, y, z), [...FAULT_SIDES]);
   return { tableId, nRows, lengths, rock };
 }

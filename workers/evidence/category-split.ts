@@ -1,5 +1,5 @@
 import type { CategorySplit } from '#contract/domains.ts';
-import { association } from '#kernels/tables/association.ts';
+import { association, strengthInWords } from '#kernels/tables/association.ts';
 import type { Category } from '#kernels/tables/category.ts';
 import { chiSquareTest } from '#kernels/tables/chi-square.ts';
 import { crossTableShiftTest } from '#kernels/tables/cross-table-shift.ts';
@@ -17,14 +17,6 @@ export interface SplitInput {
   seed: number;
 }
 
-/** Strength of association in words (from memory, after Cohen: a guide, no law). */
-function strengthOf(v: number | null): string {
-  if (v === null) return 'not defined';
-  if (v < 0.1) return 'none';
-  if (v < 0.3) return 'weak';
-  return v < 0.5 ? 'moderate' : 'strong';
-}
-
 /** How a domain's intervals divide by a logged category against all other intervals. Tests count intervals, shares are by metres. */
 export function splitByCategory({ category, inDomain, logged, lengthsM, holeStarts, seed }: SplitInput): CategorySplit {
   const table = crossTabulate(inDomain, logged, lengthsM);
@@ -36,6 +28,7 @@ export function splitByCategory({ category, inDomain, logged, lengthsM, holeStar
   const total = (row: number): number => table.colLevels.reduce((sum, _, col) => sum + metresOf(row, col), 0);
   const test = own >= 0 && other >= 0 && nCols >= 2 ? chiSquareTest(table.counts, nCols) : null;
   const strength = test ? association(table.counts, nCols) : null;
+  const v = strength?.cramersVCorrected ?? strength?.cramersV ?? null;
   const shift = test && holeStarts ? crossTableShiftTest(inDomain, logged, holeStarts, { seed }) : null;
   const levels = table.colLevels.map((level, col) => ({
     level,
@@ -48,7 +41,7 @@ export function splitByCategory({ category, inDomain, logged, lengthsM, holeStar
   return {
     category, levels: levels.sort((a, b) => b.metres - a.metres), notLogged, n: table.nUsed, chiSquare: test?.chiSquare ?? null, df: test?.df ?? null,
     nominalP: test?.nominalP ?? null, nominalPWithheld: test?.withheld ?? null, permutationP: shift?.p ?? null,
-    cramersV: strength?.cramersV ?? null, cramersVCorrected: strength?.cramersVCorrected ?? null, strength: strengthOf(strength?.cramersVCorrected ?? strength?.cramersV ?? null),
+    cramersV: strength?.cramersV ?? null, cramersVCorrected: strength?.cramersVCorrected ?? null, strength: v === null ? 'not defined' : strengthInWords(v),
     notes: notesOf(test !== null, holeStarts !== null, nCols),
   };
 }

@@ -47,7 +47,7 @@ export function orientationSets(structures: readonly Structure[]): OrientationSe
     const ofType = structures.filter((structure) => structure.structureType === structureType);
     return orientationSummary(ofType, { classes: classesOf(ofType) }).map((found): OrientationSet => ({
       structureType, confidence: found.name, n: found.n,
-      meanPlane: found.meanPlane?.dipDirection == null ? null : { dip: found.meanPlane.dip, dipDirection: found.meanPlane.dipDirection },
+      meanPlane: found.meanPlane ? { dip: found.meanPlane.dip, dipDirection: found.meanPlane.dipDirection } : null,
       fisherK: finite(found.fisherKappa), alpha95: finite(found.alpha95Deg), eigenvalues: found.eigenvalues ? [...found.eigenvalues] : null,
       woodcockK: finite(found.woodcockK), strengthC: finite(found.woodcockC), uniformityP: finite(found.uniformity?.p ?? null), reading: readingOf(found),
     }));

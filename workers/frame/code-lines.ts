@@ -1,3 +1,5 @@
+import { csvField, formatDepth } from '#kernels/recipe/code-lines.ts';
+
 /** One interval (or surface sample) with its code, ready to be written. */
 export interface CodeRow {
   hole: string;
@@ -13,13 +15,10 @@ export interface CodeRow {
   deleterious: readonly string[];
 }
 
-/** A text that a spreadsheet might take for a formula is disarmed, commas and quotes are quoted. */
-function cell(text: string): string {
-  const safe = /^'*[=+\-@\t\r\0]/.test(text) ? `'${text}` : text;
-  return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
-}
+/** A text that a spreadsheet might take for a formula is disarmed with a leading quote mark. */
+const cell = (text: string): string => csvField(/^'*[=+\-@\t\r\0]/.test(text) ? `'${text}` : text);
 
-const depth = (value: number): string => (Number.isNaN(value) ? '' : value.toFixed(3));
+const depth = (value: number): string => (Number.isNaN(value) ? '' : formatDepth(value));
 
 /**
  * Lines of the codes file, LF after each. Depths have three decimals and membership four, so that
