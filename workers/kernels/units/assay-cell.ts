@@ -46,6 +46,8 @@ export function parseAssayCell(
   text: string,
   context: AssayCellContext,
 ): AssayReading | UnparsedCell {
+  const plain = readCommonNumber(text, context);
+  if (plain) return plain;
   const cell = normaliseCell(text);
   const code = findCode(cell, context);
   if (code) return readCode(code, context);
@@ -57,6 +59,17 @@ export function parseAssayCell(
   if (/\d\s*\+$/.test(cell)) return readLimit('above', cell.slice(0, -1), cell, context);
   const number = readNumber(cell, context.decimalMark);
   return number === null ? readQualified(cell, context) : readPlain(number, null, context);
+}
+
+/** Most cells of a table: digits with a decimal point. Tables have tens of millions of them. */
+function readCommonNumber(
+  text: string,
+  { decimalMark, codes = COMMON_ASSAY_CODES }: AssayCellContext,
+): AssayReading | null {
+  if (decimalMark !== '.' || !/^\d+(\.\d+)?$/.test(text)) return null;
+  const value = Number(text);
+  if (!(value > 0 && value < Infinity) || codes.has(text)) return null;
+  return { value, censoring: 'none', bound: null, reason: null, qualifier: null };
 }
 
 function reading(
