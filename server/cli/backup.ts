@@ -8,13 +8,13 @@ const now = new Date();
 const given = process.argv[2];
 const folder = given === undefined ? join(paths.backups, now.toISOString().replaceAll(/[:.]/g, '-')) : resolve(given);
 try {
-  const { database, uploads, auditHeads } = await backupAll(paths, folder, now);
+  const { database, files, auditHeads } = await backupAll(paths, folder, now);
   const lines = [
     `Backup in ${folder}, verified.`,
     `  database  ${database.bytes} bytes  SHA-256 ${database.sha256}`,
-    `  stored files  ${uploads.length}`,
+    `  stored files  ${files.length}`,
     ...auditHeads.map(({ chain, entries, hash }) => `  audit record ${chain === 0 ? 'of the instance' : `of deposit ${chain}`}: ${entries} entries, head ${hash}`),
-    'To restore: stop the server and put selvage.sqlite and uploads into an empty data folder.',
+    'To restore: stop the server and put selvage.sqlite, uploads and codes into an empty data folder.',
   ];
   process.stdout.write(`${lines.join('\n')}\n`);
 } catch (error) {

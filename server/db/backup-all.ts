@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
-import { createReadStream } from 'node:fs';
+import { createReadStream, existsSync } from 'node:fs';
 import { copyFile, mkdir, readdir, stat, writeFile } from 'node:fs/promises';
-import { dirname, join, relative } from 'node:path';
+import { basename, dirname, join, relative } from 'node:path';
 import { pipeline } from 'node:stream/promises';
 import type { DataPaths } from '../lib/paths.ts';
 import { copyDatabase } from './backup.ts';
@@ -18,7 +18,8 @@ interface BackedUpFile {
 export interface Manifest {
   madeAt: string;
   database: BackedUpFile;
-  uploads: BackedUpFile[];
+  /** Stored uploads and code files, by their path in the data folder. */
+  files: BackedUpFile[];
   /** Last hash of each chain of the audit record (0: the instance), to hold the record to later. */
   auditHeads: { chain: number; entries: number; hash: string }[];
 }
@@ -34,19 +35,21 @@ const describeFile = async (root: string, path: string): Promise<BackedUpFile> =
 });
 
 async function filesUnder(folder: string): Promise<string[]> {
+  if (!existsSync(folder)) return [];
   const entries = await readdir(folder, { recursive: true, withFileTypes: true });
   return entries.filter((entry) => entry.isFile()).map((entry) => join(entry.parentPath, entry.name)).sort();
 }
 
-/** Copies stored files one by one; each copy is read back and must have the same checksum. */
-async function copyUploads(from: string, to: string): Promise<BackedUpFile[]> {
+/** Copies a folder file by file into the backup; each copy is read back and must have the same checksum. */
+async function copyStored(from: string, backup: string): Promise<BackedUpFile[]> {
   const copied: BackedUpFile[] = [];
+  const to = join(backup, basename(from));
   await mkdir(to, { recursive: true });
   for (const source of await filesUnder(from)) {
     const target = join(to, relative(from, source));
     await mkdir(dirname(target), { recursive: true });
     await copyFile(source, target);
-    const file = await describeFile(to, target);
+    const file = await describeFile(backup, target);
     if (file.sha256 !== (await sha256Of(source))) throw new Error(`${target}: the copy differs from ${source}`);
     copied.push(file);
   }
@@ -54,10 +57,10 @@ async function copyUploads(from: string, to: string): Promise<BackedUpFile[]> {
 }
 
 /** Every file the copied database speaks of must be among the copied files. */
-async function checkAgainstDatabase(database: string, uploads: readonly BackedUpFile[]): Promise<Manifest['auditHeads']> {
+async function checkAgainstDatabase(database: string, files: readonly BackedUpFile[]): Promise<Manifest['auditHeads']> {
   const copy = openDb(database, WORKER_BUSY_TIMEOUT_MS);
   try {
-    const there = new Set(uploads.map((file) => file.sha256));
+    const there = new Set(files.map((file) => file.sha256));
     const known = await copy<{ file_name: string; sha256: string; state: string }>('uploads').whereNot({ state: 'discarded' });
     const missing = known.filter((upload) => !there.has(upload.sha256));
     if (missing.length > 0) throw new Error(`${missing.length} stored files are missing, the first is ${missing[0]?.file_name ?? ''}`);
@@ -85,9 +88,9 @@ export async function backupAll(paths: DataPaths, folder: string, now: Date): Pr
     await db.destroy();
   }
   // After the database: files are never changed, so every file it speaks of is there.
-  const uploads = await copyUploads(paths.uploads, join(folder, 'uploads'));
-  const auditHeads = await checkAgainstDatabase(database, uploads);
-  const manifest = { madeAt: now.toISOString(), database: await describeFile(folder, database), uploads, auditHeads };
+  const files = [...(await copyStored(paths.uploads, folder)), ...(await copyStored(paths.codes, folder))];
+  const auditHeads = await checkAgainstDatabase(database, files);
+  const manifest = { madeAt: now.toISOString(), database: await describeFile(folder, database), files, auditHeads };
   await writeFile(join(folder, 'manifest.json'), `${JSON.stringify(manifest, null, 2)}\n`);
   return manifest;
 }

@@ -1,12 +1,14 @@
 import { join, resolve } from 'node:path';
 import { fileURLToPath } from 'node:url';
 
-/** What the data folder holds. The database and `uploads` are the whole state. */
+/** What the data folder holds. The database, `uploads` and `codes` are the whole state. */
 export interface DataPaths {
   root: string;
   database: string;
   /** Accepted files, kept as they came. */
   uploads: string;
+  /** Files of codes as they were made, kept for their checksums. */
+  codes: string;
   /** Files still arriving; emptied at start. */
   incoming: string;
   backups: string;
@@ -21,6 +23,7 @@ export function dataPaths(dataDir: string): DataPaths {
     root,
     database: join(root, 'selvage.sqlite'),
     uploads: join(root, 'uploads'),
+    codes: join(root, 'codes'),
     incoming: join(root, 'incoming'),
     backups: join(root, 'backups'),
     sessionSecret: join(root, 'session-secret'),

@@ -9,9 +9,12 @@ export interface Called {
   headers: Headers;
 }
 
+/** Parameters that a plain large number does not fit. */
+const NEVER_THERE: Readonly<Record<string, string>> = { token: 'x'.repeat(43), sessionId: 'x'.repeat(43), label: '1' };
+
 /** Path with its parameters filled in; those not given are ids that never existed. */
 export function pathOf(endpoint: Pick<Endpoint, 'path'>, given: Readonly<Record<string, string | number>>): string {
-  return `/api${endpoint.path.replaceAll(/:(\w+)/g, (_all, name: string) => String(given[name] ?? (/token$|sessionId/.test(name) ? 'x'.repeat(43) : 987_654_321)))}`;
+  return `/api${endpoint.path.replaceAll(/:(\w+)/g, (_all, name: string) => String(given[name] ?? NEVER_THERE[name] ?? 987_654_321))}`;
 }
 
 /** Calls an endpoint by plain HTTP; good for streams, which are left once their headers are there. */
@@ -40,6 +43,8 @@ export async function callEndpoint(
   const text = await res.text();
   const body: unknown = type.includes('json') && text !== '' ? JSON.parse(text) : text;
   const isProblem = type.startsWith('application/problem+json');
-  const { requestId: _requestId, ...rest } = isProblem ? (body as Record<string, unknown>) : {};
-  return { status: res.status, code: isProblem ? String(rest['code']) : null, body: isProblem ? rest : body, headers: res.headers };
+  if (!isProblem) return { status: res.status, code: null, body, headers: res.headers };
+  const problem = { ...(body as Record<string, unknown>) };
+  delete problem['requestId'];
+  return { status: res.status, code: String(problem['code']), body: problem, headers: res.headers };
 }

@@ -38,7 +38,8 @@ test('inviting to the instance sends a link; an account there already is told', 
 test('the demonstration is reset on a demonstration instance only', async () => {
   const reset = vi.fn(() => Promise.resolve());
   const signIns = [{ email: 'a@demo.example', password: 'shown to all', name: 'A', role: 'lead' }];
-  const client = await testClient({ deps: { demo: { signIns, reset } } });
+  const demo = { signIns, reset, seed: () => Promise.resolve(), files: () => Promise.resolve([]), file: () => Promise.resolve('') };
+  const client = await testClient({ deps: { demo } });
   expect((await client.as('administrator').post('/api/admin/demo-reset')).status).toBe(202);
   expect(reset).toHaveBeenCalledOnce();
   expect((await client.as(null).get('/api/instance')).body).toEqual({ isDemoInstance: true, demoSignIns: signIns });

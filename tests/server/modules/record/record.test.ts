@@ -102,7 +102,7 @@ test('OU-01 the record downloads as CSV', async () => {
   expect([res.status, res.get('content-type'), res.get('content-disposition')]).toEqual([
     200, 'text/csv; charset=utf-8', `attachment; filename="record-of-deposit-${client.depositId}.csv"; filename*=UTF-8''record-of-deposit-${client.depositId}.csv`,
   ]);
-  const [header, ...rows] = parse(res.text, { bom: true }) as string[][];
+  const [header, ...rows]: string[][] = parse(res.text, { bom: true });
   expect(header).toEqual(['number', 'at', 'who', 'action', 'subject', 'sentence', 'previous_hash', 'hash']);
   expect(rows).toHaveLength(3);
   expect(rows[2]?.slice(2, 6)).toEqual(['Test lead', 'x.y', "'=cmd", 'Line one\nline "two"']);
