@@ -7,7 +7,7 @@ import { TrayBody } from './tray-body.tsx';
 import { TrayGrip } from './tray-grip.tsx';
 import { TrayHeader } from './tray-header.tsx';
 import { ALL_TRACKS } from './tray-types.ts';
-import type { MenuPlace, TrackName, TrayHole } from './tray-types.ts';
+import type { GradeChoices, MenuPlace, TrackName, TrayHole } from './tray-types.ts';
 
 export interface CoreTrayProps {
   holes: readonly TrayHole[];
@@ -19,6 +19,8 @@ export interface CoreTrayProps {
   groups: readonly Category[];
   /** "Cu %" */
   gradeLabel: string;
+  /** Lets a person choose the analyte of the grade track. */
+  grades?: GradeChoices;
   selectedRows?: PickedRows;
   hoveredRow?: number | null;
   onHover?: (row: number | null) => void;
@@ -76,6 +78,7 @@ export function CoreTray(props: CoreTrayProps) {
           props.onTracks?.(next);
         }}
         gradeLabel={props.gradeLabel}
+        grades={props.grades}
         window={window}
         fit={fit}
         onWindow={onWindow}

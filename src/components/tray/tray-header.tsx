@@ -5,7 +5,7 @@ import type { RockKeyEntry } from '../charts/rock-patterns.tsx';
 import { HolePicker } from './hole-picker.tsx';
 import { RockKey } from './rock-key.tsx';
 import { TracksMenu } from './tracks-menu.tsx';
-import type { TrackName, TrayHole } from './tray-types.ts';
+import type { GradeChoices, TrackName, TrayHole } from './tray-types.ts';
 import { WindowButton } from './window-button.tsx';
 
 interface Props {
@@ -20,6 +20,7 @@ interface Props {
   tracks: ReadonlySet<TrackName>;
   onTracks: (tracks: ReadonlySet<TrackName>) => void;
   gradeLabel: string;
+  grades: GradeChoices | undefined;
   window: DepthWindow;
   fit: DepthWindow;
   onWindow: (window: DepthWindow | null) => void;
@@ -51,7 +52,7 @@ export function TrayHeader(props: Props) {
           {onAddHole !== undefined && <HolePicker names={holeNames.filter((name) => !inTray.has(name))} onAdd={onAddHole} />}
           <span className="shrink truncate text-caption text-ink-3">{props.note}</span>
           <RockKey entries={props.rocks} />
-          <TracksMenu tracks={props.tracks} gradeLabel={props.gradeLabel} onTracks={props.onTracks} />
+          <TracksMenu tracks={props.tracks} gradeLabel={props.gradeLabel} grades={props.grades} onTracks={props.onTracks} />
           <WindowButton window={props.window} fit={props.fit} onWindow={props.onWindow} />
         </>
       ) : (

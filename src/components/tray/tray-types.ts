@@ -21,3 +21,10 @@ export interface MenuPlace {
   x: number;
   y: number;
 }
+
+/** Analytes the grade track can show. */
+export interface GradeChoices {
+  names: readonly string[];
+  chosen: string;
+  onChoose: (name: string) => void;
+}
