@@ -69,5 +69,6 @@ export async function up(knex: Knex): Promise<void> {
 }
 
 export async function down(knex: Knex): Promise<void> {
-  for (const table of ['api_tokens', 'invitations', 'memberships', 'deposits']) await knex.schema.dropTable(table);
+  for (const table of ['api_tokens', 'invitations', 'memberships', 'deposits'])
+    await knex.schema.dropTable(table);
 }

@@ -13,7 +13,9 @@ import { createRecord } from '../modules/record/record.service.ts';
 /** `create-admin <e-mail> <name>`: makes an administrator and prints the link to set a password; none is ever typed here. */
 const given = z.tuple([Email, Name]).safeParse(process.argv.slice(2));
 if (!given.success) {
-  process.stderr.write('Expected an e-mail address and a name: create-admin ada@mine.example "Ada Person"\n');
+  process.stderr.write(
+    'Expected an e-mail address and a name: create-admin ada@mine.example "Ada Person"\n',
+  );
   process.exit(1);
 }
 const [email, name] = given.data;
@@ -24,12 +26,26 @@ const record = createRecord(db, systemClock);
 
 const link = await transact(db, async (trx) => {
   const known = await userByEmail(trx, email);
-  const id = known?.id ?? (await insertUser(trx, { email, name, passwordHash: null, isAdministrator: true, createdAt: systemClock().toISOString() }));
+  const id =
+    known?.id ??
+    (await insertUser(trx, {
+      email,
+      name,
+      passwordHash: null,
+      isAdministrator: true,
+      createdAt: systemClock().toISOString(),
+    }));
   await trx<UserRow>('users').where({ id }).update({ is_administrator: 1, is_active: 1 });
   await record.add(trx, {
-    actor: null, depositId: null, action: 'account.changed', subject: `person ${id}`, sentence: `${email} was made an administrator from the command line.`,
+    actor: null,
+    depositId: null,
+    action: 'account.changed',
+    subject: `person ${id}`,
+    sentence: `${email} was made an administrator from the command line.`,
   });
   return makeResetLink(trx, id, systemClock, env.publicUrl);
 });
 await db.destroy();
-process.stdout.write(`${email} is an administrator. Open this link within an hour to set the password:\n${link}\n`);
+process.stdout.write(
+  `${email} is an administrator. Open this link within an hour to set the password:\n${link}\n`,
+);

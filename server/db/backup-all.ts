@@ -31,13 +31,18 @@ async function sha256Of(path: string): Promise<string> {
 }
 
 const describeFile = async (root: string, path: string): Promise<BackedUpFile> => ({
-  name: relative(root, path), bytes: (await stat(path)).size, sha256: await sha256Of(path),
+  name: relative(root, path),
+  bytes: (await stat(path)).size,
+  sha256: await sha256Of(path),
 });
 
 async function filesUnder(folder: string): Promise<string[]> {
   if (!existsSync(folder)) return [];
   const entries = await readdir(folder, { recursive: true, withFileTypes: true });
-  return entries.filter((entry) => entry.isFile()).map((entry) => join(entry.parentPath, entry.name)).sort();
+  return entries
+    .filter((entry) => entry.isFile())
+    .map((entry) => join(entry.parentPath, entry.name))
+    .sort();
 }
 
 /** Copies a folder file by file into the backup; each copy is read back and must have the same checksum. */
@@ -50,21 +55,32 @@ async function copyStored(from: string, backup: string): Promise<BackedUpFile[]>
     await mkdir(dirname(target), { recursive: true });
     await copyFile(source, target);
     const file = await describeFile(backup, target);
-    if (file.sha256 !== (await sha256Of(source))) throw new Error(`${target}: the copy differs from ${source}`);
+    if (file.sha256 !== (await sha256Of(source)))
+      throw new Error(`${target}: the copy differs from ${source}`);
     copied.push(file);
   }
   return copied;
 }
 
 /** Every file the copied database speaks of must be among the copied files. */
-async function checkAgainstDatabase(database: string, files: readonly BackedUpFile[]): Promise<Manifest['auditHeads']> {
+async function checkAgainstDatabase(
+  database: string,
+  files: readonly BackedUpFile[],
+): Promise<Manifest['auditHeads']> {
   const copy = openDb(database, WORKER_BUSY_TIMEOUT_MS);
   try {
     const there = new Set(files.map((file) => file.sha256));
-    const known = await copy<{ file_name: string; sha256: string; state: string }>('uploads').whereNot({ state: 'discarded' });
+    const known = await copy<{ file_name: string; sha256: string; state: string }>(
+      'uploads',
+    ).whereNot({ state: 'discarded' });
     const missing = known.filter((upload) => !there.has(upload.sha256));
-    if (missing.length > 0) throw new Error(`${missing.length} stored files are missing, the first is ${missing[0]?.file_name ?? ''}`);
-    return await copy<Manifest['auditHeads'][number]>('audit_heads').orderBy('chain').select('chain', 'entries', 'hash');
+    if (missing.length > 0)
+      throw new Error(
+        `${missing.length} stored files are missing, the first is ${missing[0]?.file_name ?? ''}`,
+      );
+    return await copy<Manifest['auditHeads'][number]>('audit_heads')
+      .orderBy('chain')
+      .select('chain', 'entries', 'hash');
   } finally {
     await copy.raw('PRAGMA journal_mode = DELETE'); // one file, with nothing beside it
     await copy.destroy();
@@ -88,9 +104,17 @@ export async function backupAll(paths: DataPaths, folder: string, now: Date): Pr
     await db.destroy();
   }
   // After the database: files are never changed, so every file it speaks of is there.
-  const files = [...(await copyStored(paths.uploads, folder)), ...(await copyStored(paths.codes, folder))];
+  const files = [
+    ...(await copyStored(paths.uploads, folder)),
+    ...(await copyStored(paths.codes, folder)),
+  ];
   const auditHeads = await checkAgainstDatabase(database, files);
-  const manifest = { madeAt: now.toISOString(), database: await describeFile(folder, database), files, auditHeads };
+  const manifest = {
+    madeAt: now.toISOString(),
+    database: await describeFile(folder, database),
+    files,
+    auditHeads,
+  };
   await writeFile(join(folder, 'manifest.json'), `${JSON.stringify(manifest, null, 2)}\n`);
   return manifest;
 }

@@ -19,7 +19,8 @@ export function verifyCopy(file: string): void {
     const found = copy.pragma('integrity_check', { simple: true });
     if (found !== 'ok') throw new Error(`${file}: the copy is damaged: ${String(found)}`);
     const orphans: unknown = copy.pragma('foreign_key_check');
-    if (!Array.isArray(orphans) || orphans.length > 0) throw new Error(`${file}: the copy has rows that refer to nothing`);
+    if (!Array.isArray(orphans) || orphans.length > 0)
+      throw new Error(`${file}: the copy has rows that refer to nothing`);
   } finally {
     copy.close();
   }

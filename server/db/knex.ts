@@ -8,14 +8,20 @@ import { applyPragmas, SERVER_BUSY_TIMEOUT_MS } from './pragmas.ts';
  * Knex settings for the database file. One connection: SQLite has one writer, and the driver is
  * synchronous, so more would only wait for one another.
  */
-export const knexConfig = (filename: string, busyTimeoutMs = SERVER_BUSY_TIMEOUT_MS): Knex.Config => ({
+export const knexConfig = (
+  filename: string,
+  busyTimeoutMs = SERVER_BUSY_TIMEOUT_MS,
+): Knex.Config => ({
   client: 'better-sqlite3',
   connection: { filename },
   useNullAsDefault: true,
   pool: {
     min: 1,
     max: 1,
-    afterCreate: (connection: Database, done: (error: Error | null, connection: Database) => void) => {
+    afterCreate: (
+      connection: Database,
+      done: (error: Error | null, connection: Database) => void,
+    ) => {
       try {
         applyPragmas(connection, busyTimeoutMs);
         done(null, connection);
@@ -27,4 +33,5 @@ export const knexConfig = (filename: string, busyTimeoutMs = SERVER_BUSY_TIMEOUT
   migrations: { migrationSource: new StemMigrationSource(MIGRATIONS_DIR) },
 });
 
-export const openDb = (filename: string, busyTimeoutMs?: number): Knex => knex(knexConfig(filename, busyTimeoutMs));
+export const openDb = (filename: string, busyTimeoutMs?: number): Knex =>
+  knex(knexConfig(filename, busyTimeoutMs));

@@ -16,7 +16,9 @@ export interface Migrated {
 /** The database was made by a newer version, whose tables this one does not know. */
 export class NewerSchemaError extends Error {
   constructor(unknown: readonly string[]) {
-    super(`The database was made by a newer version of Selvage (${unknown.join(', ')}). Start that version, or restore a backup made before.`);
+    super(
+      `The database was made by a newer version of Selvage (${unknown.join(', ')}). Start that version, or restore a backup made before.`,
+    );
     this.name = 'NewerSchemaError';
   }
 }
@@ -34,9 +36,15 @@ const stamp = (): string => new Date().toISOString().replaceAll(/[:.]/g, '-');
  *
  * @throws {NewerSchemaError} when the database knows migrations this version does not.
  */
-export async function migrate(db: Knex, backupsDir: string, migrationsDir = MIGRATIONS_DIR): Promise<Migrated> {
+export async function migrate(
+  db: Knex,
+  backupsDir: string,
+  migrationsDir = MIGRATIONS_DIR,
+): Promise<Migrated> {
   const migrationSource = new StemMigrationSource(migrationsDir);
-  const known = (await migrationSource.getMigrations()).map((file) => migrationSource.getMigrationName(file));
+  const known = (await migrationSource.getMigrations()).map((file) =>
+    migrationSource.getMigrationName(file),
+  );
   const before = await appliedTo(db);
   const unknown = before.filter((name) => !known.includes(name));
   if (unknown.length > 0) throw new NewerSchemaError(unknown);
@@ -52,7 +60,9 @@ export async function migrate(db: Knex, backupsDir: string, migrationsDir = MIGR
   await db.migrate.latest({ migrationSource });
   const orphans: unknown = await db.raw('PRAGMA foreign_key_check');
   if (Array.isArray(orphans) && orphans.length > 0) {
-    throw new Error(`after migrating, ${orphans.length} rows refer to nothing; the copy made before is ${backup ?? 'not needed: the database was new'}`);
+    throw new Error(
+      `after migrating, ${orphans.length} rows refer to nothing; the copy made before is ${backup ?? 'not needed: the database was new'}`,
+    );
   }
   return { applied: pending, backup };
 }

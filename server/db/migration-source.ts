@@ -28,7 +28,9 @@ export class StemMigrationSource implements Knex.MigrationSource<string> {
   }
 
   async getMigration(file: string): Promise<Knex.Migration> {
-    const found: unknown = await import(/* @vite-ignore */ pathToFileURL(join(this.folder, file)).href);
+    const found: unknown = await import(
+      /* @vite-ignore */ pathToFileURL(join(this.folder, file)).href
+    );
     if (!isMigration(found)) throw new Error(`migration ${file}: expected an exported function up`);
     return found;
   }

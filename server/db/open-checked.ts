@@ -11,12 +11,18 @@ import { migrate } from './migrate.ts';
  *
  * @throws {Error} when it is damaged, newer than this version, or of the other kind.
  */
-export async function openChecked(paths: DataPaths, instance: 'demo' | 'production', log: Log): Promise<Knex> {
+export async function openChecked(
+  paths: DataPaths,
+  instance: 'demo' | 'production',
+  log: Log,
+): Promise<Knex> {
   const db = openDb(paths.database);
   try {
     const found: unknown = await db.raw('PRAGMA quick_check(1)');
     if (JSON.stringify(found) !== JSON.stringify([{ quick_check: 'ok' }])) {
-      throw new Error(`The database ${paths.database} is damaged (${JSON.stringify(found)}). Restore the newest backup from ${paths.backups}.`);
+      throw new Error(
+        `The database ${paths.database} is damaged (${JSON.stringify(found)}). Restore the newest backup from ${paths.backups}.`,
+      );
     }
     const { applied, backup } = await migrate(db, paths.backups);
     if (applied.length > 0) log.info({ event: 'migrated', applied, backup }, 'database migrated');

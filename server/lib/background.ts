@@ -11,7 +11,9 @@ export function createBackground(log: Log): Background {
   return {
     run(what, work) {
       const done = work()
-        .catch((error: unknown) => log.error({ event: 'background.failed', what, err: error }, 'background work failed'))
+        .catch((error: unknown) =>
+          log.error({ event: 'background.failed', what, err: error }, 'background work failed'),
+        )
         .finally(() => running.delete(done));
       running.add(done);
     },

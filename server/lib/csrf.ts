@@ -13,7 +13,8 @@ const SAFE_METHODS = new Set(['GET', 'HEAD', 'OPTIONS']);
 export function refuseForeignSite(req: Request, publicUrl: string): void {
   if (SAFE_METHODS.has(req.method)) return;
   const site = req.get('sec-fetch-site');
-  if (site !== undefined ? site === 'same-origin' : req.get('origin') === new URL(publicUrl).origin) return;
+  if (site !== undefined ? site === 'same-origin' : req.get('origin') === new URL(publicUrl).origin)
+    return;
   throw new AppError(
     403,
     'foreign-site',

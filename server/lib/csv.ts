@@ -16,7 +16,8 @@ const firstAfterMarks = (text: string): string => {
  * Text as it is written to a file people open in a spreadsheet: a leading `'` disarms a formula.
  * Texts that already begin `'=` get one more, so that reading back is exact.
  */
-export const escapeCsvText = (text: string): string => (FORMULA_STARTS.has(firstAfterMarks(text)) ? MARK + text : text);
+export const escapeCsvText = (text: string): string =>
+  FORMULA_STARTS.has(firstAfterMarks(text)) ? MARK + text : text;
 
 /** Undoes `escapeCsvText`. */
 export const unescapeCsvText = (text: string): string =>
@@ -27,7 +28,9 @@ export const unescapeCsvText = (text: string): string =>
  * and an absent value is an empty cell.
  */
 export function toCsv(header: readonly string[], rows: readonly (readonly CsvCell[])[]): string {
-  const written = rows.map((row) => row.map((cell) => (typeof cell === 'string' ? escapeCsvText(cell) : cell)));
+  const written = rows.map((row) =>
+    row.map((cell) => (typeof cell === 'string' ? escapeCsvText(cell) : cell)),
+  );
   return stringify([header.map(escapeCsvText), ...written], {
     record_delimiter: '\r\n',
     cast: { boolean: (value) => (value ? 'true' : 'false'), number: (value) => String(value) },
@@ -37,6 +40,9 @@ export function toCsv(header: readonly string[], rows: readonly (readonly CsvCel
 /** `Content-Disposition` of a download by RFC 6266: an ASCII fallback and the name in UTF-8. */
 export function attachment(fileName: string): string {
   const plain = fileName.replaceAll(/[^\w.\- ]/g, '_');
-  const encoded = encodeURIComponent(fileName).replaceAll(/['()*]/g, (mark) => `%${mark.charCodeAt(0).toString(16).toUpperCase()}`);
+  const encoded = encodeURIComponent(fileName).replaceAll(
+    /['()*]/g,
+    (mark) => `%${mark.charCodeAt(0).toString(16).toUpperCase()}`,
+  );
   return `attachment; filename="${plain}"; filename*=UTF-8''${encoded}`;
 }

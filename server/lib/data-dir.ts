@@ -13,7 +13,8 @@ export interface DataDir {
 export async function prepareDataDir(paths: DataPaths): Promise<DataDir> {
   const wasUncleanStop = existsSync(paths.running);
   await rm(paths.incoming, { recursive: true, force: true });
-  for (const folder of [paths.root, paths.uploads, paths.incoming, paths.backups]) await mkdir(folder, { recursive: true, mode: 0o700 });
+  for (const folder of [paths.root, paths.uploads, paths.incoming, paths.backups])
+    await mkdir(folder, { recursive: true, mode: 0o700 });
   await writeFile(paths.running, `${process.pid}\n`);
   return { wasUncleanStop, markClean: () => rm(paths.running, { force: true }) };
 }

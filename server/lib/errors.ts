@@ -33,7 +33,11 @@ export class AppError extends Error {
  * @param what The thing in words: `deposit`, `API token`.
  */
 export const notFound = (what: string): AppError =>
-  new AppError(404, `no-such-${what.toLowerCase().replaceAll(' ', '-')}`, `There is no such ${what} here.`);
+  new AppError(
+    404,
+    `no-such-${what.toLowerCase().replaceAll(' ', '-')}`,
+    `There is no such ${what} here.`,
+  );
 
 export const staleVersion = (currentVersion: number): AppError =>
   new AppError(

@@ -22,10 +22,14 @@ export interface AccessRule {
   sessionOnly: boolean;
 }
 
-export type Verdict = 'allow' | 'sign-in' | 'no-such-deposit' | 'role' | 'token-right' | 'administrators-only';
+export type Verdict =
+  'allow' | 'sign-in' | 'no-such-deposit' | 'role' | 'token-right' | 'administrators-only';
 
 /** What one API token may do with one endpoint of its own deposit. */
-function tokenMayCall(right: 'read' | 'codes' | 'work', { access, method, sessionOnly }: AccessRule): boolean {
+function tokenMayCall(
+  right: 'read' | 'codes' | 'work',
+  { access, method, sessionOnly }: AccessRule,
+): boolean {
   if (sessionOnly || access.kind !== 'deposit') return false;
   if (right === 'work') return true;
   return method === 'get' && (right === 'read' || access.codes === true);
@@ -37,7 +41,12 @@ function tokenMayCall(right: 'read' | 'codes' | 'work', { access, method, sessio
  * @param depositId The deposit named by the address; null where there is none.
  * @param role The actor's role on that deposit; for a token, its owner's.
  */
-export function decide(rule: AccessRule, actor: Actor | null, depositId: number | null, role: Role | null): Verdict {
+export function decide(
+  rule: AccessRule,
+  actor: Actor | null,
+  depositId: number | null,
+  role: Role | null,
+): Verdict {
   const { access } = rule;
   if (access.kind === 'public') return 'allow';
   if (actor === null) return 'sign-in';
@@ -53,11 +62,13 @@ export function decide(rule: AccessRule, actor: Actor | null, depositId: number 
 }
 
 const REFUSALS: Record<Exclude<Verdict, 'allow'>, () => AppError> = {
-  'sign-in': () => new AppError(401, 'sign-in-needed', 'Sign in first: there is no session, or it has ended.'),
+  'sign-in': () =>
+    new AppError(401, 'sign-in-needed', 'Sign in first: there is no session, or it has ended.'),
   'no-such-deposit': () => notFound('deposit'),
   role: () => new AppError(403, 'role-needed', 'Your role on this deposit does not include this.'),
   'token-right': () => new AppError(403, 'token-right', 'This API token does not include this.'),
-  'administrators-only': () => new AppError(403, 'administrators-only', 'Only an administrator of this instance may do this.'),
+  'administrators-only': () =>
+    new AppError(403, 'administrators-only', 'Only an administrator of this instance may do this.'),
 };
 
 export interface Grant {
@@ -82,7 +93,8 @@ interface GuardSettings {
   log: Log;
 }
 
-const bearerText = (req: Request): string | null => /^Bearer ([\w.~+/=-]{1,400})$/i.exec(req.get('authorization') ?? '')?.[1] ?? null;
+const bearerText = (req: Request): string | null =>
+  /^Bearer ([\w.~+/=-]{1,400})$/i.exec(req.get('authorization') ?? '')?.[1] ?? null;
 
 function cookieText(req: Request, name: string): string | null {
   const cookies: unknown = req.cookies;

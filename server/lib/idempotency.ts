@@ -35,7 +35,11 @@ export interface Idempotency {
 export function readIdempotencyKey(header: string | undefined): string | null {
   if (header === undefined) return null;
   if (/^[\x21-\x7e]{8,200}$/.test(header)) return header;
-  throw new AppError(400, 'bad-idempotency-key', 'Expected Idempotency-Key to be 8 to 200 visible ASCII characters.');
+  throw new AppError(
+    400,
+    'bad-idempotency-key',
+    'Expected Idempotency-Key to be 8 to 200 visible ASCII characters.',
+  );
 }
 
 const isTaken = (error: unknown): boolean =>
@@ -47,7 +51,11 @@ export function createIdempotency(db: Knex, clock: Clock): Idempotency {
 
   async function replay(found: Row, requestHash: string, id: string): Promise<Answer> {
     if (found.request_hash !== requestHash) {
-      throw new AppError(422, 'idempotency-key-reused', 'This Idempotency-Key was used with another request: use a new key.');
+      throw new AppError(
+        422,
+        'idempotency-key-reused',
+        'This Idempotency-Key was used with another request: use a new key.',
+      );
     }
     const running = underWay.get(id);
     if (running) return running;
@@ -56,7 +64,11 @@ export function createIdempotency(db: Knex, clock: Clock): Idempotency {
       return { status: found.status, body };
     }
     // Begun by a process that ended in between: repeating could do it twice, so a person must look.
-    throw new AppError(409, 'outcome-unknown', 'The first request with this Idempotency-Key was cut short. Check whether it took effect, then use a new key.');
+    throw new AppError(
+      409,
+      'outcome-unknown',
+      'The first request with this Idempotency-Key was cut short. Check whether it took effect, then use a new key.',
+    );
   }
 
   async function begin(row: Row, work: () => Promise<Answer>): Promise<Answer> {
@@ -77,14 +89,25 @@ export function createIdempotency(db: Knex, clock: Clock): Idempotency {
       const requestHash = sha256Hex(JSON.stringify(request));
       await rows().where('expires_at', '<', clock().toISOString()).delete();
       const row: Row = {
-        user_id: userId, endpoint, key, request_hash: requestHash, status: null, body: null, expires_at: instantAfter(clock, DAY_MS),
+        user_id: userId,
+        endpoint,
+        key,
+        request_hash: requestHash,
+        status: null,
+        body: null,
+        expires_at: instantAfter(clock, DAY_MS),
       };
       try {
         await rows().insert(row);
       } catch (error) {
         if (!isTaken(error)) throw error;
         const found = await rows().where({ user_id: userId, endpoint, key }).first();
-        if (!found) throw new AppError(409, 'try-again', 'The first request with this Idempotency-Key has just been refused: send it again.');
+        if (!found)
+          throw new AppError(
+            409,
+            'try-again',
+            'The first request with this Idempotency-Key has just been refused: send it again.',
+          );
         return replay(found, requestHash, id);
       }
       const running = begin(row, work);

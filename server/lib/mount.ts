@@ -28,7 +28,11 @@ function gateOf(app: Application): Gate {
 }
 
 /** A parsed request. `actor`, `member` and `expectedVersion` exist where the endpoint's rules make them exist. */
-export interface Context<Params extends z.ZodObject, Query extends z.ZodObject, Body extends z.ZodType> {
+export interface Context<
+  Params extends z.ZodObject,
+  Query extends z.ZodObject,
+  Body extends z.ZodType,
+> {
   params: z.output<Params>;
   query: z.output<Query>;
   body: z.output<Body>;
@@ -66,10 +70,17 @@ export const mountedOn = (router: Router): readonly Mounted[] => mounted.get(rou
  * and the answer stripped to the contract's fields with status and `ETag`. For anything but JSON
  * the handler writes the answer itself.
  */
-export function mount<Params extends z.ZodObject, Query extends z.ZodObject, Body extends z.ZodType, Answered extends z.ZodType>(
+export function mount<
+  Params extends z.ZodObject,
+  Query extends z.ZodObject,
+  Body extends z.ZodType,
+  Answered extends z.ZodType,
+>(
   router: Router,
   endpoint: Endpoint<Params, Query, Body, Answered>,
-  handler: (context: Context<Params, Query, Body>) => Promise<z.input<Answered> | void> | z.input<Answered> | void,
+  handler: (
+    context: Context<Params, Query, Body>,
+  ) => Promise<z.input<Answered> | void> | z.input<Answered> | void,
   options: MountOptions = {},
 ): void {
   const sessionOnly = options.sessionOnly ?? false;
@@ -81,17 +92,28 @@ export function mount<Params extends z.ZodObject, Query extends z.ZodObject, Bod
     const gate = gateOf(req.app);
     requestFacts(req).route = endpoint.path;
     res.setHeader('Cache-Control', 'no-store');
-    const admit = (): Promise<Grant> => gate.guard.admit(req, rule, () => depositIdOf(endpoint, req));
+    const admit = (): Promise<Grant> =>
+      gate.guard.admit(req, rule, () => depositIdOf(endpoint, req));
     const grant = await admit();
     const params = parsePart(endpoint.params, req.params, 'params');
     const query = parsePart(endpoint.query, req.query, 'query');
     const expected = endpoint.ifMatch ? readIfMatch(req.get('if-match')) : null;
     const body = await readBody(req, res);
     const context: Context<Params, Query, Body> = {
-      params, query, body, req, res,
-      get actor() { return proved(grant.actor, endpoint.id, 'actor'); },
-      get member() { return proved(grant.member, endpoint.id, 'member'); },
-      get expectedVersion() { return proved(expected, endpoint.id, 'expected version'); },
+      params,
+      query,
+      body,
+      req,
+      res,
+      get actor() {
+        return proved(grant.actor, endpoint.id, 'actor');
+      },
+      get member() {
+        return proved(grant.member, endpoint.id, 'member');
+      },
+      get expectedVersion() {
+        return proved(expected, endpoint.id, 'expected version');
+      },
     };
     if (endpoint.produces !== 'json') {
       if (endpoint.produces === 'events') gate.streams.watch(res, admit);
@@ -135,15 +157,28 @@ function bodyReader(endpoint: Pick<Endpoint, 'consumes' | 'body'>, options: Moun
 }
 
 async function onceIfKeyed(
-  gate: Gate, endpoint: Endpoint, grant: Grant, req: Request, request: unknown, work: () => Promise<Answer>,
+  gate: Gate,
+  endpoint: Endpoint,
+  grant: Grant,
+  req: Request,
+  request: unknown,
+  work: () => Promise<Answer>,
 ): Promise<Answer> {
   const key = endpoint.idempotent ? readIdempotencyKey(req.get('idempotency-key')) : null;
   if (key === null || grant.actor === null) return work();
-  return gate.idempotency.once({ userId: grant.actor.id, endpoint: endpoint.id, key, request }, work);
+  return gate.idempotency.once(
+    { userId: grant.actor.id, endpoint: endpoint.id, key, request },
+    work,
+  );
 }
 
 function sendJson(res: Response, { status, body }: Answer): void {
-  if (typeof body === 'object' && body !== null && 'version' in body && typeof body.version === 'number') {
+  if (
+    typeof body === 'object' &&
+    body !== null &&
+    'version' in body &&
+    typeof body.version === 'number'
+  ) {
     res.setHeader('ETag', etagOf(body.version));
   }
   res.status(status).json(body);

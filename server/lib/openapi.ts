@@ -1,4 +1,8 @@
-import { OpenAPIRegistry, OpenApiGeneratorV31, type RouteConfig } from '@asteasolutions/zod-to-openapi';
+import {
+  OpenAPIRegistry,
+  OpenApiGeneratorV31,
+  type RouteConfig,
+} from '@asteasolutions/zod-to-openapi';
 import * as z from 'zod';
 import type { Access, Endpoint } from '#contract/endpoint.ts';
 import { Problem } from '#contract/problem.ts';
@@ -13,11 +17,14 @@ const MEDIA_TYPES: Record<Endpoint['produces'], string | null> = {
 };
 
 /** Who may call, for people and for the test of rights. */
-const rolesOf = (access: Access): readonly string[] => (access.kind === 'deposit' ? access.roles : [access.kind]);
+const rolesOf = (access: Access): readonly string[] =>
+  access.kind === 'deposit' ? access.roles : [access.kind];
 
 function securityOf({ endpoint: { access }, sessionOnly }: Mounted): Record<string, string[]>[] {
   if (access.kind === 'public') return [];
-  return access.kind === 'deposit' && !sessionOnly ? [{ session: [] }, { token: [] }] : [{ session: [] }];
+  return access.kind === 'deposit' && !sessionOnly
+    ? [{ session: [] }, { token: [] }]
+    : [{ session: [] }];
 }
 
 function headersOf(endpoint: Endpoint): z.ZodObject | undefined {
@@ -45,14 +52,19 @@ function operation(mounted: Mounted): RouteConfig {
       params: endpoint.params,
       query: endpoint.query,
       ...(headers && { headers }),
-      ...(endpoint.body && { body: { required: true, content: { [bodyType]: { schema: endpoint.body } } } }),
+      ...(endpoint.body && {
+        body: { required: true, content: { [bodyType]: { schema: endpoint.body } } },
+      }),
     },
     responses: {
       [endpoint.status]: {
         description: endpoint.summary,
         ...(mediaType && { content: { [mediaType]: { schema: endpoint.response } } }),
       },
-      default: { description: 'The request was refused', content: { 'application/problem+json': { schema: Problem } } },
+      default: {
+        description: 'The request was refused',
+        content: { 'application/problem+json': { schema: Problem } },
+      },
     },
   };
 }
@@ -60,11 +72,19 @@ function operation(mounted: Mounted): RouteConfig {
 /** The OpenAPI 3.1 description of the endpoints mounted. */
 export function describeApi(mounted: readonly Mounted[], session: { cookieName: string }) {
   const registry = new OpenAPIRegistry();
-  registry.registerComponent('securitySchemes', 'session', { type: 'apiKey', in: 'cookie', name: session.cookieName });
+  registry.registerComponent('securitySchemes', 'session', {
+    type: 'apiKey',
+    in: 'cookie',
+    name: session.cookieName,
+  });
   registry.registerComponent('securitySchemes', 'token', { type: 'http', scheme: 'bearer' });
   for (const one of mounted) registry.registerPath(operation(one));
   return new OpenApiGeneratorV31(registry.definitions).generateDocument({
     openapi: '3.1.0',
-    info: { title: 'Selvage', version: '1', description: 'From drill-hole geochemistry to estimation domains.' },
+    info: {
+      title: 'Selvage',
+      version: '1',
+      description: 'From drill-hole geochemistry to estimation domains.',
+    },
   });
 }

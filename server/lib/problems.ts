@@ -13,7 +13,12 @@ export const fieldProblems = (
   where: string,
   issues: readonly { path: readonly PropertyKey[]; message: string }[],
 ): FieldProblem[] =>
-  issues.slice(0, 50).map((issue) => ({ path: [where, ...issue.path.map(String)].join('.'), message: issue.message }));
+  issues
+    .slice(0, 50)
+    .map((issue) => ({
+      path: [where, ...issue.path.map(String)].join('.'),
+      message: issue.message,
+    }));
 
 const textOf = (value: unknown, key: string): string | null => {
   if (typeof value !== 'object' || value === null) return null;
@@ -31,10 +36,19 @@ const numberOf = (value: unknown, key: string): number | null => {
 function ofDatabase(error: unknown): AppError | null {
   const code = textOf(error, 'code') ?? '';
   if (code === 'SQLITE_FULL' || code === 'ENOSPC') {
-    return new AppError(507, 'disk-full', 'The disk of this instance is full: nothing was changed. Reading still works.');
+    return new AppError(
+      507,
+      'disk-full',
+      'The disk of this instance is full: nothing was changed. Reading still works.',
+    );
   }
   if (code.startsWith('SQLITE_BUSY')) {
-    return new AppError(503, 'busy', 'The database is busy: nothing was changed. Try again in a moment.', { retryAfterS: 1 });
+    return new AppError(
+      503,
+      'busy',
+      'The database is busy: nothing was changed. Try again in a moment.',
+      { retryAfterS: 1 },
+    );
   }
   return null;
 }
@@ -43,22 +57,34 @@ function ofDatabase(error: unknown): AppError | null {
 function ofRequest(error: unknown): AppError | null {
   if (error instanceof MulterError) {
     const status = error.code === 'LIMIT_FILE_SIZE' ? 413 : 400;
-    return new AppError(status, 'upload-refused', `The upload was refused: ${error.message.toLowerCase()}.`);
+    return new AppError(
+      status,
+      'upload-refused',
+      `The upload was refused: ${error.message.toLowerCase()}.`,
+    );
   }
-  if (error instanceof URIError) return new AppError(400, 'bad-address', 'The address holds a broken % escape.');
+  if (error instanceof URIError)
+    return new AppError(400, 'bad-address', 'The address holds a broken % escape.');
   const status = numberOf(error, 'status');
   switch (textOf(error, 'type')) {
     case 'entity.too.large':
-      return new AppError(413, 'body-too-large', `The body is too large: expected at most ${numberOf(error, 'limit') ?? 0} bytes.`);
+      return new AppError(
+        413,
+        'body-too-large',
+        `The body is too large: expected at most ${numberOf(error, 'limit') ?? 0} bytes.`,
+      );
     case 'entity.parse.failed':
       return new AppError(400, 'bad-json', 'The body is not valid JSON: expected an object.');
     case null:
       break;
     default:
-      if (status !== null && status >= 400 && status < 500) return new AppError(status, 'bad-body', 'The body could not be read.');
+      if (status !== null && status >= 400 && status < 500)
+        return new AppError(status, 'bad-body', 'The body could not be read.');
   }
-  if (status === 404) return new AppError(404, 'no-such-address', 'There is nothing at this address.');
-  if (status !== null && status >= 400 && status < 500) return new AppError(status, 'bad-request', 'The request could not be read.');
+  if (status === 404)
+    return new AppError(404, 'no-such-address', 'There is nothing at this address.');
+  if (status !== null && status >= 400 && status < 500)
+    return new AppError(status, 'bad-request', 'The request could not be read.');
   return null;
 }
 
@@ -66,11 +92,16 @@ function ofRequest(error: unknown): AppError | null {
 export function expectedFailure(error: unknown): AppError | null {
   if (error instanceof AppError) return error;
   if (error instanceof KernelError) return new AppError(422, error.code, error.message);
-  if (error instanceof ComputeError) return new AppError(503, error.code, error.message, { retryAfterS: 5 });
+  if (error instanceof ComputeError)
+    return new AppError(503, error.code, error.message, { retryAfterS: 5 });
   return ofDatabase(error) ?? ofRequest(error);
 }
 
-const BUG = new AppError(500, 'internal', 'Something went wrong on our side; nothing you sent was wrong. Quote the request id when you report it.');
+const BUG = new AppError(
+  500,
+  'internal',
+  'Something went wrong on our side; nothing you sent was wrong. Quote the request id when you report it.',
+);
 
 export function sendProblem(res: Response, failure: AppError, requestId: string): void {
   const { fields, currentVersion, retryAfterS } = failure.extras;
@@ -84,7 +115,8 @@ export function sendProblem(res: Response, failure: AppError, requestId: string)
     ...(fields && { fields }),
     ...(currentVersion !== undefined && { currentVersion }),
   };
-  if (retryAfterS !== undefined) res.setHeader('Retry-After', String(Math.max(1, Math.ceil(retryAfterS))));
+  if (retryAfterS !== undefined)
+    res.setHeader('Retry-After', String(Math.max(1, Math.ceil(retryAfterS))));
   if (failure.status === 401) res.setHeader('WWW-Authenticate', 'Bearer');
   res.setHeader('Cache-Control', 'no-store');
   res.status(failure.status).type('application/problem+json').send(JSON.stringify(problem));

@@ -16,7 +16,12 @@ const known = new WeakMap<IncomingMessage, RequestFacts>();
 export function requestFacts(req: IncomingMessage): RequestFacts {
   const found = known.get(req);
   if (found) return found;
-  const facts: RequestFacts = { requestId: randomUUID(), route: null, userId: null, depositId: null };
+  const facts: RequestFacts = {
+    requestId: randomUUID(),
+    route: null,
+    userId: null,
+    depositId: null,
+  };
   known.set(req, facts);
   return facts;
 }

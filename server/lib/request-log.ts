@@ -22,8 +22,14 @@ export function requestLog(log: Log): RequestHandler[] {
     customSuccessMessage: () => 'request',
     customErrorMessage: () => 'request',
     // The library's own object is left out: it holds the answer's headers, and so the session cookie.
-    customErrorObject: (req, res, _error, { ms }: { ms: number }) => ({ ...describe(req, res.statusCode), ms }),
-    customSuccessObject: (req, res, { ms }: { ms: number }) => ({ ...describe(req, res.statusCode), ms }),
+    customErrorObject: (req, res, _error, { ms }: { ms: number }) => ({
+      ...describe(req, res.statusCode),
+      ms,
+    }),
+    customSuccessObject: (req, res, { ms }: { ms: number }) => ({
+      ...describe(req, res.statusCode),
+      ms,
+    }),
   });
   return [(req, res, next) => line(req, res, next)];
 }

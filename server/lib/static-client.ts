@@ -16,8 +16,21 @@ export function serveClient(app: Express, clientDir: string): void {
     app.get('/{*page}', (_req, res) => void res.status(503).type('text/plain').send(NOT_BUILT));
     return;
   }
-  app.use('/assets', express.static(join(clientDir, 'assets'), { immutable: true, maxAge: '1y', fallthrough: false }));
-  app.use(express.static(clientDir, { index: false, cacheControl: false, setHeaders: (res) => void res.setHeader('Cache-Control', 'no-cache') }));
+  app.use(
+    '/assets',
+    express.static(join(clientDir, 'assets'), {
+      immutable: true,
+      maxAge: '1y',
+      fallthrough: false,
+    }),
+  );
+  app.use(
+    express.static(clientDir, {
+      index: false,
+      cacheControl: false,
+      setHeaders: (res) => void res.setHeader('Cache-Control', 'no-cache'),
+    }),
+  );
   app.get('/{*page}', (_req, res) => {
     res.setHeader('Cache-Control', 'no-cache');
     res.sendFile('index.html', { root: clientDir, cacheControl: false });

@@ -12,19 +12,38 @@ import { problemHandler } from '#server/lib/problems.ts';
 import { testClient } from '#tests/support/test-client.ts';
 
 /** What no answer may hold: stacks, SQL, paths, packages, versions. */
-const INTERNALS = /at \/|at \w+ \(|SQLITE_|node_modules|select |insert into|\/work|\.ts:\d|better-sqlite3|express/i;
+const INTERNALS =
+  /at \/|at \w+ \(|SQLITE_|node_modules|select |insert into|\/work|\.ts:\d|better-sqlite3|express/i;
 
-const sqlite = (code: string): Error => Object.assign(new Error(`select * from users - ${code}: at /home/app/node_modules/x.ts:3`), { code });
+const sqlite = (code: string): Error =>
+  Object.assign(new Error(`select * from users - ${code}: at /home/app/node_modules/x.ts:3`), {
+    code,
+  });
 
 const FAILURES: readonly (readonly [string, number, string, unknown])[] = [
-  ['an expected refusal', 409, 'last-lead', new AppError(409, 'last-lead', 'You are the only lead.')],
+  [
+    'an expected refusal',
+    409,
+    'last-lead',
+    new AppError(409, 'last-lead', 'You are the only lead.'),
+  ],
   ['something that is not there', 404, 'no-such-api-token', notFound('API token')],
   ['a stale version', 412, 'stale-version', staleVersion(4)],
-  ['a kernel that refuses its input', 422, 'too-few-rows', new KernelError('too-few-rows', 'expected 10 rows, found 3')],
+  [
+    'a kernel that refuses its input',
+    422,
+    'too-few-rows',
+    new KernelError('too-few-rows', 'expected 10 rows, found 3'),
+  ],
   ['a full disk', 507, 'disk-full', sqlite('SQLITE_FULL')],
   ['a busy database', 503, 'busy', sqlite('SQLITE_BUSY_SNAPSHOT')],
   ['a file too large', 413, 'upload-refused', new MulterError('LIMIT_FILE_SIZE')],
-  ['a bug', 500, 'internal', new TypeError("Cannot read properties of undefined (reading 'x') at /srv/app.ts:3")],
+  [
+    'a bug',
+    500,
+    'internal',
+    new TypeError("Cannot read properties of undefined (reading 'x') at /srv/app.ts:3"),
+  ],
   ['a broken constraint', 500, 'internal', sqlite('SQLITE_CONSTRAINT_UNIQUE')],
   ['something thrown that is no error', 500, 'internal', 'select secret from users'],
 ];
@@ -37,9 +56,16 @@ describe('OU-03 every failure is a problem document without internals', () => {
     });
     app.use(problemHandler(createLog('silent')));
     const res = await request(app).get('/');
-    expect([res.status, res.get('content-type')]).toEqual([status, 'application/problem+json; charset=utf-8']);
+    expect([res.status, res.get('content-type')]).toEqual([
+      status,
+      'application/problem+json; charset=utf-8',
+    ]);
     const problem = Problem.parse(res.body);
-    expect([problem.status, problem.code, problem.type]).toEqual([status, code, `/problems/${code}`]);
+    expect([problem.status, problem.code, problem.type]).toEqual([
+      status,
+      code,
+      `/problems/${code}`,
+    ]);
     expect(res.text).not.toMatch(INTERNALS);
   });
 
@@ -51,7 +77,11 @@ describe('OU-03 every failure is a problem document without internals', () => {
     ['unknown keys', 400, 'invalid', '{"name":"A","role":"lead"}'],
   ])('%s', async (_label, status, code, body) => {
     const client = await testClient();
-    const res = await client.as('lead').patch('/api/me').set('Content-Type', 'application/json').send(body);
+    const res = await client
+      .as('lead')
+      .patch('/api/me')
+      .set('Content-Type', 'application/json')
+      .send(body);
     expect([res.status, (res.body as Problem).code]).toEqual([status, code]);
     expect((res.body as Problem).requestId).toBe(res.get('x-request-id'));
     expect(res.text).not.toMatch(INTERNALS);
@@ -61,7 +91,10 @@ describe('OU-03 every failure is a problem document without internals', () => {
   test('a broken escape in the address', async () => {
     const client = await testClient();
     const res = await client.as('lead').get('/api/invitations/%E0%A4%A');
-    expect([res.status, res.get('content-type')]).toEqual([400, 'application/problem+json; charset=utf-8']);
+    expect([res.status, res.get('content-type')]).toEqual([
+      400,
+      'application/problem+json; charset=utf-8',
+    ]);
     expect(res.text).not.toMatch(INTERNALS);
   });
 
@@ -79,9 +112,21 @@ describe('OU-03 every failure is a problem document without internals', () => {
     const { app: real } = await testClient();
     const app = express();
     const router = Router();
-    const lying = endpoint({ id: 'lying', method: 'get', path: '/lying', tag: 'T', summary: 'S', access: { kind: 'public' }, response: z.object({ count: z.number().max(3) }) });
+    const lying = endpoint({
+      id: 'lying',
+      method: 'get',
+      path: '/lying',
+      tag: 'T',
+      summary: 'S',
+      access: { kind: 'public' },
+      response: z.object({ count: z.number().max(3) }),
+    });
     mount(router, lying, () => ({ count: 4, secret: 'x' }));
-    attachGate(app, { guard: { admit: () => Promise.resolve({ actor: null, member: null }) }, idempotency: { once: (_key, work) => work() }, streams: real.streams });
+    attachGate(app, {
+      guard: { admit: () => Promise.resolve({ actor: null, member: null }) },
+      idempotency: { once: (_key, work) => work() },
+      streams: real.streams,
+    });
     app.use(router).use(problemHandler(createLog('silent')));
     expect((await request(app).get('/lying')).status).toBe(500);
   });

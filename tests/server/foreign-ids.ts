@@ -28,7 +28,10 @@ export const QUERIES_FOR_FOREIGN_IDS: Readonly<Record<string, string>> = {
 };
 
 const MAPPING = {
-  kind: 'collar', delimiter: ',', decimalMark: '.', columns: [{ index: 0, header: 'HoleID', role: 'hole' }],
+  kind: 'collar',
+  delimiter: ',',
+  decimalMark: '.',
+  columns: [{ index: 0, header: 'HoleID', role: 'hole' }],
 } as const;
 
 /** Bodies good enough to reach the id, for endpoints that read one. */
@@ -39,11 +42,20 @@ export const BODIES_FOR_FOREIGN_IDS: Readonly<Record<string, object>> = {
   loadFile: { mode: 'replace' },
   updateSuite: { name: 'S', support: 'drill', analytes: ['Cu', 'As', 'Mg'] },
   updateGroup: { name: 'G' },
-  updateDomain: { code: 'D1', name: 'D', rationale: 'It holds together.', slot: 1, groupLabels: [1] },
+  updateDomain: {
+    code: 'D1',
+    name: 'D',
+    rationale: 'It holds together.',
+    slot: 1,
+    groupLabels: [1],
+  },
 };
 
 /** Endpoints that ask for loaded data before they look at the id: alike for every id, with this status. */
-export const REFUSED_BEFORE_THE_ID: Readonly<Record<string, number>> = { updateSuite: 409, updateDomain: 409 };
+export const REFUSED_BEFORE_THE_ID: Readonly<Record<string, number>> = {
+  updateSuite: 409,
+  updateDomain: 409,
+};
 
 interface Column {
   name: string;
@@ -58,8 +70,16 @@ let serial = 500_000;
 /** A row of deposit B with just enough in it to be there: whatever must not be null is a number or text never used before. */
 async function insertBareRow(db: Knex, table: string, depositId: number): Promise<number> {
   const columns: Column[] = await db.raw(`PRAGMA table_info(${table})`);
-  const needed = columns.filter(({ name, notnull, dflt_value, pk }) => pk === 0 && name !== 'deposit_id' && notnull === 1 && dflt_value === null);
-  const row = Object.fromEntries(needed.map(({ name, type }) => [name, /int|real|float|bool/i.test(type) ? ++serial : `${name} ${++serial}`]));
+  const needed = columns.filter(
+    ({ name, notnull, dflt_value, pk }) =>
+      pk === 0 && name !== 'deposit_id' && notnull === 1 && dflt_value === null,
+  );
+  const row = Object.fromEntries(
+    needed.map(({ name, type }) => [
+      name,
+      /int|real|float|bool/i.test(type) ? ++serial : `${name} ${++serial}`,
+    ]),
+  );
   await db.raw('PRAGMA foreign_keys = OFF');
   await db.raw('PRAGMA ignore_check_constraints = ON');
   const [id] = await db(table).insert({ ...row, deposit_id: depositId });
@@ -70,9 +90,14 @@ async function insertBareRow(db: Knex, table: string, depositId: number): Promis
 }
 
 /** Makes what the parameter names in deposit B and answers its id. */
-export async function foreignId(client: TestClient, endpointId: string, parameter: string): Promise<number> {
+export async function foreignId(
+  client: TestClient,
+  endpointId: string,
+  parameter: string,
+): Promise<number> {
   if (parameter === 'userId') return client.of('lead-of-b').id;
   const table = TABLE_OF[`${endpointId}.${parameter}`] ?? TABLE_OF[parameter];
-  if (table === undefined) throw new Error(`${endpointId}: tests/server/foreign-ids.ts names no table for ${parameter}`);
+  if (table === undefined)
+    throw new Error(`${endpointId}: tests/server/foreign-ids.ts names no table for ${parameter}`);
   return insertBareRow(client.db, table, client.otherDepositId);
 }

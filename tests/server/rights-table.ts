@@ -13,7 +13,14 @@ interface DepositRow {
   tokens: readonly TokenRight[];
 }
 
-const ALL: readonly Role[] = ['lead', 'geologist', 'geometallurgist', 'site-geologist', 'estimator', 'viewer'];
+const ALL: readonly Role[] = [
+  'lead',
+  'geologist',
+  'geometallurgist',
+  'site-geologist',
+  'estimator',
+  'viewer',
+];
 
 /** Read by every member and by reading programs. */
 const READ: RightsRow = { roles: ALL, tokens: ['read', 'work'] };
@@ -29,7 +36,10 @@ const READ_BY_POST: RightsRow = { roles: ALL, tokens: ['work'] };
 /** Whatever a token reads, one for codes reads this. */
 const CODES: RightsRow = { roles: ALL, tokens: ['read', 'codes', 'work'] };
 /** Everybody but a viewer, who changes nothing. */
-const NO_VIEWER: RightsRow = { roles: ['lead', 'geologist', 'geometallurgist', 'site-geologist', 'estimator'], tokens: ['work'] };
+const NO_VIEWER: RightsRow = {
+  roles: ['lead', 'geologist', 'geometallurgist', 'site-geologist', 'estimator'],
+  tokens: ['work'],
+};
 
 export const RIGHTS: Readonly<Record<string, RightsRow>> = {
   getHealth: 'public',

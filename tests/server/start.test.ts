@@ -11,8 +11,15 @@ const folder = tempFolder();
 const port = 5000 + Math.floor(Math.random() * 4000);
 const url = `http://localhost:${port}`;
 const env = {
-  ...process.env, DATA_DIR: folder.path, PORT: String(port), LOG_LEVEL: 'info',
-  INSTANCE: 'production', PUBLIC_URL: url, ALLOW_PLAIN_HTTP: 'yes', SMTP_URL: 'smtp://127.0.0.1:1', SESSION_SECRET: TEST_SECRET,
+  ...process.env,
+  DATA_DIR: folder.path,
+  PORT: String(port),
+  LOG_LEVEL: 'info',
+  INSTANCE: 'production',
+  PUBLIC_URL: url,
+  ALLOW_PLAIN_HTTP: 'yes',
+  SMTP_URL: 'smtp://127.0.0.1:1',
+  SESSION_SECRET: TEST_SECRET,
 };
 const tsx = ['--import', 'tsx'];
 
@@ -27,11 +34,19 @@ async function waitUntil(what: string, isTrue: () => boolean | Promise<boolean>)
   throw new Error(`waited in vain for ${what}; the server said:\n${output}`);
 }
 
-const isUp = (): Promise<boolean> => fetch(`${url}/api/health/ready`).then((res) => res.ok, () => false);
+const isUp = (): Promise<boolean> =>
+  fetch(`${url}/api/health/ready`).then(
+    (res) => res.ok,
+    () => false,
+  );
 
 beforeAll(async () => {
-  server = spawn(process.execPath, [...tsx, 'server/index.ts'], { env, stdio: ['ignore', 'pipe', 'pipe'] });
-  for (const stream of [server.stdout, server.stderr]) stream?.on('data', (chunk: Buffer) => (output += chunk.toString()));
+  server = spawn(process.execPath, [...tsx, 'server/index.ts'], {
+    env,
+    stdio: ['ignore', 'pipe', 'pipe'],
+  });
+  for (const stream of [server.stdout, server.stderr])
+    stream?.on('data', (chunk: Buffer) => (output += chunk.toString()));
   await waitUntil('the server', isUp);
 }, 120_000);
 
@@ -41,7 +56,11 @@ afterAll(() => {
 });
 
 const send = (path: string, body: object) =>
-  fetch(url + path, { method: 'POST', headers: { 'Content-Type': 'application/json', 'Sec-Fetch-Site': 'same-origin' }, body: JSON.stringify(body) });
+  fetch(url + path, {
+    method: 'POST',
+    headers: { 'Content-Type': 'application/json', 'Sec-Fetch-Site': 'same-origin' },
+    body: JSON.stringify(body),
+  });
 
 test('it starts on an empty folder, says where it answers, and warns of plain HTTP (AU-01)', () => {
   expect(output).toContain(`Selvage answers at ${url}`);
@@ -51,12 +70,18 @@ test('it starts on an empty folder, says where it answers, and warns of plain HT
 });
 
 test('AU-04 the first administrator sets a password by a link and signs in; hashing leaves the server free', async () => {
-  const { stdout } = await run(process.execPath, [...tsx, 'server/cli/create-admin.ts', 'ada@test.example', 'Ada Person'], { env });
+  const { stdout } = await run(
+    process.execPath,
+    [...tsx, 'server/cli/create-admin.ts', 'ada@test.example', 'Ada Person'],
+    { env },
+  );
   const token = /\/reset\/(\S+)/.exec(stdout)?.[1] ?? '';
   const password = 'gravel pigeon lantern';
   expect((await send(`/api/password-resets/${token}`, { newPassword: password })).status).toBe(200);
 
-  const signIns = Promise.all(Array.from({ length: 4 }, () => send('/api/session', { email: 'ada@test.example', password })));
+  const signIns = Promise.all(
+    Array.from({ length: 4 }, () => send('/api/session', { email: 'ada@test.example', password })),
+  );
   const median = await medianHealth(20);
   expect((await signIns).map(({ status }) => status)).toEqual([200, 200, 200, 200]);
   // One hash at cost 12 on the server's own thread would hold every probe up for some 300 ms or more.
@@ -71,13 +96,20 @@ async function medianHealth(probes: number): Promise<number> {
     await fetch(`${url}/api/health`);
     taken.push(performance.now() - from);
   }
-  return taken.sort((left, right) => left - right)[Math.floor(probes / 2)] ?? Number.POSITIVE_INFINITY;
+  return (
+    taken.sort((left, right) => left - right)[Math.floor(probes / 2)] ?? Number.POSITIVE_INFINITY
+  );
 }
 
 test('a second server on the same port says so', async () => {
   const other = tempFolder();
-  const failing = run(process.execPath, [...tsx, 'server/index.ts'], { env: { ...env, DATA_DIR: other.path } });
-  await expect(failing).rejects.toMatchObject({ code: 1, stderr: expect.stringContaining(`Port ${port} is in use`) as string });
+  const failing = run(process.execPath, [...tsx, 'server/index.ts'], {
+    env: { ...env, DATA_DIR: other.path },
+  });
+  await expect(failing).rejects.toMatchObject({
+    code: 1,
+    stderr: expect.stringContaining(`Port ${port} is in use`) as string,
+  });
   other.remove();
 }, 90_000);
 

@@ -9,7 +9,16 @@ import { AppError } from '#server/lib/errors.ts';
 import { attachGate, mount } from '#server/lib/mount.ts';
 import { createStreamWatch } from '#server/lib/stream-watch.ts';
 
-const events = endpoint({ id: 'events', method: 'get', path: '/events', tag: 'T', summary: 'S', access: { kind: 'signed-in' }, produces: 'events', response: z.unknown() });
+const events = endpoint({
+  id: 'events',
+  method: 'get',
+  path: '/events',
+  tag: 'T',
+  summary: 'S',
+  access: { kind: 'signed-in' },
+  produces: 'events',
+  response: z.unknown(),
+});
 
 /** An app with one event stream, and a guard that can be turned. */
 async function streamApp(recheckMs: number) {
@@ -22,7 +31,12 @@ async function streamApp(recheckMs: number) {
     res.write(': open\n\n');
   });
   attachGate(app, {
-    guard: { admit: () => (state.isAllowed ? Promise.resolve({ actor: null, member: null }) : Promise.reject(new AppError(401, 'sign-in-needed', 'Sign in.'))) },
+    guard: {
+      admit: () =>
+        state.isAllowed
+          ? Promise.resolve({ actor: null, member: null })
+          : Promise.reject(new AppError(401, 'sign-in-needed', 'Sign in.')),
+    },
     idempotency: { once: (_key, work) => work() },
     streams,
   });
@@ -36,7 +50,10 @@ async function streamApp(recheckMs: number) {
 test('AU-03 an open stream ends soon after the session or the right is gone', async () => {
   const { state, server, stream } = await streamApp(40);
   const ended = stream.text();
-  const early = await Promise.race([ended, new Promise((resolve) => setTimeout(() => resolve('still open'), 200))]);
+  const early = await Promise.race([
+    ended,
+    new Promise((resolve) => setTimeout(() => resolve('still open'), 200)),
+  ]);
   expect(early).toBe('still open');
   state.isAllowed = false;
   expect(await ended).toBe(': open\n\n');

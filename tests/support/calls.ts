@@ -10,10 +10,17 @@ export interface Called {
 }
 
 /** Parameters that a plain large number does not fit. */
-const NEVER_THERE: Readonly<Record<string, string>> = { token: 'x'.repeat(43), sessionId: 'x'.repeat(43), label: '1' };
+const NEVER_THERE: Readonly<Record<string, string>> = {
+  token: 'x'.repeat(43),
+  sessionId: 'x'.repeat(43),
+  label: '1',
+};
 
 /** Path with its parameters filled in; those not given are ids that never existed. */
-export function pathOf(endpoint: Pick<Endpoint, 'path'>, given: Readonly<Record<string, string | number>>): string {
+export function pathOf(
+  endpoint: Pick<Endpoint, 'path'>,
+  given: Readonly<Record<string, string | number>>,
+): string {
   return `/api${endpoint.path.replaceAll(/:(\w+)/g, (_all, name: string) => String(given[name] ?? NEVER_THERE[name] ?? 987_654_321))}`;
 }
 
@@ -21,7 +28,11 @@ export function pathOf(endpoint: Pick<Endpoint, 'path'>, given: Readonly<Record<
 export async function callEndpoint(
   url: string,
   endpoint: Pick<Endpoint, 'path' | 'method' | 'body' | 'consumes' | 'ifMatch'>,
-  given: { params?: Readonly<Record<string, string | number>>; headers?: Readonly<Record<string, string>>; body?: string } = {},
+  given: {
+    params?: Readonly<Record<string, string | number>>;
+    headers?: Readonly<Record<string, string>>;
+    body?: string;
+  } = {},
 ): Promise<Called> {
   const leave = new AbortController();
   const readsJson = endpoint.body !== null && endpoint.consumes === 'json';

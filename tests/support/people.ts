@@ -45,8 +45,12 @@ export const DEPOSIT_BODY = {
 
 async function insertDeposit(db: Knex, name: string, now: string): Promise<number> {
   const [id] = await db('deposits').insert({
-    name, description: DEPOSIT_BODY.description, grid: JSON.stringify(DEPOSIT_BODY.grid), created_at: now,
-    pay_analytes: JSON.stringify(DEPOSIT_BODY.payAnalytes), deleterious_analytes: JSON.stringify(DEPOSIT_BODY.deleteriousAnalytes),
+    name,
+    description: DEPOSIT_BODY.description,
+    grid: JSON.stringify(DEPOSIT_BODY.grid),
+    created_at: now,
+    pay_analytes: JSON.stringify(DEPOSIT_BODY.payAnalytes),
+    deleterious_analytes: JSON.stringify(DEPOSIT_BODY.deleteriousAnalytes),
   });
   if (id === undefined) throw new Error('no deposit was made');
   return id;
@@ -63,14 +67,35 @@ export async function insertPeople(db: Knex, env: Env, clock: () => Date): Promi
   const add = async (who: Exclude<Who, null>): Promise<number> => {
     const name = `Test ${who.replaceAll('-', ' ')}`;
     const email = `${who}@test.example`;
-    const id = await insertUser(db, { email, name, passwordHash: PASSWORD_HASH, isAdministrator: who === 'administrator', createdAt: now });
-    people.set(who, { id, name, email, cookie: await sessions.open(db, id, { address: '127.0.0.1', userAgent: 'tests' }) });
+    const id = await insertUser(db, {
+      email,
+      name,
+      passwordHash: PASSWORD_HASH,
+      isAdministrator: who === 'administrator',
+      createdAt: now,
+    });
+    people.set(who, {
+      id,
+      name,
+      email,
+      cookie: await sessions.open(db, id, { address: '127.0.0.1', userAgent: 'tests' }),
+    });
     return id;
   };
   for (const role of ROLES) {
-    await db('memberships').insert({ deposit_id: depositId, user_id: await add(role), role, since: now });
+    await db('memberships').insert({
+      deposit_id: depositId,
+      user_id: await add(role),
+      role,
+      since: now,
+    });
   }
-  await db('memberships').insert({ deposit_id: otherDepositId, user_id: await add('lead-of-b'), role: 'lead', since: now });
+  await db('memberships').insert({
+    deposit_id: otherDepositId,
+    user_id: await add('lead-of-b'),
+    role: 'lead',
+    since: now,
+  });
   await add('outsider');
   await add('administrator');
 

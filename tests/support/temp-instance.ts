@@ -28,10 +28,18 @@ async function makeTemplate() {
 
 /** Settings of an instance on a temporary folder, as `npm start` would read them. */
 export const testEnv = (dataDir: string, variables: Record<string, string> = {}): Env =>
-  readEnv({ DATA_DIR: dataDir, SESSION_SECRET: TEST_SECRET, PUBLIC_URL: 'http://localhost:4310', LOG_LEVEL: 'info', ...variables });
+  readEnv({
+    DATA_DIR: dataDir,
+    SESSION_SECRET: TEST_SECRET,
+    PUBLIC_URL: 'http://localhost:4310',
+    LOG_LEVEL: 'info',
+    ...variables,
+  });
 
 /** A data folder with a copy of a freshly migrated database; the migrations run once per test file. */
-export async function tempInstance(variables: Record<string, string> = {}): Promise<{ env: Env; remove: () => void }> {
+export async function tempInstance(
+  variables: Record<string, string> = {},
+): Promise<{ env: Env; remove: () => void }> {
   template ??= makeTemplate();
   const { file } = await template;
   const folder = tempFolder();

@@ -11,5 +11,9 @@ export interface Demo {
 /** @throws {AppError} 404 on an instance with real work on it. */
 export function requireDemo(demo: Demo | null): Demo {
   if (demo) return demo;
-  throw new AppError(404, 'no-demonstration', 'This instance has no demonstration deposits to reset.');
+  throw new AppError(
+    404,
+    'no-demonstration',
+    'This instance has no demonstration deposits to reset.',
+  );
 }

@@ -4,12 +4,23 @@ import { transact } from '#server/db/transact.ts';
 import type { Clock } from '#server/lib/clock.ts';
 import { AppError, orNotFound } from '#server/lib/errors.ts';
 import type { AuthService } from './auth.service.ts';
-import { type InvitationsService, noSuchInvitation, type OpenInvitation } from './invitations.service.ts';
+import {
+  type InvitationsService,
+  noSuchInvitation,
+  type OpenInvitation,
+} from './invitations.service.ts';
 import type { Passwords } from './password-hasher.ts';
 import { requireGoodPassword } from './password-rules.ts';
 import type { Origin, Sessions } from './sessions.ts';
 import type { Throttle } from './throttle.ts';
-import { insertUser, type NewUser, publicPart, userByEmail, userById, type UserRow } from './users.repository.ts';
+import {
+  insertUser,
+  type NewUser,
+  publicPart,
+  userByEmail,
+  userById,
+  type UserRow,
+} from './users.repository.ts';
 
 export interface AcceptDeps {
   db: Knex;
@@ -27,29 +38,58 @@ interface Given {
 }
 
 /** Accepts an invitation: the account it needs, the membership it brings, and a session. */
-export type Accept = (token: string, given: Given, origin: Origin) => Promise<{ me: Me; depositId: number | null; cookie: string }>;
+export type Accept = (
+  token: string,
+  given: Given,
+  origin: Origin,
+) => Promise<{ me: Me; depositId: number | null; cookie: string }>;
 
-export function createAccept({ db, clock, auth, invitations, passwords, sessions, throttle }: AcceptDeps): Accept {
+export function createAccept({
+  db,
+  clock,
+  auth,
+  invitations,
+  passwords,
+  sessions,
+  throttle,
+}: AcceptDeps): Accept {
   async function checkOwner(user: UserRow, password: string, address: string): Promise<void> {
     const attempt = await throttle.beginTry(user.email, address);
     const matches = await passwords.matches(password, user.password_hash);
     if (!matches || user.is_active === 0) {
-      throw new AppError(403, 'wrong-password', `The password is wrong: expected that of the account ${user.email}.`);
+      throw new AppError(
+        403,
+        'wrong-password',
+        `The password is wrong: expected that of the account ${user.email}.`,
+      );
     }
     await attempt.succeeded();
   }
 
-  async function newAccount({ email }: OpenInvitation, { name, password }: Given): Promise<NewUser> {
+  async function newAccount(
+    { email }: OpenInvitation,
+    { name, password }: Given,
+  ): Promise<NewUser> {
     if (name === undefined) {
       const fields = [{ path: 'body.name', message: 'expected your name, found none' }];
       throw new AppError(400, 'invalid', 'A new account needs a name.', { fields });
     }
     requireGoodPassword(password, { name, email }, 'body.password');
-    return { name, email, passwordHash: await passwords.hash(password), isAdministrator: false, createdAt: clock().toISOString() };
+    return {
+      name,
+      email,
+      passwordHash: await passwords.hash(password),
+      isAdministrator: false,
+      createdAt: clock().toISOString(),
+    };
   }
 
   /** Does the slow part (hashing) at once; what it returns makes or finds the account within the transaction. */
-  async function prepare(invitation: OpenInvitation, given: Given, address: string): Promise<(trx: Knex) => Promise<UserRow>> {
+  async function prepare(
+    invitation: OpenInvitation,
+    given: Given,
+    address: string,
+  ): Promise<(trx: Knex) => Promise<UserRow>> {
     const user = await userByEmail(db, invitation.email);
     if (user) {
       await checkOwner(user, given.password, address);

@@ -1,7 +1,18 @@
 import { type Request, type Response, Router } from 'express';
 import {
-  acceptInvitation, askPasswordReset, changePassword, endSession, getInstance, getInvitation, getMe, type Instance, listSessions,
-  resetPassword, signIn, signOut, updateMe,
+  acceptInvitation,
+  askPasswordReset,
+  changePassword,
+  endSession,
+  getInstance,
+  getInvitation,
+  getMe,
+  type Instance,
+  listSessions,
+  resetPassword,
+  signIn,
+  signOut,
+  updateMe,
 } from '#contract/auth.ts';
 import { mount } from '#server/lib/mount.ts';
 import type { Accept } from './accept.service.ts';
@@ -21,12 +32,29 @@ export interface AuthParts {
 }
 
 const done = { done: true } as const;
-const originOf = (req: Request): Origin => ({ address: req.ip ?? 'unknown', userAgent: req.get('user-agent') ?? '' });
+const originOf = (req: Request): Origin => ({
+  address: req.ip ?? 'unknown',
+  userAgent: req.get('user-agent') ?? '',
+});
 
-export function authRoutes({ auth, accept, invitations, resets, sessions, cookie, instance }: AuthParts): Router {
+export function authRoutes({
+  auth,
+  accept,
+  invitations,
+  resets,
+  sessions,
+  cookie,
+  instance,
+}: AuthParts): Router {
   const router = Router();
-  const attributes = { httpOnly: true, secure: cookie.secure, sameSite: 'strict', path: '/' } as const;
-  const setCookie = (res: Response, value: string): void => void res.cookie(cookie.name, value, { ...attributes, maxAge: SESSION_LIFE_MS });
+  const attributes = {
+    httpOnly: true,
+    secure: cookie.secure,
+    sameSite: 'strict',
+    path: '/',
+  } as const;
+  const setCookie = (res: Response, value: string): void =>
+    void res.cookie(cookie.name, value, { ...attributes, maxAge: SESSION_LIFE_MS });
 
   mount(router, getInstance, () => instance());
   mount(router, signIn, async ({ body, req, res }) => {

@@ -23,25 +23,50 @@ export interface AuthDeps {
 
 export interface AuthService {
   me(user: Omit<Me, 'isDemoInstance'>): Me;
-  signIn(given: { email: string; password: string }, origin: Origin): Promise<{ me: Me; cookie: string }>;
+  signIn(
+    given: { email: string; password: string },
+    origin: Origin,
+  ): Promise<{ me: Me; cookie: string }>;
   signOut(actor: Actor): Promise<void>;
   rename(actor: Actor, name: string): Promise<Me>;
   /** Asks for the password again before something grave. @throws {AppError} 403 or 429. */
   confirmPassword(actor: Actor, password: string, address: string): Promise<void>;
-  changePassword(actor: Actor, given: { currentPassword: string; newPassword: string }, address: string): Promise<void>;
+  changePassword(
+    actor: Actor,
+    given: { currentPassword: string; newPassword: string },
+    address: string,
+  ): Promise<void>;
 }
 
-const wrongSignIn = (): AppError => new AppError(401, 'sign-in-failed', 'The e-mail address or the password is wrong.');
+const wrongSignIn = (): AppError =>
+  new AppError(401, 'sign-in-failed', 'The e-mail address or the password is wrong.');
 const wrongPassword = (): AppError => new AppError(403, 'wrong-password', 'The password is wrong.');
 
-export function createAuth({ db, log, passwords, record, sessions, throttle, isDemoInstance }: AuthDeps): AuthService {
-  const me: AuthService['me'] = ({ id, email, name, isAdministrator }) => ({ id, email, name, isAdministrator, isDemoInstance });
+export function createAuth({
+  db,
+  log,
+  passwords,
+  record,
+  sessions,
+  throttle,
+  isDemoInstance,
+}: AuthDeps): AuthService {
+  const me: AuthService['me'] = ({ id, email, name, isAdministrator }) => ({
+    id,
+    email,
+    name,
+    isAdministrator,
+    isDemoInstance,
+  });
 
   async function confirmPassword(actor: Actor, password: string, address: string): Promise<void> {
     const attempt = await throttle.beginTry(actor.email, address);
     const user = await userById(db, actor.id);
     if (!(await passwords.matches(password, user?.password_hash ?? null))) {
-      log.warn({ event: 'password.wrong', userId: actor.id }, 'wrong password of a signed-in person');
+      log.warn(
+        { event: 'password.wrong', userId: actor.id },
+        'wrong password of a signed-in person',
+      );
       throw wrongPassword();
     }
     await attempt.succeeded();
@@ -55,7 +80,10 @@ export function createAuth({ db, log, passwords, record, sessions, throttle, isD
       const user = await userByEmail(db, email);
       const matches = await passwords.matches(password, user?.password_hash ?? null);
       if (!user || !matches || user.is_active === 0) {
-        log.warn({ event: 'sign-in.failed', userId: user?.id ?? null, address: origin.address }, 'sign-in failed');
+        log.warn(
+          { event: 'sign-in.failed', userId: user?.id ?? null, address: origin.address },
+          'sign-in failed',
+        );
         throw wrongSignIn();
       }
       await attempt.succeeded();
@@ -73,7 +101,11 @@ export function createAuth({ db, log, passwords, record, sessions, throttle, isD
       await transact(db, async (trx) => {
         await trx<UserRow>('users').where({ id: actor.id }).update({ name });
         await record.add(trx, {
-          actor, depositId: null, action: 'person.renamed', subject: `person ${actor.id}`, sentence: `${actor.name} is now called ${name}.`,
+          actor,
+          depositId: null,
+          action: 'person.renamed',
+          subject: `person ${actor.id}`,
+          sentence: `${actor.name} is now called ${name}.`,
         });
       });
       return me({ ...actor, name });
@@ -87,9 +119,17 @@ export function createAuth({ db, log, passwords, record, sessions, throttle, isD
       const hash = await passwords.hash(newPassword);
       await transact(db, async (trx) => {
         await trx<UserRow>('users').where({ id: actor.id }).update({ password_hash: hash });
-        await sessions.endAllOf(trx, actor.id, actor.via.kind === 'session' ? actor.via.sessionId : undefined);
+        await sessions.endAllOf(
+          trx,
+          actor.id,
+          actor.via.kind === 'session' ? actor.via.sessionId : undefined,
+        );
         await record.add(trx, {
-          actor, depositId: null, action: 'password.changed', subject: `person ${actor.id}`, sentence: `${actor.name} changed their password.`,
+          actor,
+          depositId: null,
+          action: 'password.changed',
+          subject: `person ${actor.id}`,
+          sentence: `${actor.name} changed their password.`,
         });
       });
       log.info({ event: 'password.changed', userId: actor.id }, 'password changed');

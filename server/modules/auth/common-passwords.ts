@@ -31,9 +31,20 @@ const PIECES = new Set(WORDS.split(/\s+/).filter((word) => word.length > 0));
 const LONGEST_PIECE = Math.max(...[...PIECES].map((word) => word.length));
 
 /** Digits and marks people put for letters. */
-const STAND_INS: Readonly<Record<string, string>> = { '0': 'o', '1': 'i', '3': 'e', '4': 'a', '5': 's', '7': 't', '@': 'a', '$': 's', '!': 'i' };
+const STAND_INS: Readonly<Record<string, string>> = {
+  '0': 'o',
+  '1': 'i',
+  '3': 'e',
+  '4': 'a',
+  '5': 's',
+  '7': 't',
+  '@': 'a',
+  $: 's',
+  '!': 'i',
+};
 
-const lettersFor = (text: string): string => [...text].map((mark) => STAND_INS[mark] ?? mark).join('');
+const lettersFor = (text: string): string =>
+  [...text].map((mark) => STAND_INS[mark] ?? mark).join('');
 
 /** `abcabcabcabc`, `aaaaaaaaaaaa`: one short piece over and over. */
 const isRepeat = (text: string): boolean => /^(.{1,6}?)\1+.{0,2}$/su.test(text);
@@ -49,7 +60,8 @@ function isMadeOfPieces(text: string, maxPieces: number): boolean {
     const isFree = /[^\p{L}]/u.test(text.slice(end - 1, end));
     let best = (isFree ? fewest[end - 1] : undefined) ?? Number.POSITIVE_INFINITY;
     for (let start = Math.max(0, end - LONGEST_PIECE); start < end; start++) {
-      if (isPiece(text.slice(start, end))) best = Math.min(best, (fewest[start] ?? Number.POSITIVE_INFINITY) + 1);
+      if (isPiece(text.slice(start, end)))
+        best = Math.min(best, (fewest[start] ?? Number.POSITIVE_INFINITY) + 1);
     }
     fewest[end] = best;
   }

@@ -8,9 +8,15 @@ export interface PasswordHasher {
 }
 
 export const computeHasher = (compute: Pick<Compute, 'run'>): PasswordHasher => ({
-  hash: async (password) => (await compute.run<{ password: string }, { hash: string }>('hash-password', { password })).hash,
+  hash: async (password) =>
+    (await compute.run<{ password: string }, { hash: string }>('hash-password', { password })).hash,
   verify: async (password, hash) =>
-    (await compute.run<{ password: string; hash: string }, { matches: boolean }>('verify-password', { password, hash })).matches,
+    (
+      await compute.run<{ password: string; hash: string }, { matches: boolean }>(
+        'verify-password',
+        { password, hash },
+      )
+    ).matches,
 });
 
 /** bcrypt reads no more; what follows would be ignored without a word. */

@@ -14,19 +14,31 @@ function namesOf(person: { name: string; email: string }): string[] {
 }
 
 /** Why a new password is refused, in words; null when it is fine. */
-export function passwordFault(password: string, person: { name: string; email: string }): string | null {
+export function passwordFault(
+  password: string,
+  person: { name: string; email: string },
+): string | null {
   const length = NewPassword.safeParse(password);
-  if (!length.success) return `${length.error.issues[0]?.message ?? 'expected 12 to 72 bytes'}, found ${new TextEncoder().encode(password).length}`;
+  if (!length.success)
+    return `${length.error.issues[0]?.message ?? 'expected 12 to 72 bytes'}, found ${new TextEncoder().encode(password).length}`;
   const text = password.toLowerCase();
   if (text.includes(PRODUCT)) return 'expected a password without the name of the product';
-  if (namesOf(person).some((name) => text.includes(name))) return 'expected a password without your own name or address';
-  if (isCommonPassword(password)) return 'expected a password that is not among those tried first (common words and runs)';
+  if (namesOf(person).some((name) => text.includes(name)))
+    return 'expected a password without your own name or address';
+  if (isCommonPassword(password))
+    return 'expected a password that is not among those tried first (common words and runs)';
   return null;
 }
 
 /** @throws {AppError} 400 naming the field. */
-export function requireGoodPassword(password: string, person: { name: string; email: string }, field: string): void {
+export function requireGoodPassword(
+  password: string,
+  person: { name: string; email: string },
+  field: string,
+): void {
   const fault = passwordFault(password, person);
   if (fault === null) return;
-  throw new AppError(400, 'weak-password', `The new password was refused: ${fault}.`, { fields: [{ path: field, message: fault }] });
+  throw new AppError(400, 'weak-password', `The new password was refused: ${fault}.`, {
+    fields: [{ path: field, message: fault }],
+  });
 }

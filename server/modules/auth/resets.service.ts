@@ -45,20 +45,34 @@ export interface ResetsService {
 }
 
 const noSuchLink = (): AppError =>
-  new AppError(404, 'no-such-link', 'This link does not work: it was used, it has expired, or a newer one replaced it. Ask for a new one.');
+  new AppError(
+    404,
+    'no-such-link',
+    'This link does not work: it was used, it has expired, or a newer one replaced it. Ask for a new one.',
+  );
 
 /** Makes a person's one reset link, without sending it; an older link stops working. */
-export async function makeResetLink(trx: Knex, userId: number, clock: Clock, publicUrl: string): Promise<string> {
+export async function makeResetLink(
+  trx: Knex,
+  userId: number,
+  clock: Clock,
+  publicUrl: string,
+): Promise<string> {
   const token = randomToken();
   await trx<ResetRow>('password_resets').where({ user_id: userId }).delete();
   await trx<ResetRow>('password_resets').insert({
-    token_hash: sha256Hex(token), user_id: userId, created_at: clock().toISOString(), expires_at: instantAfter(clock, RESET_LIFE_MS), used_at: null,
+    token_hash: sha256Hex(token),
+    user_id: userId,
+    created_at: clock().toISOString(),
+    expires_at: instantAfter(clock, RESET_LIFE_MS),
+    used_at: null,
   });
   return `${publicUrl}/reset/${token}`;
 }
 
 export function createResets(deps: ResetsDeps): ResetsService {
-  const { db, clock, log, background, mailer, passwords, record, sessions, throttle, publicUrl } = deps;
+  const { db, clock, log, background, mailer, passwords, record, sessions, throttle, publicUrl } =
+    deps;
 
   return {
     ask(email, address) {
@@ -73,9 +87,12 @@ export function createResets(deps: ResetsDeps): ResetsService {
 
     async use(token, newPassword) {
       const live = (trx: Knex) =>
-        trx<ResetRow>('password_resets').where({ token_hash: sha256Hex(token), used_at: null }).andWhere('expires_at', '>', clock().toISOString());
+        trx<ResetRow>('password_resets')
+          .where({ token_hash: sha256Hex(token), used_at: null })
+          .andWhere('expires_at', '>', clock().toISOString());
       const link = await live(db).first();
-      const user = link && (await db<UserRow>('users').where({ id: link.user_id, is_active: 1 }).first());
+      const user =
+        link && (await db<UserRow>('users').where({ id: link.user_id, is_active: 1 }).first());
       if (!user) throw noSuchLink();
       requireGoodPassword(newPassword, user, 'body.newPassword');
       const hash = await passwords.hash(newPassword);
@@ -85,7 +102,11 @@ export function createResets(deps: ResetsDeps): ResetsService {
         await trx<UserRow>('users').where({ id: user.id }).update({ password_hash: hash });
         await sessions.endAllOf(trx, user.id);
         await record.add(trx, {
-          actor: user, depositId: null, action: 'password.reset', subject: `person ${user.id}`, sentence: `${user.name} set a new password by a reset link.`,
+          actor: user,
+          depositId: null,
+          action: 'password.reset',
+          subject: `person ${user.id}`,
+          sentence: `${user.name} set a new password by a reset link.`,
         });
       });
       log.info({ event: 'password.reset', userId: user.id }, 'password reset');

@@ -10,7 +10,10 @@ const REMEMBERED = 2_000;
 /** The purpose claim: whatever else may one day be signed with the secret is no session. */
 const Claims = z.object({
   purpose: z.literal('session'),
-  sub: z.string().regex(/^[1-9]\d{0,15}$/).transform(Number),
+  sub: z
+    .string()
+    .regex(/^[1-9]\d{0,15}$/)
+    .transform(Number),
   jti: z.string().min(16).max(80),
   exp: z.number(),
 });
@@ -45,7 +48,9 @@ export function createSessionJwt(secret: string, clock: Clock): SessionJwt {
         clockTimestamp: Math.floor(clock().getTime() / SECOND_MS),
       });
       const claims = Claims.safeParse(payload);
-      return claims.success ? { userId: claims.data.sub, sessionId: claims.data.jti, exp: claims.data.exp } : null;
+      return claims.success
+        ? { userId: claims.data.sub, sessionId: claims.data.jti, exp: claims.data.exp }
+        : null;
     } catch {
       return null; // every reason is answered alike
     }
@@ -53,13 +58,17 @@ export function createSessionJwt(secret: string, clock: Clock): SessionJwt {
 
   return {
     sign: ({ userId, sessionId, exp }) =>
-      jwt.sign({ purpose: 'session', exp, iat: Math.floor(clock().getTime() / SECOND_MS) }, secret, {
-        algorithm: ALGORITHM,
-        issuer: ISSUER,
-        audience: AUDIENCE,
-        subject: String(userId),
-        jwtid: sessionId,
-      }),
+      jwt.sign(
+        { purpose: 'session', exp, iat: Math.floor(clock().getTime() / SECOND_MS) },
+        secret,
+        {
+          algorithm: ALGORITHM,
+          issuer: ISSUER,
+          audience: AUDIENCE,
+          subject: String(userId),
+          jwtid: sessionId,
+        },
+      ),
     verify(token) {
       const nowMs = clock().getTime();
       const known = remembered.get(token);
@@ -68,7 +77,10 @@ export function createSessionJwt(secret: string, clock: Clock): SessionJwt {
       const claims = check(token);
       if (claims) {
         if (remembered.size >= REMEMBERED) remembered.clear();
-        remembered.set(token, { claims, untilMs: Math.min(nowMs + MINUTE_MS, claims.exp * SECOND_MS) });
+        remembered.set(token, {
+          claims,
+          untilMs: Math.min(nowMs + MINUTE_MS, claims.exp * SECOND_MS),
+        });
       }
       return claims;
     },

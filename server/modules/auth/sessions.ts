@@ -1,7 +1,14 @@
 import type { Knex } from 'knex';
 import type { SessionRow } from '#contract/auth.ts';
 import type { Actor } from '#server/lib/actor.ts';
-import { type Clock, DAY_MS, HOUR_MS, instantAfter, MINUTE_MS, SECOND_MS } from '#server/lib/clock.ts';
+import {
+  type Clock,
+  DAY_MS,
+  HOUR_MS,
+  instantAfter,
+  MINUTE_MS,
+  SECOND_MS,
+} from '#server/lib/clock.ts';
 import { notFound } from '#server/lib/errors.ts';
 import { randomToken } from '#server/lib/secrets.ts';
 import { createSessionJwt } from './session-jwt.ts';
@@ -43,7 +50,10 @@ export function createSessions(db: Knex, secret: string, clock: Clock): Sessions
   const jwt = createSessionJwt(secret, clock);
   const idleSince = (): string => instantAfter(clock, -IDLE_LIMIT_MS);
   const rows = () => db<Row>('sessions');
-  const open = () => rows().where('expires_at', '>', clock().toISOString()).andWhere('last_seen_at', '>', idleSince());
+  const open = () =>
+    rows()
+      .where('expires_at', '>', clock().toISOString())
+      .andWhere('last_seen_at', '>', idleSince());
 
   async function noteSeen(row: Row): Promise<void> {
     if (row.last_seen_at > instantAfter(clock, -SEEN_EVERY_MS)) return;
@@ -56,10 +66,18 @@ export function createSessions(db: Knex, secret: string, clock: Clock): Sessions
     async open(trx, userId, { address, userAgent }) {
       const now = clock().toISOString();
       const id = randomToken();
-      await trx<Row>('sessions').where('expires_at', '<', now).orWhere('last_seen_at', '<', idleSince()).delete();
+      await trx<Row>('sessions')
+        .where('expires_at', '<', now)
+        .orWhere('last_seen_at', '<', idleSince())
+        .delete();
       await trx<Row>('sessions').insert({
-        id, user_id: userId, created_at: now, last_seen_at: now, expires_at: instantAfter(clock, SESSION_LIFE_MS),
-        address: address.slice(0, 60), user_agent: userAgent.slice(0, 300),
+        id,
+        user_id: userId,
+        created_at: now,
+        last_seen_at: now,
+        expires_at: instantAfter(clock, SESSION_LIFE_MS),
+        address: address.slice(0, 60),
+        user_agent: userAgent.slice(0, 300),
       });
       await trx<UserRow>('users').where({ id: userId }).update({ last_seen_at: now });
       const exp = Math.floor((clock().getTime() + SESSION_LIFE_MS) / SECOND_MS);

@@ -33,28 +33,52 @@ async function take(limiter: RateLimiterSQLite, key: string, points: number): Pr
     return { ok: true };
   } catch (refused) {
     if (!(refused instanceof RateLimiterRes)) throw refused;
-    return { ok: false, waitMs: refused.msBeforeNext, isFirst: refused.consumedPoints === points + 1 };
+    return {
+      ok: false,
+      waitMs: refused.msBeforeNext,
+      isFirst: refused.consumedPoints === points + 1,
+    };
   }
 }
 
 export function createThrottle(db: Knex, log: Log): Throttle {
   const limiter = (keyPrefix: string, points: number, duration: number) =>
-    new RateLimiterSQLite({ storeClient: db, storeType: 'knex', tableName: 'throttles', tableCreated: true, keyPrefix, points, duration });
+    new RateLimiterSQLite({
+      storeClient: db,
+      storeType: 'knex',
+      tableName: 'throttles',
+      tableCreated: true,
+      keyPrefix,
+      points,
+      duration,
+    });
   const tries = limiter('try', PER_ACCOUNT_AND_ADDRESS, WINDOW_S);
   const triesOfAddress = limiter('try-address', PER_ADDRESS, WINDOW_S);
   const blocks = limiter('block', Number.MAX_SAFE_INTEGER, DAY_S);
   const mails = limiter('mail', MAILS_PER_ACCOUNT, HOUR_MS / SECOND_MS);
   const mailsOfAddress = limiter('mail-address', MAILS_PER_ADDRESS, HOUR_MS / SECOND_MS);
 
-  async function refuse(limited: RateLimiterSQLite, key: string, taken: Extract<Taken, { ok: false }>): Promise<never> {
+  async function refuse(
+    limited: RateLimiterSQLite,
+    key: string,
+    taken: Extract<Taken, { ok: false }>,
+  ): Promise<never> {
     let waitS = taken.waitMs / SECOND_MS;
     if (taken.isFirst) {
       const { consumedPoints: blockNumber } = await blocks.consume(`${limited.keyPrefix}:${key}`);
       waitS = Math.min(WINDOW_S * 2 ** (blockNumber - 1), DAY_S);
       await limited.block(key, waitS);
     }
-    log.warn({ event: 'throttled', limit: limited.keyPrefix, waitS: Math.ceil(waitS) }, 'throttled');
-    throw new AppError(429, 'too-many-tries', `Too many failed tries. Wait ${Math.ceil(waitS / 60)} minutes, then try again.`, { retryAfterS: waitS });
+    log.warn(
+      { event: 'throttled', limit: limited.keyPrefix, waitS: Math.ceil(waitS) },
+      'throttled',
+    );
+    throw new AppError(
+      429,
+      'too-many-tries',
+      `Too many failed tries. Wait ${Math.ceil(waitS / 60)} minutes, then try again.`,
+      { retryAfterS: waitS },
+    );
   }
 
   return {

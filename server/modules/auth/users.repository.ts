@@ -24,7 +24,8 @@ export interface NewUser {
 export const userByEmail = (db: Knex, email: string): Promise<UserRow | undefined> =>
   db<UserRow>('users').where({ email }).first();
 
-export const userById = (db: Knex, id: number): Promise<UserRow | undefined> => db<UserRow>('users').where({ id }).first();
+export const userById = (db: Knex, id: number): Promise<UserRow | undefined> =>
+  db<UserRow>('users').where({ id }).first();
 
 export async function insertUser(db: Knex, user: NewUser): Promise<number> {
   const [id] = await db<UserRow>('users').insert({
@@ -39,7 +40,10 @@ export async function insertUser(db: Knex, user: NewUser): Promise<number> {
 }
 
 export const publicPart = (row: UserRow): Omit<Me, 'isDemoInstance'> => ({
-  id: row.id, email: row.email, name: row.name, isAdministrator: row.is_administrator === 1,
+  id: row.id,
+  email: row.email,
+  name: row.name,
+  isAdministrator: row.is_administrator === 1,
 });
 
 export const actorOf = (row: UserRow, via: Actor['via']): Actor => ({ ...publicPart(row), via });

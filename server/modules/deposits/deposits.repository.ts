@@ -24,7 +24,11 @@ export interface MembershipRow {
   since: string;
 }
 
-const Stored = z.object({ grid: Grid, payAnalytes: z.array(PayAnalyte), deleteriousAnalytes: z.array(z.string()) });
+const Stored = z.object({
+  grid: Grid,
+  payAnalytes: z.array(PayAnalyte),
+  deleteriousAnalytes: z.array(z.string()),
+});
 
 const fromJson = (text: string): unknown => JSON.parse(text);
 
@@ -44,10 +48,13 @@ export const columnsOf = (body: DepositBody) => ({
   deleterious_analytes: JSON.stringify(body.deleteriousAnalytes),
 });
 
-export const depositById = (db: Knex, id: number): Promise<DepositRow | undefined> => db<DepositRow>('deposits').where({ id }).first();
+export const depositById = (db: Knex, id: number): Promise<DepositRow | undefined> =>
+  db<DepositRow>('deposits').where({ id }).first();
 
 export async function roleOn(db: Knex, depositId: number, userId: number): Promise<Role | null> {
-  const row = await db<MembershipRow>('memberships').where({ deposit_id: depositId, user_id: userId }).first();
+  const row = await db<MembershipRow>('memberships')
+    .where({ deposit_id: depositId, user_id: userId })
+    .first();
   return row?.role ?? null;
 }
 

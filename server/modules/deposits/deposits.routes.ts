@@ -8,6 +8,8 @@ export function depositsRoutes(deposits: DepositsService): Router {
   mount(router, listDeposits, ({ actor }) => deposits.listOf(actor));
   mount(router, createDeposit, ({ body, actor }) => deposits.create(body, actor));
   mount(router, getDeposit, ({ member }) => deposits.get(member.depositId, member.role));
-  mount(router, updateDeposit, ({ member, body, expectedVersion, actor }) => deposits.update(member, body, expectedVersion, actor));
+  mount(router, updateDeposit, ({ member, body, expectedVersion, actor }) =>
+    deposits.update(member, body, expectedVersion, actor),
+  );
   return router;
 }

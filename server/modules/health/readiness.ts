@@ -37,7 +37,9 @@ export const diskCheck =
   (folder: string): Check =>
   async () => {
     try {
-      return isShortOfSpace(await diskSpace(folder)) ? 'the disk has less than 1 GiB or 5 % free' : null;
+      return isShortOfSpace(await diskSpace(folder))
+        ? 'the disk has less than 1 GiB or 5 % free'
+        : null;
     } catch {
       return 'the data folder cannot be read';
     }

@@ -26,19 +26,30 @@ export async function startCatcher(log: Log): Promise<Catcher> {
       simpleParser(stream)
         .then((mail) => {
           const to = session.envelope.rcptTo.map((recipient) => recipient.address).join(', ');
-          kept.unshift({ id: ++lastId, at: new Date().toISOString(), to, subject: mail.subject ?? '', text: mail.text ?? '' });
+          kept.unshift({
+            id: ++lastId,
+            at: new Date().toISOString(),
+            to,
+            subject: mail.subject ?? '',
+            text: mail.text ?? '',
+          });
           kept.length = Math.min(kept.length, KEPT);
           done();
         })
-        .catch((error: unknown) => done(error instanceof Error ? error : new Error('unreadable message')));
+        .catch((error: unknown) =>
+          done(error instanceof Error ? error : new Error('unreadable message')),
+        );
     },
   });
-  server.on('error', (error) => log.error({ event: 'mail.catcher', err: error }, 'the built-in mail server failed'));
+  server.on('error', (error) =>
+    log.error({ event: 'mail.catcher', err: error }, 'the built-in mail server failed'),
+  );
   const listening = await new Promise<AddressInfo | string | null>((resolve, reject) => {
     server.server.once('error', reject);
     server.listen(0, '127.0.0.1', () => resolve(server.server.address()));
   });
-  if (listening === null || typeof listening === 'string') throw new Error('the built-in mail server found no free port');
+  if (listening === null || typeof listening === 'string')
+    throw new Error('the built-in mail server found no free port');
   return {
     url: `smtp://127.0.0.1:${listening.port}`,
     messages: () => [...kept],

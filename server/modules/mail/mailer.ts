@@ -41,7 +41,12 @@ export async function createMailer({ smtpUrl, from, log }: MailSettings): Promis
   });
   return {
     async send({ to, subject, text }) {
-      await transport.sendMail({ from, to: { name: '', address: to }, subject: oneLine(subject), text });
+      await transport.sendMail({
+        from,
+        to: { name: '', address: to },
+        subject: oneLine(subject),
+        text,
+      });
     },
     caught: () => catcher?.messages() ?? null,
     async close() {

@@ -2,7 +2,11 @@ import type { Role } from '#contract/roles.ts';
 import type { Message } from './mailer.ts';
 
 /** Names come from people: in a message they are one line and cannot pretend to be more of it. */
-const plain = (text: string): string => text.replaceAll(/\p{Cc}+/gu, ' ').trim().slice(0, 120);
+const plain = (text: string): string =>
+  text
+    .replaceAll(/\p{Cc}+/gu, ' ')
+    .trim()
+    .slice(0, 120);
 
 export function invitationMessage(given: {
   to: string;

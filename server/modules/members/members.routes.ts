@@ -1,5 +1,11 @@
 import { Router } from 'express';
-import { changeMemberRole, inviteMember, listMembers, removeMember, withdrawInvitation } from '#contract/deposits.ts';
+import {
+  changeMemberRole,
+  inviteMember,
+  listMembers,
+  removeMember,
+  withdrawInvitation,
+} from '#contract/deposits.ts';
 import { mount } from '#server/lib/mount.ts';
 import type { InvitationsService } from '../auth/invitations.service.ts';
 import type { MembersService } from './members.service.ts';
@@ -14,7 +20,8 @@ export function membersRoutes(members: MembersService, invitations: InvitationsS
   mount(
     router,
     inviteMember,
-    ({ params, body, actor }) => invitations.toDeposit({ id: params.depositId, role: body.role }, body.email, actor),
+    ({ params, body, actor }) =>
+      invitations.toDeposit({ id: params.depositId, role: body.role }, body.email, actor),
     sessionOnly,
   );
   mount(
@@ -29,7 +36,8 @@ export function membersRoutes(members: MembersService, invitations: InvitationsS
   mount(
     router,
     changeMemberRole,
-    ({ params, body, actor }) => members.changeRole(params.depositId, params.userId, body.role, actor),
+    ({ params, body, actor }) =>
+      members.changeRole(params.depositId, params.userId, body.role, actor),
     sessionOnly,
   );
   mount(

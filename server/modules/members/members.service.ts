@@ -30,7 +30,13 @@ export function createMembers({ db, log, record, invitations }: MembersDeps): Me
       .join('users', 'users.id', 'memberships.user_id')
       .where({ deposit_id: depositId })
       .orderBy('users.name')
-      .select<MemberView[]>('users.id as userId', 'users.name', 'users.email', 'memberships.role', 'memberships.since');
+      .select<MemberView[]>(
+        'users.id as userId',
+        'users.name',
+        'users.email',
+        'memberships.role',
+        'memberships.since',
+      );
 
   const memberOf = async (trx: Knex, depositId: number, userId: number): Promise<MemberView> => {
     const [member] = await membersOf(trx, depositId).where({ user_id: userId });
@@ -42,23 +48,39 @@ export function createMembers({ db, log, record, invitations }: MembersDeps): Me
     if (member.role !== 'lead') return;
     const leads = await activeLeads(trx, depositId);
     if (leads.some((lead) => lead.id !== member.userId)) return;
-    throw new AppError(409, 'last-lead', `${member.name} is the only lead of this deposit: make somebody else lead first.`);
+    throw new AppError(
+      409,
+      'last-lead',
+      `${member.name} is the only lead of this deposit: make somebody else lead first.`,
+    );
   }
 
   return {
-    list: async (depositId) => ({ members: await membersOf(db, depositId), invitations: await invitations.listOf(depositId) }),
+    list: async (depositId) => ({
+      members: await membersOf(db, depositId),
+      invitations: await invitations.listOf(depositId),
+    }),
 
     async changeRole(depositId, userId, role, actor) {
       const changed = await transact(db, async (trx) => {
         const before = await memberOf(trx, depositId, userId);
         if (role !== 'lead') await refuseLastLead(trx, depositId, before);
-        await trx<MembershipRow>('memberships').where({ deposit_id: depositId, user_id: userId }).update({ role });
+        await trx<MembershipRow>('memberships')
+          .where({ deposit_id: depositId, user_id: userId })
+          .update({ role });
         await record.add(trx, {
-          actor, depositId, action: 'member.role-changed', subject: `person ${userId}`, sentence: `${actor.name} made ${before.name} ${role}; before: ${before.role}.`,
+          actor,
+          depositId,
+          action: 'member.role-changed',
+          subject: `person ${userId}`,
+          sentence: `${actor.name} made ${before.name} ${role}; before: ${before.role}.`,
         });
         return { ...before, role };
       });
-      log.info({ event: 'role.changed', userId: actor.id, depositId, memberId: userId, role }, 'role changed');
+      log.info(
+        { event: 'role.changed', userId: actor.id, depositId, memberId: userId, role },
+        'role changed',
+      );
       return changed;
     },
 
@@ -67,12 +89,21 @@ export function createMembers({ db, log, record, invitations }: MembersDeps): Me
         const before = await memberOf(trx, depositId, userId);
         await refuseLastLead(trx, depositId, before);
         await trx('api_tokens').where({ deposit_id: depositId, user_id: userId }).delete();
-        await trx<MembershipRow>('memberships').where({ deposit_id: depositId, user_id: userId }).delete();
+        await trx<MembershipRow>('memberships')
+          .where({ deposit_id: depositId, user_id: userId })
+          .delete();
         await record.add(trx, {
-          actor, depositId, action: 'member.removed', subject: `person ${userId}`, sentence: `${actor.name} removed ${before.name}, ${before.role}.`,
+          actor,
+          depositId,
+          action: 'member.removed',
+          subject: `person ${userId}`,
+          sentence: `${actor.name} removed ${before.name}, ${before.role}.`,
         });
       });
-      log.info({ event: 'member.removed', userId: actor.id, depositId, memberId: userId }, 'member removed');
+      log.info(
+        { event: 'member.removed', userId: actor.id, depositId, memberId: userId },
+        'member removed',
+      );
     },
   };
 }

@@ -32,7 +32,17 @@ export interface AuditHead {
 /** SHA-256 over the entry's fields and the hash before it, as a JSON array in this order. */
 export const hashOf = (row: Omit<AuditRow, 'id' | 'hash'>): string =>
   sha256Hex(
-    JSON.stringify([row.previous_hash, row.chain, row.number, row.at, row.actor_id, row.who, row.action, row.subject, row.sentence]),
+    JSON.stringify([
+      row.previous_hash,
+      row.chain,
+      row.number,
+      row.at,
+      row.actor_id,
+      row.who,
+      row.action,
+      row.subject,
+      row.sentence,
+    ]),
   );
 
 export interface ChainState {
@@ -53,12 +63,25 @@ export async function verifyChain(db: Knex, chain: number): Promise<ChainState> 
   const entries = head?.entries ?? 0;
   let previous = GENESIS;
   let number = 0;
-  const bad = (): ChainState => ({ holds: false, entries, head: head?.hash ?? GENESIS, firstBadEntry: number });
+  const bad = (): ChainState => ({
+    holds: false,
+    entries,
+    head: head?.hash ?? GENESIS,
+    firstBadEntry: number,
+  });
   for (;;) {
-    const rows = await db<AuditRow>('audit_entries').where({ chain }).andWhere('number', '>', number).orderBy('number').limit(BATCH);
+    const rows = await db<AuditRow>('audit_entries')
+      .where({ chain })
+      .andWhere('number', '>', number)
+      .orderBy('number')
+      .limit(BATCH);
     for (const row of rows) {
       number += 1;
-      const holds = row.number === number && row.previous_hash === previous && row.hash === hashOf(row) && number <= entries;
+      const holds =
+        row.number === number &&
+        row.previous_hash === previous &&
+        row.hash === hashOf(row) &&
+        number <= entries;
       if (!holds) return bad();
       previous = row.hash;
     }

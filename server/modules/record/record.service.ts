@@ -4,7 +4,14 @@ import type { AuditEntry, listAudit } from '#contract/record.ts';
 import type { Person } from '#server/lib/actor.ts';
 import type { Clock } from '#server/lib/clock.ts';
 import { toCsv } from '#server/lib/csv.ts';
-import { type AuditHead, type AuditRow, GENESIS, hashOf, INSTANCE_CHAIN, verifyChain } from './audit-chain.ts';
+import {
+  type AuditHead,
+  type AuditRow,
+  GENESIS,
+  hashOf,
+  INSTANCE_CHAIN,
+  verifyChain,
+} from './audit-chain.ts';
 
 export interface NewEntry {
   /** Who did it; `null` for the service itself. */
@@ -22,18 +29,37 @@ export interface NewEntry {
 export interface RecordService {
   /** Appends an entry within the transaction of what it tells, so that neither exists alone. */
   add(trx: Knex.Transaction, entry: NewEntry): Promise<void>;
-  list(depositId: number, query: z.output<typeof listAudit.query>): Promise<z.output<typeof listAudit.response>>;
+  list(
+    depositId: number,
+    query: z.output<typeof listAudit.query>,
+  ): Promise<z.output<typeof listAudit.response>>;
   csv(depositId: number): Promise<string>;
 }
 
 const asEntry = (row: AuditRow): AuditEntry => ({
-  id: row.id, at: row.at, who: row.who, action: row.action, sentence: row.sentence, subject: row.subject, hash: row.hash,
+  id: row.id,
+  at: row.at,
+  who: row.who,
+  action: row.action,
+  sentence: row.sentence,
+  subject: row.subject,
+  hash: row.hash,
 });
 
-const CSV_HEADER = ['number', 'at', 'who', 'action', 'subject', 'sentence', 'previous_hash', 'hash'];
+const CSV_HEADER = [
+  'number',
+  'at',
+  'who',
+  'action',
+  'subject',
+  'sentence',
+  'previous_hash',
+  'hash',
+];
 
 export function createRecord(db: Knex, clock: Clock): RecordService {
-  const entriesOf = (depositId: number) => db<AuditRow>('audit_entries').where({ chain: depositId });
+  const entriesOf = (depositId: number) =>
+    db<AuditRow>('audit_entries').where({ chain: depositId });
 
   return {
     async add(trx, { actor, depositId, action, subject, sentence }) {
@@ -45,12 +71,17 @@ export function createRecord(db: Knex, clock: Clock): RecordService {
         at: clock().toISOString(),
         actor_id: actor?.id ?? null,
         who: actor?.name ?? 'Selvage',
-        action, subject, sentence,
+        action,
+        subject,
+        sentence,
         previous_hash: head?.hash ?? GENESIS,
       };
       const hash = hashOf(entry);
       await trx<AuditRow>('audit_entries').insert({ ...entry, hash });
-      await trx<AuditHead>('audit_heads').insert({ chain, entries: entry.number, hash }).onConflict('chain').merge();
+      await trx<AuditHead>('audit_heads')
+        .insert({ chain, entries: entry.number, hash })
+        .onConflict('chain')
+        .merge();
     },
 
     async list(depositId, { page, pageSize, text }) {
@@ -58,10 +89,16 @@ export function createRecord(db: Knex, clock: Clock): RecordService {
         const rows = entriesOf(depositId);
         if (text === undefined || text === '') return rows;
         const pattern = `%${text.replaceAll(/[\\%_]/g, '\\$&')}%`;
-        return rows.whereRaw("(sentence LIKE ? ESCAPE '\\' OR who LIKE ? ESCAPE '\\')", [pattern, pattern]);
+        return rows.whereRaw("(sentence LIKE ? ESCAPE '\\' OR who LIKE ? ESCAPE '\\')", [
+          pattern,
+          pattern,
+        ]);
       };
       const counted = await wanted().count<{ total: number }[]>({ total: '*' });
-      const rows = await wanted().orderBy('number', 'desc').limit(pageSize).offset((page - 1) * pageSize);
+      const rows = await wanted()
+        .orderBy('number', 'desc')
+        .limit(pageSize)
+        .offset((page - 1) * pageSize);
       const chain = await verifyChain(db, depositId);
       return { rows: rows.map(asEntry), total: counted[0]?.total ?? 0, page, pageSize, chain };
     },
@@ -70,7 +107,16 @@ export function createRecord(db: Knex, clock: Clock): RecordService {
       const rows = await entriesOf(depositId).orderBy('number');
       return toCsv(
         CSV_HEADER,
-        rows.map((row) => [row.number, row.at, row.who, row.action, row.subject, row.sentence, row.previous_hash, row.hash]),
+        rows.map((row) => [
+          row.number,
+          row.at,
+          row.who,
+          row.action,
+          row.subject,
+          row.sentence,
+          row.previous_hash,
+          row.hash,
+        ]),
       );
     },
   };

@@ -9,7 +9,12 @@ const sessionOnly = { sessionOnly: true };
 export function tokensRoutes(tokens: TokensService): Router {
   const router = Router();
   mount(router, listTokens, ({ member, actor }) => tokens.list(member, actor), sessionOnly);
-  mount(router, createToken, ({ member, body, actor }) => tokens.create(member, body, actor), sessionOnly);
+  mount(
+    router,
+    createToken,
+    ({ member, body, actor }) => tokens.create(member, body, actor),
+    sessionOnly,
+  );
   mount(
     router,
     revokeToken,

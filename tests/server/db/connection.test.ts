@@ -1,7 +1,12 @@
 import Database from 'better-sqlite3';
 import { expect, test } from 'vitest';
 import { openDb } from '#server/db/knex.ts';
-import { applyPragmas, PRAGMAS, SERVER_BUSY_TIMEOUT_MS, WORKER_BUSY_TIMEOUT_MS } from '#server/db/pragmas.ts';
+import {
+  applyPragmas,
+  PRAGMAS,
+  SERVER_BUSY_TIMEOUT_MS,
+  WORKER_BUSY_TIMEOUT_MS,
+} from '#server/db/pragmas.ts';
 import { transact } from '#server/db/transact.ts';
 import { tempInstance } from '#tests/support/temp-instance.ts';
 
@@ -12,7 +17,10 @@ test('DU-01 every connection of the pool is set, also to a database that was in 
   const { env, remove } = await tempInstance();
   for (let opening = 0; opening < 2; opening++) {
     const db = openDb(env.paths.database);
-    for (const [name, value] of Object.entries({ ...EXPECTED, busy_timeout: SERVER_BUSY_TIMEOUT_MS })) {
+    for (const [name, value] of Object.entries({
+      ...EXPECTED,
+      busy_timeout: SERVER_BUSY_TIMEOUT_MS,
+    })) {
       const rows: Record<string, unknown>[] = await db.raw(`PRAGMA ${name}`);
       expect([name, Object.values(rows[0] ?? {})]).toEqual([name, [value]]);
     }
@@ -25,7 +33,9 @@ test('DU-01 every connection of the pool is set, also to a database that was in 
 test('DU-01 a plain connection is set alike, and a database that refuses is told', () => {
   expect(PRAGMAS).toEqual(EXPECTED);
   const memory = new Database(':memory:'); // has no WAL
-  expect(() => applyPragmas(memory, WORKER_BUSY_TIMEOUT_MS)).toThrow('journal_mode: expected wal, found memory');
+  expect(() => applyPragmas(memory, WORKER_BUSY_TIMEOUT_MS)).toThrow(
+    'journal_mode: expected wal, found memory',
+  );
   memory.close();
 });
 

@@ -38,7 +38,10 @@ function migrationsNamed(...names: string[]): string {
 test('DU-06 a new database takes every migration, in order, without a backup', async () => {
   const db = openDb(file());
   const { applied, backup } = await migrate(db, backups());
-  const files = readdirSync(MIGRATIONS_DIR).filter((name) => name.endsWith('.ts')).map((name) => name.replace('.ts', '')).sort();
+  const files = readdirSync(MIGRATIONS_DIR)
+    .filter((name) => name.endsWith('.ts'))
+    .map((name) => name.replace('.ts', ''))
+    .sort();
   expect(applied).toEqual(files);
   expect(backup).toBeNull();
   expect(await migrate(db, backups())).toEqual({ applied: [], backup: null });
@@ -54,7 +57,9 @@ test('DU-06 an existing database is copied before it is changed', async () => {
   expect(applied).toEqual(['2-second']);
   const copy = new Database(backup ?? '', { readonly: true });
   expect(copy.prepare('SELECT note FROM "1_first"').all()).toEqual([{ note: 'kept' }]);
-  expect(copy.prepare("SELECT count(*) AS n FROM sqlite_master WHERE name = '2_second'").get()).toEqual({ n: 0 });
+  expect(
+    copy.prepare("SELECT count(*) AS n FROM sqlite_master WHERE name = '2_second'").get(),
+  ).toEqual({ n: 0 });
   copy.close();
   await db.destroy();
 });
@@ -63,8 +68,12 @@ test('DU-06 a migration that fails leaves the database as it was', async () => {
   const db = openDb(file());
   await migrate(db, backups(), migrationsNamed('1-first'));
   await db('1_first').insert({ note: 'kept' });
-  await expect(migrate(db, backups(), migrationsNamed('1-first', '2-second', '3-fails'))).rejects.toThrow('half-way');
-  const tables = await Promise.all(['1_first', '2_second', '3_fails'].map((table) => db.schema.hasTable(table)));
+  await expect(
+    migrate(db, backups(), migrationsNamed('1-first', '2-second', '3-fails')),
+  ).rejects.toThrow('half-way');
+  const tables = await Promise.all(
+    ['1_first', '2_second', '3_fails'].map((table) => db.schema.hasTable(table)),
+  );
   expect(tables).toEqual([true, false, false]);
   expect(await db('1_first').select('note')).toEqual([{ note: 'kept' }]);
   await db.destroy();
@@ -86,10 +95,12 @@ test('DU-07 a damaged database is refused with the way out', async () => {
   await db.raw('PRAGMA journal_mode = DELETE');
   await db.destroy();
   writeFileSync(paths.database, Buffer.alloc(4096, 7), { flag: 'r+' });
-  await expect(openChecked(paths, 'demo', createLog('silent'))).rejects.toThrow(/damaged|not a database/);
+  await expect(openChecked(paths, 'demo', createLog('silent'))).rejects.toThrow(
+    /damaged|not a database/,
+  );
 });
 
-test('AU-07 a demonstration\'s database never serves a production instance', async () => {
+test("AU-07 a demonstration's database never serves a production instance", async () => {
   const db = openDb(file());
   await migrate(db, backups());
   await claimInstanceKind(db, 'demo');

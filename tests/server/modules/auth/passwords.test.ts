@@ -31,13 +31,32 @@ describe('AU-04 passwords', () => {
   });
 
   test.each([
-    'password1234', 'passwordpassword', 'Password2026!', 'qwertyuiop123', '123456789012', 'iloveyou1234', 'P@ssw0rd1234', 'letmeinletmein',
-    'aaaaaaaaaaaa', 'abcabcabcabc', 'Welcome12345', 'correcthorsebatterystaple', 'administrator1', 'monkeydragon12', 'december2026!!',
+    'password1234',
+    'passwordpassword',
+    'Password2026!',
+    'qwertyuiop123',
+    '123456789012',
+    'iloveyou1234',
+    'P@ssw0rd1234',
+    'letmeinletmein',
+    'aaaaaaaaaaaa',
+    'abcabcabcabc',
+    'Welcome12345',
+    'correcthorsebatterystaple',
+    'administrator1',
+    'monkeydragon12',
+    'december2026!!',
   ])('common: %s', (password) => {
     expect(isCommonPassword(password)).toBe(true);
   });
 
-  test.each([PASSWORD, 'teapot under 7 ladders', 'zq9 vk2 wm7x', 'gravel pigeon lantern mosaic', 'Tr!cky-Otter-49-Velvet'])('not common: %s', (password) => {
+  test.each([
+    PASSWORD,
+    'teapot under 7 ladders',
+    'zq9 vk2 wm7x',
+    'gravel pigeon lantern mosaic',
+    'Tr!cky-Otter-49-Velvet',
+  ])('not common: %s', (password) => {
     expect(isCommonPassword(password)).toBe(false);
   });
 
@@ -54,17 +73,23 @@ describe('AU-04 passwords', () => {
   test('refused with the name of the product or of the person', () => {
     const person = { name: 'Marguerite Oduya', email: 'mo.rockhound@test.example' };
     expect(passwordFault('my SELVAGE door 77', nobody)).toContain('product');
-    for (const password of ['xx marguerite 77', 'ODUYA river 7799', 'the-rockhound-771']) expect(passwordFault(password, person)).toContain('name');
+    for (const password of ['xx marguerite 77', 'ODUYA river 7799', 'the-rockhound-771'])
+      expect(passwordFault(password, person)).toContain('name');
     expect(passwordFault('gravel pigeon 771', person)).toBeNull();
   });
 
   test('a refusal names the field and what was found', async () => {
     const client = await testClient();
-    const change = (newPassword: string) => client.as('lead').post('/api/me/password').send({ currentPassword: PASSWORD, newPassword });
+    const change = (newPassword: string) =>
+      client.as('lead').post('/api/me/password').send({ currentPassword: PASSWORD, newPassword });
     const long = await change('ö'.repeat(37));
     expect([long.status, long.text]).toEqual([400, expect.stringContaining('at most 72 bytes')]);
     const common = await change('password1234');
-    expect(common.body).toMatchObject({ status: 400, code: 'weak-password', fields: [{ path: 'body.newPassword' }] });
+    expect(common.body).toMatchObject({
+      status: 400,
+      code: 'weak-password',
+      fields: [{ path: 'body.newPassword' }],
+    });
   });
 });
 
@@ -74,11 +99,17 @@ describe('AU-06 nothing tells whether an account exists', () => {
     const passwords = createPasswords({ hash: () => Promise.resolve('decoy'), verify });
     expect(await passwords.matches('a password of mine', null)).toBe(false);
     expect(await passwords.matches('a password of mine', 'hash')).toBe(false);
-    expect(verify.mock.calls).toEqual([['a password of mine', 'decoy'], ['a password of mine', 'hash']]);
+    expect(verify.mock.calls).toEqual([
+      ['a password of mine', 'decoy'],
+      ['a password of mine', 'hash'],
+    ]);
   });
 
   test('a password is never right for an account that has none, even that of the decoy', async () => {
-    const passwords = createPasswords({ hash: () => Promise.resolve('decoy'), verify: () => Promise.resolve(true) });
+    const passwords = createPasswords({
+      hash: () => Promise.resolve('decoy'),
+      verify: () => Promise.resolve(true),
+    });
     expect(await passwords.matches('anything at all', null)).toBe(false);
   });
 
@@ -88,7 +119,8 @@ describe('AU-06 nothing tells whether an account exists', () => {
       const { status, body: found } = await client.as(null).post(path).send(body);
       return [status, { ...(found as object), requestId: '' }];
     };
-    const wrong = (email: string) => answer('/api/session', { email, password: 'not the password' });
+    const wrong = (email: string) =>
+      answer('/api/session', { email, password: 'not the password' });
     expect(await wrong('lead@test.example')).toEqual(await wrong('nobody@test.example'));
     const reset = (email: string) => answer('/api/password-resets', { email });
     expect(await reset('lead@test.example')).toEqual([202, { done: true, requestId: '' }]);

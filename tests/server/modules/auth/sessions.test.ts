@@ -14,7 +14,10 @@ beforeAll(async () => {
 });
 
 const signIn = (to: TestClient, who: Parameters<TestClient['of']>[0], password = PASSWORD) =>
-  to.as(null).post('/api/session').send({ email: to.of(who).email, password });
+  to
+    .as(null)
+    .post('/api/session')
+    .send({ email: to.of(who).email, password });
 const cookieOf = (res: Response): string => res.get('set-cookie')?.[0]?.split(';')[0] ?? '';
 const me = (to: TestClient, cookie: string) => to.bare().get('/api/me').set('Cookie', cookie);
 
@@ -27,9 +30,13 @@ describe('AU-01 the session is one cookie', () => {
     expect(others).toEqual([]);
     const [pair = '', ...attributes] = cookie.split('; ');
     expect(pair).toMatch(/^__Host-selvage=[\w-]+\.[\w-]+\.[\w-]+$/);
-    expect(attributes.filter((attribute) => !attribute.startsWith('Expires')).sort()).toEqual(
-      ['HttpOnly', `Max-Age=${7 * 24 * 3600}`, 'Path=/', 'SameSite=Strict', 'Secure'],
-    );
+    expect(attributes.filter((attribute) => !attribute.startsWith('Expires')).sort()).toEqual([
+      'HttpOnly',
+      `Max-Age=${7 * 24 * 3600}`,
+      'Path=/',
+      'SameSite=Strict',
+      'Secure',
+    ]);
     expect(res.text).not.toContain(pair.split('=')[1]);
     expect((await me(tls, pair)).body).toMatchObject({ email: 'lead@test.example' });
   });
@@ -46,7 +53,12 @@ describe('AU-01 the session is one cookie', () => {
 
 describe('AU-02 only our own tokens are sessions', () => {
   const claims = () => ({ purpose: 'session', sub: '1', jti: 'x'.repeat(43) });
-  const options = { algorithm: 'HS256', issuer: 'selvage', audience: 'selvage', expiresIn: '1h' } as const;
+  const options = {
+    algorithm: 'HS256',
+    issuer: 'selvage',
+    audience: 'selvage',
+    expiresIn: '1h',
+  } as const;
   const without = <Given extends object>(given: Given, ...keys: string[]): object =>
     Object.fromEntries(Object.entries(given).filter(([key]) => !keys.includes(key)));
   const encode = (part: object): string => Buffer.from(JSON.stringify(part)).toString('base64url');
@@ -60,7 +72,10 @@ describe('AU-02 only our own tokens are sessions', () => {
 
   const forgeries: readonly (readonly [string, () => string])[] = [
     ['no algorithm', () => `${encode({ alg: 'none', typ: 'JWT' })}.${encode(realClaims())}.`],
-    ['no algorithm, old signature', () => `${encode({ alg: 'none', typ: 'JWT' })}.${good().split('.').slice(1).join('.')}`],
+    [
+      'no algorithm, old signature',
+      () => `${encode({ alg: 'none', typ: 'JWT' })}.${good().split('.').slice(1).join('.')}`,
+    ],
     ['HS512', () => jwt.sign(real(), TEST_SECRET, { ...options, algorithm: 'HS512' })],
     ['HS384', () => jwt.sign(real(), TEST_SECRET, { ...options, algorithm: 'HS384' })],
     ['another secret', () => jwt.sign(real(), 'another secret that is also long enough', options)],
@@ -70,11 +85,17 @@ describe('AU-02 only our own tokens are sessions', () => {
     ['not yet valid', () => jwt.sign(real(), TEST_SECRET, { ...options, notBefore: 600 })],
     ['another issuer', () => jwt.sign(real(), TEST_SECRET, { ...options, issuer: 'elsewhere' })],
     ['no issuer', () => jwt.sign(real(), TEST_SECRET, without(options, 'issuer'))],
-    ['another audience', () => jwt.sign(real(), TEST_SECRET, { ...options, audience: 'elsewhere' })],
+    [
+      'another audience',
+      () => jwt.sign(real(), TEST_SECRET, { ...options, audience: 'elsewhere' }),
+    ],
     ['no audience', () => jwt.sign(real(), TEST_SECRET, without(options, 'audience'))],
     ['another purpose', () => jwt.sign(real({ purpose: 'reset' }), TEST_SECRET, options)],
     ['no purpose', () => jwt.sign(real({ purpose: undefined }), TEST_SECRET, options)],
-    ['another person', () => jwt.sign(real({ sub: String(client.of('lead').id) }), TEST_SECRET, options)],
+    [
+      'another person',
+      () => jwt.sign(real({ sub: String(client.of('lead').id) }), TEST_SECRET, options),
+    ],
     ['a person who is no number', () => jwt.sign(real({ sub: 'admin' }), TEST_SECRET, options)],
     ['a session that never was', () => jwt.sign(claims(), TEST_SECRET, options)],
     ['no session', () => jwt.sign(real({ jti: undefined }), TEST_SECRET, options)],
@@ -89,7 +110,9 @@ describe('AU-02 only our own tokens are sessions', () => {
   });
 
   test('a token signed as ours is, for the session that exists, is let in (the forgeries fail by their one change)', async () => {
-    expect((await me(client, `selvage=${jwt.sign(real(), TEST_SECRET, options)}`)).status).toBe(200);
+    expect((await me(client, `selvage=${jwt.sign(real(), TEST_SECRET, options)}`)).status).toBe(
+      200,
+    );
   });
 
   test('no token with one character changed verifies', () => {
@@ -116,9 +139,16 @@ describe('AU-03 sessions are rows and end at once', () => {
   });
 
   test('changing the password ends the other sessions and keeps this one', async () => {
-    const [here, there] = [cookieOf(await signIn(client, 'estimator')), cookieOf(await signIn(client, 'estimator'))];
+    const [here, there] = [
+      cookieOf(await signIn(client, 'estimator')),
+      cookieOf(await signIn(client, 'estimator')),
+    ];
     const change = (currentPassword: string) =>
-      client.as(null).post('/api/me/password').set('Cookie', here).send({ currentPassword, newPassword: 'teapot under 7 ladders' });
+      client
+        .as(null)
+        .post('/api/me/password')
+        .set('Cookie', here)
+        .send({ currentPassword, newPassword: 'teapot under 7 ladders' });
     expect((await change('not the password')).status).toBe(403);
     expect((await me(client, there)).status).toBe(200);
     expect((await change(PASSWORD)).status).toBe(200);
@@ -127,13 +157,18 @@ describe('AU-03 sessions are rows and end at once', () => {
     expect((await signIn(client, 'estimator', 'teapot under 7 ladders')).status).toBe(200);
   });
 
-  test('a person sees and ends their own sessions, and nobody else\'s', async () => {
+  test("a person sees and ends their own sessions, and nobody else's", async () => {
     const cookie = cookieOf(await signIn(client, 'site-geologist'));
-    const list = (await client.as('site-geologist').get('/api/me/sessions')).body as { id: string; isThisOne: boolean }[];
+    const list = (await client.as('site-geologist').get('/api/me/sessions')).body as {
+      id: string;
+      isThisOne: boolean;
+    }[];
     expect(list.map((row) => row.isThisOne).sort()).toEqual([false, true]);
     const other = list.find((row) => !row.isThisOne)?.id ?? '';
     expect((await client.as('viewer').delete(`/api/me/sessions/${other}`)).status).toBe(404);
-    expect((await client.as('site-geologist').delete(`/api/me/sessions/${other}`)).status).toBe(200);
+    expect((await client.as('site-geologist').delete(`/api/me/sessions/${other}`)).status).toBe(
+      200,
+    );
     expect((await me(client, cookie)).status).toBe(401);
   });
 
@@ -160,9 +195,13 @@ describe('AU-03 sessions are rows and end at once', () => {
     const own = await testClient();
     const token = await own.token('read', 'geologist');
     const { id } = own.of('geologist');
-    const read = () => own.bare().get(`/api/deposits/${own.depositId}`).set('Authorization', `Bearer ${token}`);
+    const read = () =>
+      own.bare().get(`/api/deposits/${own.depositId}`).set('Authorization', `Bearer ${token}`);
     expect((await read()).status).toBe(200);
-    expect((await own.as('administrator').patch(`/api/admin/users/${id}`).send({ isActive: false })).status).toBe(200);
+    expect(
+      (await own.as('administrator').patch(`/api/admin/users/${id}`).send({ isActive: false }))
+        .status,
+    ).toBe(200);
     expect((await own.as('geologist').get('/api/me')).status).toBe(401);
     expect((await read()).status).toBe(401);
     expect((await signIn(own, 'geologist')).status).toBe(401);
