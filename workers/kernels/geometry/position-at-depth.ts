@@ -61,6 +61,7 @@ export function positionsAtDepths(path: HolePath, depthsM: Float64Array): PathPo
   return out;
 }
 
+/** Along the chord of a straight leg, so that it meets its next station; past the last, along t. */
 function straightPoint(
   path: HolePath,
   leg: number,
@@ -68,9 +69,13 @@ function straightPoint(
   out: PathPoints,
   at: number,
 ): void {
+  const isLast = leg + 1 === path.depthsM.length;
+  const share = isLast ? 0 : along / (path.depthsM[leg + 1]! - path.depthsM[leg]!);
   for (let k = 0; k < 3; k++) {
     const tangent = path.tangents[3 * leg + k]!;
-    out.positions[at + k] = path.positions[3 * leg + k]! + along * tangent;
+    const from = path.positions[3 * leg + k]!;
+    const step = isLast ? along * tangent : share * (path.positions[3 * leg + 3 + k]! - from);
+    out.positions[at + k] = from + step;
     out.tangents[at + k] = tangent;
   }
 }
