@@ -1,5 +1,10 @@
 import type { QueryClient } from '@tanstack/react-query';
-import { createBrowserRouter, redirect, type LoaderFunctionArgs, type RouteObject } from 'react-router-dom';
+import {
+  createBrowserRouter,
+  redirect,
+  type LoaderFunctionArgs,
+  type RouteObject,
+} from 'react-router-dom';
 import { Absent } from '#src/lib/absent.ts';
 import { hasStatus } from '#src/lib/api-problem.ts';
 import { depositQuery, stagesQuery } from '#src/lib/deposit-queries.ts';
@@ -9,7 +14,10 @@ import { NothingHere, PageError, RouteError } from './route-error.tsx';
 import { RoutePending } from './route-pending.tsx';
 import { signInAddress } from './safe-return.ts';
 
-async function signedIn(queryClient: QueryClient, { request }: LoaderFunctionArgs): Promise<Response | null> {
+async function signedIn(
+  queryClient: QueryClient,
+  { request }: LoaderFunctionArgs,
+): Promise<Response | null> {
   try {
     const me = await queryClient.ensureQueryData(meQuery());
     setPreferencePerson(me.id);
@@ -21,7 +29,10 @@ async function signedIn(queryClient: QueryClient, { request }: LoaderFunctionArg
   }
 }
 
-async function depositInHand(queryClient: QueryClient, { params }: LoaderFunctionArgs): Promise<null> {
+async function depositInHand(
+  queryClient: QueryClient,
+  { params }: LoaderFunctionArgs,
+): Promise<null> {
   const depositId = Number(params['depositId']);
   if (!Number.isSafeInteger(depositId) || depositId <= 0) throw new Absent();
   await Promise.all([
@@ -39,10 +50,22 @@ async function demoOnly(queryClient: QueryClient): Promise<null> {
 
 /** Pages before sign-in. */
 const openRoutes = (queryClient: QueryClient): RouteObject[] => [
-  { path: 'sign-in', lazy: async () => ({ Component: (await import('./routes/sign-in.tsx')).SignInPage }) },
-  { path: 'forgotten', lazy: async () => ({ Component: (await import('./routes/forgotten.tsx')).ForgottenPage }) },
-  { path: 'reset/:token', lazy: async () => ({ Component: (await import('./routes/reset.tsx')).ResetPage }) },
-  { path: 'accept/:token', lazy: async () => ({ Component: (await import('./routes/accept.tsx')).AcceptPage }) },
+  {
+    path: 'sign-in',
+    lazy: async () => ({ Component: (await import('./routes/sign-in.tsx')).SignInPage }),
+  },
+  {
+    path: 'forgotten',
+    lazy: async () => ({ Component: (await import('./routes/forgotten.tsx')).ForgottenPage }),
+  },
+  {
+    path: 'reset/:token',
+    lazy: async () => ({ Component: (await import('./routes/reset.tsx')).ResetPage }),
+  },
+  {
+    path: 'accept/:token',
+    lazy: async () => ({ Component: (await import('./routes/accept.tsx')).AcceptPage }),
+  },
   {
     path: 'mailbox',
     loader: () => demoOnly(queryClient),
@@ -52,17 +75,53 @@ const openRoutes = (queryClient: QueryClient): RouteObject[] => [
 
 /** Pages of one deposit. A stage is listed here once it has a page. */
 const depositRoutes: RouteObject[] = [
-  { index: true, lazy: async () => ({ Component: (await import('./routes/overview.tsx')).OverviewPage }) },
-  { path: 'record', lazy: async () => ({ Component: (await import('./routes/record.tsx')).RecordPage }) },
-  { path: 'members', lazy: async () => ({ Component: (await import('./routes/members.tsx')).MembersPage }) },
-  { path: 'settings', lazy: async () => ({ Component: (await import('./routes/settings.tsx')).SettingsPage }) },
+  {
+    index: true,
+    lazy: async () => ({ Component: (await import('./routes/overview.tsx')).OverviewPage }),
+  },
+  {
+    path: 'intake',
+    lazy: async () => ({ Component: (await import('./routes/intake.tsx')).IntakePage }),
+  },
+  {
+    path: 'intake/:uploadId',
+    lazy: async () => ({ Component: (await import('./routes/upload.tsx')).UploadPage }),
+  },
+  {
+    path: 'groups',
+    lazy: async () => ({ Component: (await import('./routes/groups.tsx')).GroupsPage }),
+  },
+  {
+    path: 'record',
+    lazy: async () => ({ Component: (await import('./routes/record.tsx')).RecordPage }),
+  },
+  {
+    path: 'members',
+    lazy: async () => ({ Component: (await import('./routes/members.tsx')).MembersPage }),
+  },
+  {
+    path: 'settings',
+    lazy: async () => ({ Component: (await import('./routes/settings.tsx')).SettingsPage }),
+  },
 ];
 
 const peopleRoutes: RouteObject[] = [
-  { path: 'deposits', lazy: async () => ({ Component: (await import('./routes/deposits.tsx')).DepositsPage }) },
-  { path: 'deposits/new', lazy: async () => ({ Component: (await import('./routes/new-deposit.tsx')).NewDepositPage }) },
-  { path: 'account', lazy: async () => ({ Component: (await import('./routes/account.tsx')).AccountPage }) },
-  { path: 'admin', lazy: async () => ({ Component: (await import('./routes/admin.tsx')).AdminPage }) },
+  {
+    path: 'deposits',
+    lazy: async () => ({ Component: (await import('./routes/deposits.tsx')).DepositsPage }),
+  },
+  {
+    path: 'deposits/new',
+    lazy: async () => ({ Component: (await import('./routes/new-deposit.tsx')).NewDepositPage }),
+  },
+  {
+    path: 'account',
+    lazy: async () => ({ Component: (await import('./routes/account.tsx')).AccountPage }),
+  },
+  {
+    path: 'admin',
+    lazy: async () => ({ Component: (await import('./routes/admin.tsx')).AdminPage }),
+  },
 ];
 
 export const makeRoutes = (queryClient: QueryClient): RouteObject[] => [
@@ -83,10 +142,18 @@ export const makeRoutes = (queryClient: QueryClient): RouteObject[] => [
           {
             path: 'deposits/:depositId',
             loader: (args) => depositInHand(queryClient, args),
-            shouldRevalidate: ({ currentParams, nextParams }) => currentParams['depositId'] !== nextParams['depositId'],
+            shouldRevalidate: ({ currentParams, nextParams }) =>
+              currentParams['depositId'] !== nextParams['depositId'],
             ErrorBoundary: RouteError,
-            lazy: async () => ({ Component: (await import('./shell/deposit-shell.tsx')).DepositShell }),
-            children: [{ ErrorBoundary: PageError, children: [...depositRoutes, { path: '*', Component: NothingHere }] }],
+            lazy: async () => ({
+              Component: (await import('./shell/deposit-shell.tsx')).DepositShell,
+            }),
+            children: [
+              {
+                ErrorBoundary: PageError,
+                children: [...depositRoutes, { path: '*', Component: NothingHere }],
+              },
+            ],
           },
         ],
       },
@@ -103,4 +170,5 @@ function NoSuchPage() {
   );
 }
 
-export const makeRouter = (queryClient: QueryClient) => createBrowserRouter(makeRoutes(queryClient));
+export const makeRouter = (queryClient: QueryClient) =>
+  createBrowserRouter(makeRoutes(queryClient));

@@ -13,7 +13,7 @@ async function done(analysis: Analysis, jobId: number): Promise<void> {
 /** Brings the tables in as a person would: upload, mapping as guessed, load; then waits for them to be put together. */
 export async function loadDemo(analysis: Analysis, depositId: number, demo: MadeDemo, incomingDir: string, actor: Actor): Promise<void> {
   await mkdir(incomingDir, { recursive: true });
-  const jobIds: number[] = [];
+  const waiting: { uploadId: number; mode: 'replace' | 'add' }[] = [];
   for (const { fileName, path, sizeBytes, mode } of demo.files) {
     const copy = join(incomingDir, `demo-${fileName}`);
     await copyFile(path, copy);
@@ -21,10 +21,12 @@ export async function loadDemo(analysis: Analysis, depositId: number, demo: Made
     await rm(copy, { force: true });
     const [upload] = uploads;
     if (!upload) throw new Error(`demonstration: ${fileName} was refused: ${refused[0]?.message ?? ''}`);
-    const { job } = await analysis.intake.load(depositId, upload.id, mode, actor);
-    jobIds.push(job.id);
+    waiting.push({ uploadId: upload.id, mode });
   }
-  for (const jobId of jobIds) await done(analysis, jobId);
+  // All loads are in the queue before the first ends, so the tables are put together once.
+  const jobs = [];
+  for (const { uploadId, mode } of waiting) jobs.push(await analysis.intake.load(depositId, uploadId, mode, actor));
+  for (const { job } of jobs) await done(analysis, job.id);
   await assembled(analysis, depositId);
 }
 

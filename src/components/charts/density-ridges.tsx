@@ -1,4 +1,5 @@
 import { kernelDensityEstimation } from 'simple-statistics';
+import { scaleLinear } from 'd3';
 import { useMemo } from 'react';
 import { plotArea, XAxis } from './axes.tsx';
 import { slotColours } from './category-marks.tsx';
@@ -17,6 +18,8 @@ export interface Ridge {
   /** Grey when absent. */
   slot?: number | null;
   values: ArrayLike<number>;
+  /** A curve worked out before, highest point 1: drawn instead of one from `values`. */
+  curve?: { at: readonly number[]; height: readonly number[] };
 }
 
 export interface DensityRidgesProps extends ChartBasics {
@@ -47,6 +50,16 @@ export function ridgeCurve(values: ArrayLike<number>, kind: ScaleKind, domain: r
   return highest > 0 ? heights.map((height) => height / highest) : [];
 }
 
+/** A given curve read at the steps of a domain, straight between its points, 0 beyond its ends. */
+function resampled({ at, height }: NonNullable<Ridge['curve']>, kind: ScaleKind, domain: readonly [number, number]): number[] {
+  const read = scaleLinear([...at], [...height]);
+  const [first = 0, last = 0] = [at[0], at.at(-1)];
+  return Array.from({ length: STEPS + 1 }, (_value, i) => {
+    const value = fromShare(i / STEPS, kind, domain);
+    return value < first || value > last ? 0 : read(value);
+  });
+}
+
 /** Distributions one under the other on one scale, each drawn to one height. */
 export function DensityRidges(props: DensityRidgesProps) {
   const { ridges, kind = 'linear' } = props;
@@ -54,7 +67,7 @@ export function DensityRidges(props: DensityRidgesProps) {
   const drawn = useMemo(() => {
     const all = ridges.flatMap(({ values }) => Array.from(values));
     const domain = low === undefined || high === undefined ? niceDomain(all, kind, 0.06) : ([low, high] as const);
-    return { domain, curves: ridges.map(({ values }) => ridgeCurve(values, kind, domain)) };
+    return { domain, curves: ridges.map(({ values, curve }) => (curve ? resampled(curve, kind, domain) : ridgeCurve(values, kind, domain))) };
   }, [ridges, kind, low, high]);
   return (
     <ChartFrame {...props} usualHeight={56 + ridges.length * 68}>

@@ -1,0 +1,5 @@
+import { ReleasesStage } from '#src/features/releases/components/releases-stage.tsx';
+
+export function ReleasesPage() {
+  return <ReleasesStage />;
+}
