@@ -40,13 +40,18 @@ function Failure({ error }: { error: unknown }) {
   }, [isMissing]);
   return (
     <div className="mx-auto grid w-full max-w-[36rem] gap-3 py-6">
-      <h1 className="font-read text-title">{isMissing ? 'Nothing at this address' : 'This page could not be shown'}</h1>
+      <h1 className="font-read text-title">
+        {isMissing ? 'Nothing at this address' : 'This page could not be shown'}
+      </h1>
       {isMissing ? (
         <p className="font-read text-finding text-ink-2">
-          Expected a page or a deposit you belong to; found neither. It may have been removed, or the address is mistyped.
+          Expected a page or a deposit you belong to; found neither. It may have been removed, or
+          the address is mistyped.
         </p>
       ) : isOldPage(error) ? (
-        <p className="font-read text-finding text-ink-2">A newer version of Selvage has been put in place. Load the page again to use it.</p>
+        <p className="font-read text-finding text-ink-2">
+          A newer version of Selvage has been put in place. Load the page again to use it.
+        </p>
       ) : (
         <Problem error={error} />
       )}

@@ -3,4 +3,6 @@ export const safeReturn = (to: string | null): string =>
   to !== null && /^\/(?![/\\])/.test(to) ? to : '/deposits';
 
 export const signInAddress = (pathAndQuery: string): string =>
-  pathAndQuery === '/' || pathAndQuery === '/deposits' ? '/sign-in' : `/sign-in?to=${encodeURIComponent(pathAndQuery)}`;
+  pathAndQuery === '/' || pathAndQuery === '/deposits'
+    ? '/sign-in'
+    : `/sign-in?to=${encodeURIComponent(pathAndQuery)}`;

@@ -5,7 +5,9 @@ import { randomKey } from './random-key.ts';
 
 /** Fields of a schema as the caller writes them: parsed types, with what has a default left optional. */
 type Fields<Schema extends z.ZodObject> = {
-  [Key in keyof z.input<Schema>]: Key extends keyof z.output<Schema> ? z.output<Schema>[Key] : never;
+  [Key in keyof z.input<Schema>]: Key extends keyof z.output<Schema>
+    ? z.output<Schema>[Key]
+    : never;
 };
 
 /** `NoFields` infers to a record of nothing, so its keys are all strings. */
@@ -44,7 +46,10 @@ interface Sent {
 type AnyEndpoint = Pick<Endpoint, 'id' | 'method' | 'path' | 'ifMatch' | 'idempotent'>;
 
 /** The address of an endpoint under `/api`, with its parameters and query filled in. */
-export function endpointUrl(endpoint: Pick<Endpoint, 'path'>, sent: Pick<Sent, 'params' | 'query'>): string {
+export function endpointUrl(
+  endpoint: Pick<Endpoint, 'path'>,
+  sent: Pick<Sent, 'params' | 'query'>,
+): string {
   const params = new Map<string, unknown>(Object.entries(sent.params ?? {}));
   const path = endpoint.path.replace(/:(\w+)/g, (_, name: string) =>
     encodeURIComponent(String(params.get(name))),
@@ -58,7 +63,8 @@ export function endpointUrl(endpoint: Pick<Endpoint, 'path'>, sent: Pick<Sent, '
 function appendQuery(search: URLSearchParams, name: string, value: unknown): void {
   if (value === undefined || value === null) return;
   if (Array.isArray(value)) for (const item of value) appendQuery(search, name, item);
-  else if (typeof value === 'string' || typeof value === 'number' || typeof value === 'boolean') search.append(name, String(value));
+  else if (typeof value === 'string' || typeof value === 'number' || typeof value === 'boolean')
+    search.append(name, String(value));
   else throw new TypeError(`Expected text, a number or a flag for ${name} in a query`);
 }
 
@@ -98,7 +104,9 @@ export function readAnswer<Schema extends z.ZodType>(
   const parsed = endpoint.response.safeParse(body);
   if (parsed.success) return parsed.data;
   const issue = parsed.error.issues[0];
-  const found = issue ? `${issue.message} at ${issue.path.join('.') || 'the top'}` : 'another shape';
+  const found = issue
+    ? `${issue.message} at ${issue.path.join('.') || 'the top'}`
+    : 'another shape';
   throw unexpectedAnswer(status, endpoint.id, found);
 }
 

@@ -7,11 +7,21 @@ import { unexpectedAnswer } from './api-problem.ts';
 /** Tables of columns never change once written: what is read once is kept while the page is open. */
 const FOREVER = { staleTime: Infinity, gcTime: 30 * 60_000, structuralSharing: false } as const;
 
-const NUMBERS = { float64: Float64Array, float32: Float32Array, int32: Int32Array, uint8: Uint8Array } as const;
+const NUMBERS = {
+  float64: Float64Array,
+  float32: Float32Array,
+  int32: Int32Array,
+  uint8: Uint8Array,
+} as const;
 
-function numbersOf(bytes: ArrayBuffer, dtype: string, where: string): Float64Array | Float32Array | Int32Array | Uint8Array {
+function numbersOf(
+  bytes: ArrayBuffer,
+  dtype: string,
+  where: string,
+): Float64Array | Float32Array | Int32Array | Uint8Array {
   for (const [name, Numbers] of Object.entries(NUMBERS)) {
-    if (name === dtype && bytes.byteLength % Numbers.BYTES_PER_ELEMENT === 0) return new Numbers(bytes);
+    if (name === dtype && bytes.byteLength % Numbers.BYTES_PER_ELEMENT === 0)
+      return new Numbers(bytes);
   }
   throw unexpectedAnswer(200, where, `${bytes.byteLength} bytes of type ${dtype}`);
 }
@@ -26,7 +36,8 @@ const LITTLE_ENDIAN = new Uint8Array(new Uint32Array([1]).buffer)[0] === 1;
 export async function readNumbers(response: Response, where: string): Promise<Float64Array> {
   const bytes = await response.arrayBuffer();
   const dtype = response.headers.get('X-Dtype') ?? 'none';
-  if (!LITTLE_ENDIAN) throw unexpectedAnswer(200, where, 'a big-endian browser, which cannot read it');
+  if (!LITTLE_ENDIAN)
+    throw unexpectedAnswer(200, where, 'a big-endian browser, which cannot read it');
   const numbers = numbersOf(bytes, dtype, where);
   return numbers instanceof Float64Array ? numbers : Float64Array.from(numbers);
 }
@@ -54,7 +65,10 @@ export const qualifiersQuery = (depositId: number, tableId: number, column: stri
   queryOptions({
     queryKey: ['tables', depositId, tableId, 'qualifiers', column],
     queryFn: async ({ signal }) => {
-      const given = { params: { depositId, tableId, column }, query: { part: 'qualifiers' } } as const;
+      const given = {
+        params: { depositId, tableId, column },
+        query: { part: 'qualifiers' },
+      } as const;
       const response = await callRaw(readColumn, given, signal);
       return Uint8Array.from(await readNumbers(response, `qualifiers of ${column}`));
     },
@@ -91,7 +105,10 @@ export const categoriesQuery = (depositId: number, tableId: number, column: stri
         client.ensureQueryData(tableQuery(depositId, tableId)),
         client.ensureQueryData(columnQuery(depositId, tableId, column)),
       ]);
-      return { codes, dictionary: table.columns.find(({ name }) => name === column)?.dictionary ?? [] };
+      return {
+        codes,
+        dictionary: table.columns.find(({ name }) => name === column)?.dictionary ?? [],
+      };
     },
     ...FOREVER,
   });

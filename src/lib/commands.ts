@@ -26,7 +26,8 @@ const commandStore = createStore<readonly Command[]>([]);
 export function useCommands(commands: readonly Command[]): void {
   useEffect(() => {
     commandStore.set([...commandStore.get(), ...commands]);
-    return () => commandStore.set(commandStore.get().filter((command) => !commands.includes(command)));
+    return () =>
+      commandStore.set(commandStore.get().filter((command) => !commands.includes(command)));
   }, [commands]);
 }
 

@@ -8,7 +8,11 @@ import { jobsQuery, rememberJob } from './jobs.ts';
 const ALWAYS = ['stages', 'overview'];
 
 /** One event: a job moved, or a resource changed and what was read of it is old. */
-export function applyDepositEvent(queryClient: QueryClient, depositId: number, event: DepositEvent): void {
+export function applyDepositEvent(
+  queryClient: QueryClient,
+  depositId: number,
+  event: DepositEvent,
+): void {
   if (event.type === 'job') {
     if (rememberJob(queryClient, event.job)) refresh(queryClient, depositId, ALWAYS);
     return;

@@ -1,5 +1,9 @@
 /** Hands a file made in the browser to the person. */
-export function saveFile(fileName: string, content: Blob | string, type = 'text/plain;charset=utf-8'): void {
+export function saveFile(
+  fileName: string,
+  content: Blob | string,
+  type = 'text/plain;charset=utf-8',
+): void {
   const blob = typeof content === 'string' ? new Blob([content], { type }) : content;
   const url = URL.createObjectURL(blob);
   const link = document.createElement('a');
@@ -11,7 +15,11 @@ export function saveFile(fileName: string, content: Blob | string, type = 'text/
 
 /** Letters, digits, dots, dashes; what lies between becomes one dash. */
 export const safeFileName = (name: string): string =>
-  name.normalize('NFC').replace(/[^\p{L}\p{N}._-]+/gu, '-').replace(/^-+|-+$/g, '').slice(0, 120) || 'selvage';
+  name
+    .normalize('NFC')
+    .replace(/[^\p{L}\p{N}._-]+/gu, '-')
+    .replace(/^-+|-+$/g, '')
+    .slice(0, 120) || 'selvage';
 
 /** @returns false when the browser refuses, for example without https. */
 export async function copyText(text: string): Promise<boolean> {

@@ -17,3 +17,10 @@ export function showFieldProblems<Values extends FieldValues>(
     if (name) setError(name, { type: 'server', message });
   }
 }
+
+/** The words at a field: what the server said of it, or what the form expects there. */
+export const fieldWords = (
+  error: { type?: unknown; message?: string | undefined } | undefined,
+  expected: string,
+): string | undefined =>
+  error ? (error.type === 'server' && error.message) || expected : undefined;

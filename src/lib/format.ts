@@ -48,7 +48,9 @@ export function formatFigures(value: number, figures = 3): string {
   if (!Number.isFinite(value)) return MISSING;
   if (value === 0) return '0';
   const magnitude = Math.floor(Math.log10(Math.abs(value)));
-  return written(value, { maximumFractionDigits: Math.min(10, Math.max(0, figures - 1 - magnitude)) });
+  return written(value, {
+    maximumFractionDigits: Math.min(10, Math.max(0, figures - 1 - magnitude)),
+  });
 }
 
 export const formatCount = (count: number): string => written(count, { maximumFractionDigits: 0 });

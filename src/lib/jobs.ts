@@ -27,7 +27,9 @@ export function rememberJob(queryClient: QueryClient, job: Job): boolean {
   const { depositId, id } = job;
   const listKey = jobsQuery(depositId).queryKey;
   const oneKey = jobQuery(depositId, id).queryKey;
-  const known = queryClient.getQueryData(oneKey) ?? queryClient.getQueryData(listKey)?.find((other) => other.id === id);
+  const known =
+    queryClient.getQueryData(oneKey) ??
+    queryClient.getQueryData(listKey)?.find((other) => other.id === id);
   if (known && !isNews(known, job)) return false;
   queryClient.setQueryData(oneKey, job);
   queryClient.setQueryData(listKey, (jobs) => {

@@ -1,6 +1,7 @@
 import { useSyncExternalStore } from 'react';
 
-let offlineSince: Date | null = typeof navigator !== 'undefined' && navigator.onLine === false ? new Date() : null;
+let offlineSince: Date | null =
+  typeof navigator !== 'undefined' && navigator.onLine === false ? new Date() : null;
 
 function subscribe(listener: () => void): () => void {
   const onOnline = () => {
@@ -21,4 +22,8 @@ function subscribe(listener: () => void): () => void {
 
 /** When the network went, or null while it is there. */
 export const useOfflineSince = (): Date | null =>
-  useSyncExternalStore(subscribe, () => offlineSince, () => null);
+  useSyncExternalStore(
+    subscribe,
+    () => offlineSince,
+    () => null,
+  );

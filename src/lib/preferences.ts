@@ -11,7 +11,8 @@ const changeStore = createStore(0);
 
 export const setPreferencePerson = (userId: number | null): void => personStore.set(userId);
 
-const keyOf = (person: number | null, name: string): string => `selvage:${person ?? 'last'}:${name}`;
+const keyOf = (person: number | null, name: string): string =>
+  `selvage:${person ?? 'last'}:${name}`;
 
 function readText(key: string): string | null {
   try {

@@ -48,7 +48,8 @@ export const useSelectionFrame = (key: string): void => useEffect(() => enterFra
 
 export const currentSelection = (): Selection => selectionStore.get();
 export const useSelection = (): Selection => useStore(selectionStore);
-export const onSelectionChange = (listener: () => void): (() => void) => selectionStore.subscribe(listener);
+export const onSelectionChange = (listener: () => void): (() => void) =>
+  selectionStore.subscribe(listener);
 
 /** The row under the pointer, lit in every plot. */
 export const hoverRow = (row: number | null): void => hoverStore.set(row);

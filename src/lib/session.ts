@@ -1,4 +1,10 @@
-import { queryOptions, useMutation, useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
+import {
+  queryOptions,
+  useMutation,
+  useQuery,
+  useQueryClient,
+  type QueryClient,
+} from '@tanstack/react-query';
 import { getInstance, getMe, signOut, type Me } from '#contract/auth.ts';
 import { call } from './api-client.ts';
 import { hasStatus } from './api-problem.ts';
@@ -42,9 +48,10 @@ export function leaveSession(queryClient: QueryClient): void {
 export function useSignOut(onDone: () => void) {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: () => call(signOut, {}).catch((error: unknown) => {
-      if (!hasStatus(error, 401)) throw error;
-    }),
+    mutationFn: () =>
+      call(signOut, {}).catch((error: unknown) => {
+        if (!hasStatus(error, 401)) throw error;
+      }),
     onSuccess: () => {
       leaveSession(queryClient);
       onDone();

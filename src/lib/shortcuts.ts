@@ -10,17 +10,30 @@ export const keysInWords = (keys: string): string =>
     .map((stroke) =>
       stroke
         .split('+')
-        .map((part) => KEY_WORDS[part] ?? (part.length === 1 && keys.includes('mod') ? part.toUpperCase() : part))
+        .map(
+          (part) =>
+            KEY_WORDS[part] ??
+            (part.length === 1 && keys.includes('mod') ? part.toUpperCase() : part),
+        )
         .join(' '),
     )
     .join(' then ');
 
 const KEY_WORDS: Record<string, string> = {
-  mod: isMac ? '⌘' : 'Ctrl', shift: 'Shift', escape: 'Esc', enter: 'Enter', up: '↑', down: '↓', left: '←', right: '→',
+  mod: isMac ? '⌘' : 'Ctrl',
+  shift: 'Shift',
+  escape: 'Esc',
+  enter: 'Enter',
+  up: '↑',
+  down: '↓',
+  left: '←',
+  right: '→',
 };
 
 /** One key press as a text: "mod+shift+z", "g", "?". */
-export function strokeOf(event: Pick<KeyboardEvent, 'key' | 'ctrlKey' | 'metaKey' | 'shiftKey' | 'altKey'>): string {
+export function strokeOf(
+  event: Pick<KeyboardEvent, 'key' | 'ctrlKey' | 'metaKey' | 'shiftKey' | 'altKey'>,
+): string {
   const key = event.key.toLowerCase();
   const parts: string[] = [];
   if (event.ctrlKey || event.metaKey) parts.push('mod');
@@ -51,7 +64,9 @@ export function useShortcutKeys(): void {
       if ((isPlain || isUndo) && isTyping(event.target)) return;
       if (isPlain && document.querySelector('[role="dialog"], [role="menu"]')) return;
       const pair = event.timeStamp - beforeAt < SEQUENCE_MS ? `${before} ${stroke}` : '';
-      const command = currentCommands().findLast(({ keys }) => keys === stroke || (pair !== '' && keys === pair));
+      const command = currentCommands().findLast(
+        ({ keys }) => keys === stroke || (pair !== '' && keys === pair),
+      );
       before = stroke;
       beforeAt = event.timeStamp;
       if (!command) return;

@@ -4,7 +4,11 @@ import { onPreferenceChange, readPreference, usePreference } from './preferences
 export const Theme = z.enum(['light', 'dark', 'system']);
 export type Theme = z.infer<typeof Theme>;
 
-export const THEME_WORDS: Record<Theme, string> = { light: 'Light', dark: 'Dark', system: 'As the system' };
+export const THEME_WORDS: Record<Theme, string> = {
+  light: 'Light',
+  dark: 'Dark',
+  system: 'As the system',
+};
 
 /** With no attribute the tokens follow the system. */
 function applyTheme(theme: Theme): void {
@@ -19,4 +23,5 @@ export function followTheme(): void {
   onPreferenceChange(apply);
 }
 
-export const useTheme = (): [Theme, (theme: Theme) => void] => usePreference('theme', Theme, 'system');
+export const useTheme = (): [Theme, (theme: Theme) => void] =>
+  usePreference('theme', Theme, 'system');

@@ -48,7 +48,12 @@ export const urlList = (): UrlField<readonly string[]> => ({
 });
 
 export const urlNumbers = (): UrlField<readonly number[]> => ({
-  parse: (text) => (text ?? '').split(',').filter((item) => item !== '').map(Number).filter(Number.isFinite),
+  parse: (text) =>
+    (text ?? '')
+      .split(',')
+      .filter((item) => item !== '')
+      .map(Number)
+      .filter(Number.isFinite),
   format: (value) => (value.length === 0 ? null : value.map(String).join(',')),
 });
 
@@ -65,7 +70,10 @@ const unescapeItem = (item: string): string =>
   item === '%' ? '' : item.replaceAll('%2C', ',').replaceAll('%25', '%');
 
 /** Reads every field; what the address lacks or garbles is its default. */
-export function parseUrl<Fields extends UrlFields>(fields: Fields, search: URLSearchParams): UrlValues<Fields>;
+export function parseUrl<Fields extends UrlFields>(
+  fields: Fields,
+  search: URLSearchParams,
+): UrlValues<Fields>;
 export function parseUrl(fields: UrlFields, search: URLSearchParams): Record<string, unknown> {
   const values: Record<string, unknown> = {};
   for (const [name, field] of Object.entries(fields)) values[name] = field.parse(search.get(name));

@@ -25,7 +25,13 @@ export function AcceptPage() {
       )}
       {!invitation && !error && <Loading label="Reading the invitation" />}
       {invitation && (
-        <AcceptForm token={token} invitation={invitation} onAccepted={(depositId) => void navigate(depositId === null ? '/deposits' : `/deposits/${depositId}`)} />
+        <AcceptForm
+          token={token}
+          invitation={invitation}
+          onAccepted={(depositId) =>
+            void navigate(depositId === null ? '/deposits' : `/deposits/${depositId}`)
+          }
+        />
       )}
     </Door>
   );

@@ -20,11 +20,21 @@ export function AccountPage() {
         <Plate title="Password">
           <PasswordFields />
         </Plate>
-        <Plate title="Sessions" qualifier="ended after 12 hours without use" className="lg:col-span-2">
+        <Plate
+          title="Sessions"
+          qualifier="ended after 12 hours without use"
+          className="lg:col-span-2"
+        >
           <SessionTable />
         </Plate>
         <Plate title="Look" qualifier="kept in this browser">
-          <RadioGroup label="Theme" isInline choices={Theme.options.map((value) => ({ value, label: THEME_WORDS[value] }))} value={theme} onPick={setTheme} />
+          <RadioGroup
+            label="Theme"
+            isInline
+            choices={Theme.options.map((value) => ({ value, label: THEME_WORDS[value] }))}
+            value={theme}
+            onPick={setTheme}
+          />
         </Plate>
       </div>
     </>

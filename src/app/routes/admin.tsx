@@ -10,7 +10,10 @@ export function AdminPage() {
   if (!me?.isAdministrator) return <NothingHere />;
   return (
     <>
-      <PageHead title="Administration" finding="Accounts and deposits of this instance. People belong to deposits by their leads' invitation." />
+      <PageHead
+        title="Administration"
+        finding="Accounts and deposits of this instance. People belong to deposits by their leads' invitation."
+      />
       <div className="grid gap-3">
         <UserPlate />
         <AllDepositsPlate />

@@ -16,17 +16,26 @@ export function DepositsPage() {
     <>
       <PageHead
         title="Deposits"
-        finding={deposits && deposits.length > 0 && `${countOf(deposits.length, 'deposit')} you belong to, ${formatMetres(metres)} drilled.`}
+        finding={
+          deposits &&
+          deposits.length > 0 &&
+          `${countOf(deposits.length, 'deposit')} you belong to, ${formatMetres(metres)} drilled.`
+        }
         actions={
           <LinkButton to="/deposits/new" kind="main" icon={Plus}>
             New deposit
           </LinkButton>
         }
       />
-      {error && <Problem error={error} action={{ label: 'Try again', run: () => void refetch() }} />}
+      {error && (
+        <Problem error={error} action={{ label: 'Try again', run: () => void refetch() }} />
+      )}
       {!deposits && !error && <Loading label="Reading your deposits" />}
       {deposits?.length === 0 && (
-        <Empty>You belong to no deposit yet. Create one and become its lead, or ask a lead to invite you by your e-mail.</Empty>
+        <Empty>
+          You belong to no deposit yet. Create one and become its lead, or ask a lead to invite you
+          by your e-mail.
+        </Empty>
       )}
       {deposits && <DepositList deposits={deposits} />}
     </>

@@ -13,7 +13,10 @@ export function MailboxPage() {
         </Link>
       </header>
       <main id="main" tabIndex={-1} className="mx-auto max-w-[54rem] px-5 pt-5 pb-10 max-md:px-4">
-        <PageHead title="Mailbox of the demonstration" finding="Nothing leaves this instance: every message it would send is kept here." />
+        <PageHead
+          title="Mailbox of the demonstration"
+          finding="Nothing leaves this instance: every message it would send is kept here."
+        />
         <Mailbox />
       </main>
     </>

@@ -13,7 +13,9 @@ export function MembersPage() {
   const deposit = useDeposit();
   const { data, error, refetch } = useQuery(membersQuery(deposit.id));
   const leads = data?.members.filter(({ role }) => role === 'lead') ?? [];
-  const finding = data && `${countOf(data.members.length, 'person', 'people')} on ${deposit.name}; ${leads.map(({ name }) => name).join(' and ')} ${leads.length === 1 ? 'leads' : 'lead'}.`;
+  const finding =
+    data &&
+    `${countOf(data.members.length, 'person', 'people')} on ${deposit.name}; ${leads.map(({ name }) => name).join(' and ')} ${leads.length === 1 ? 'leads' : 'lead'}.`;
   return (
     <>
       <PageHead title="People and tokens" finding={finding} />
@@ -23,7 +25,10 @@ export function MembersPage() {
             {data ? <MemberTable depositId={deposit.id} members={data.members} /> : <Skeleton />}
           </Plate>
           {data && data.invitations.length > 0 && (
-            <Plate title="Open invitations" qualifier={countOf(data.invitations.length, 'invitation')}>
+            <Plate
+              title="Open invitations"
+              qualifier={countOf(data.invitations.length, 'invitation')}
+            >
               <InvitationList depositId={deposit.id} invitations={data.invitations} />
             </Plate>
           )}

@@ -10,9 +10,18 @@ export function NewDepositPage() {
   const create = useCreateDeposit(({ id }) => void navigate(`/deposits/${id}`));
   return (
     <div className="max-w-[40rem]">
-      <PageHead title="New deposit" finding="A deposit is the workspace of one project. You become its lead and can invite others." />
+      <PageHead
+        title="New deposit"
+        finding="A deposit is the workspace of one project. You become its lead and can invite others."
+      />
       <Plate title="The deposit" qualifier="all of it can be changed later">
-        <DepositFields initial={NEW_DEPOSIT} submitLabel="Create the deposit" isBusy={create.isPending} error={create.error} onSubmit={(body) => create.mutate(body)} />
+        <DepositFields
+          initial={NEW_DEPOSIT}
+          submitLabel="Create the deposit"
+          isBusy={create.isPending}
+          error={create.error}
+          onSubmit={(body) => create.mutate(body)}
+        />
       </Plate>
     </div>
   );

@@ -4,7 +4,9 @@ import { Plate } from '#src/components/ui/plate.tsx';
 import { DepositOverview } from '#src/features/deposits/components/deposit-overview.tsx';
 
 /** The plan brings the drawing library along: the page is there before it. */
-const PlanPlate = lazy(async () => ({ default: (await import('#src/features/deposits/components/plan-plate.tsx')).PlanPlate }));
+const PlanPlate = lazy(async () => ({
+  default: (await import('#src/features/deposits/components/plan-plate.tsx')).PlanPlate,
+}));
 
 export function OverviewPage() {
   const waiting = (
@@ -12,5 +14,13 @@ export function OverviewPage() {
       <Skeleton lines={8} />
     </Plate>
   );
-  return <DepositOverview plan={<Suspense fallback={waiting}><PlanPlate /></Suspense>} />;
+  return (
+    <DepositOverview
+      plan={
+        <Suspense fallback={waiting}>
+          <PlanPlate />
+        </Suspense>
+      }
+    />
+  );
 }

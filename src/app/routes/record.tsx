@@ -9,14 +9,29 @@ import { useDepositId } from '#src/lib/use-deposit.ts';
 export function RecordPage() {
   const depositId = useDepositId();
   const chain = useQuery(auditQuery(depositId, '', 1)).data?.chain;
-  const finding = chain && (
-    chain.holds
-      ? <>Each entry seals the one before it. {formatCount(chain.entries)} entries hold; the last is <span className="font-mono text-[0.9em]">{formatHash(chain.head)}</span>.</>
-      : `The chain breaks at entry ${formatCount(chain.firstBadEntry ?? 0)}: it or one before it has been altered outside Selvage. Tell the administrator and compare with a backup.`
-  );
+  const finding =
+    chain &&
+    (chain.holds ? (
+      <>
+        Each entry seals the one before it. {formatCount(chain.entries)} entries hold; the last is{' '}
+        <span className="font-mono text-[0.9em]">{formatHash(chain.head)}</span>.
+      </>
+    ) : (
+      `The chain breaks at entry ${formatCount(chain.firstBadEntry ?? 0)}: it or one before it has been altered outside Selvage. Tell the administrator and compare with a backup.`
+    ));
   return (
     <>
-      <PageHead title="Record" finding={finding} chips={chain && <Chip tone={chain.holds ? 'good' : 'bad'}>{chain.holds ? 'chain holds' : 'chain broken'}</Chip>} />
+      <PageHead
+        title="Record"
+        finding={finding}
+        chips={
+          chain && (
+            <Chip tone={chain.holds ? 'good' : 'bad'}>
+              {chain.holds ? 'chain holds' : 'chain broken'}
+            </Chip>
+          )
+        }
+      />
       <AuditPlate depositId={depositId} />
     </>
   );

@@ -7,7 +7,10 @@ export function SettingsPage() {
   const { name } = useDeposit();
   return (
     <div className="max-w-[44rem]">
-      <PageHead title="Settings" finding={`Name, grid and analytes of ${name}. Grades are stored in ppm; the units here are for reading.`} />
+      <PageHead
+        title="Settings"
+        finding={`Name, grid and analytes of ${name}. Grades are stored in ppm; the units here are for reading.`}
+      />
       <Plate title="The deposit">
         <SettingsForm />
       </Plate>

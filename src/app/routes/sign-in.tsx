@@ -8,7 +8,9 @@ export function SignInPage() {
   const navigate = useNavigate();
   return (
     <Door title="Find the edge of the ore, and show how you know.">
-      <SignInForm onSignedIn={() => void navigate(safeReturn(search.get('to')), { replace: true })} />
+      <SignInForm
+        onSignedIn={() => void navigate(safeReturn(search.get('to')), { replace: true })}
+      />
     </Door>
   );
 }

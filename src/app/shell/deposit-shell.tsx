@@ -33,10 +33,19 @@ export function DepositShell() {
         <TopBar place={<DepositSwitcher />} tools={<JobTray depositId={depositId} />} />
         <OfflineLine />
         <div className="flex min-h-0 flex-1">
-          <StageRail depositId={depositId} stages={stages} foot={<SnapshotFoot depositId={depositId} />} />
+          <StageRail
+            depositId={depositId}
+            stages={stages}
+            foot={<SnapshotFoot depositId={depositId} />}
+          />
           <div className="flex min-w-0 flex-1 flex-col">
             <div className="flex min-h-0 flex-1 max-lg:flex-col">
-              <main ref={main} id="main" tabIndex={-1} className="min-h-0 min-w-0 flex-1 overflow-auto px-5 pt-3.5 pb-5 max-md:px-4 max-md:pb-[5.5rem]">
+              <main
+                ref={main}
+                id="main"
+                tabIndex={-1}
+                className="min-h-0 min-w-0 flex-1 overflow-auto px-5 pt-3.5 pb-5 max-md:px-4 max-md:pb-[5.5rem]"
+              >
                 <Suspense fallback={<Loading />}>
                   <Outlet />
                 </Suspense>
@@ -65,17 +74,32 @@ function useStageCommands(depositId: number, keysInOrder: string): void {
   useCommands(
     useMemo(() => {
       const isStage = (key: string): key is StageKey => Object.hasOwn(STAGE_NAMES, key);
-      const stages = keysInOrder.split(' ').filter(isStage).map((key, index) => ({
-        id: `stage-${key}`,
-        label: `${index + 1} ${STAGE_NAMES[key]}`,
-        group: 'Stages',
-        ...(index < 9 ? { keys: `g ${index + 1}` } : index === 9 ? { keys: 'g 0' } : {}),
-        run: () => void navigate(stagePath(depositId, key)),
-      }));
+      const stages = keysInOrder
+        .split(' ')
+        .filter(isStage)
+        .map((key, index) => ({
+          id: `stage-${key}`,
+          label: `${index + 1} ${STAGE_NAMES[key]}`,
+          group: 'Stages',
+          ...(index < 9 ? { keys: `g ${index + 1}` } : index === 9 ? { keys: 'g 0' } : {}),
+          run: () => void navigate(stagePath(depositId, key)),
+        }));
       return [
         ...stages,
-        { id: 'members', label: 'People and tokens', group: 'Stages', words: ['members', 'invite', 'api'], run: () => void navigate(`/deposits/${depositId}/members`) },
-        { id: 'settings', label: 'Settings of the deposit', group: 'Stages', words: ['grid', 'units'], run: () => void navigate(`/deposits/${depositId}/settings`) },
+        {
+          id: 'members',
+          label: 'People and tokens',
+          group: 'Stages',
+          words: ['members', 'invite', 'api'],
+          run: () => void navigate(`/deposits/${depositId}/members`),
+        },
+        {
+          id: 'settings',
+          label: 'Settings of the deposit',
+          group: 'Stages',
+          words: ['grid', 'units'],
+          run: () => void navigate(`/deposits/${depositId}/settings`),
+        },
       ];
     }, [depositId, keysInOrder, navigate]),
   );

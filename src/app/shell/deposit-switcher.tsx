@@ -12,7 +12,12 @@ export function DepositSwitcher() {
   const deposit = useDeposit();
   const navigate = useNavigate();
   const { data: deposits = [] } = useQuery(depositsQuery());
-  const about = [deposit.payAnalytes.map(({ analyte }) => analyte).join(' '), leadsOf(deposit.leads)].filter(Boolean).join(' · ');
+  const about = [
+    deposit.payAnalytes.map(({ analyte }) => analyte).join(' '),
+    leadsOf(deposit.leads),
+  ]
+    .filter(Boolean)
+    .join(' · ');
   const go = (to: string) => () => void navigate(to);
   return (
     <Menu
@@ -33,10 +38,18 @@ export function DepositSwitcher() {
             { label: 'Settings', run: go(`/deposits/${deposit.id}/settings`) },
           ],
         },
-        { items: [{ label: 'All deposits', run: go('/deposits') }, { label: 'New deposit', run: go('/deposits/new') }] },
+        {
+          items: [
+            { label: 'All deposits', run: go('/deposits') },
+            { label: 'New deposit', run: go('/deposits/new') },
+          ],
+        },
       ]}
       trigger={
-        <button type="button" className="flex max-w-full min-w-0 items-center gap-1.5 rounded-2 border-0 bg-transparent px-1.5 py-0.5 hover:bg-trough max-md:min-h-9">
+        <button
+          type="button"
+          className="flex max-w-full min-w-0 items-center gap-1.5 rounded-2 border-0 bg-transparent px-1.5 py-0.5 hover:bg-trough max-md:min-h-9"
+        >
           <span className="sr-only">Deposit: </span>
           <span className="truncate text-[0.9375rem] font-semibold">{deposit.name}</span>
           {about && <span className="truncate text-small text-ink-3 max-lg:hidden">{about}</span>}
@@ -48,4 +61,6 @@ export function DepositSwitcher() {
 }
 
 const leadsOf = (leads: readonly { name: string }[]): string =>
-  leads.length === 0 ? '' : `${leads.length === 1 ? 'lead' : 'leads'}: ${leads.map(({ name }) => name).join(', ')}`;
+  leads.length === 0
+    ? ''
+    : `${leads.length === 1 ? 'lead' : 'leads'}: ${leads.map(({ name }) => name).join(', ')}`;

@@ -11,7 +11,12 @@ export function PlainShell() {
       <SkipLink />
       <TopBar />
       <OfflineLine />
-      <main ref={main} id="main" tabIndex={-1} className="mx-auto w-full max-w-[72rem] flex-1 px-5 pt-5 pb-10 max-md:px-4">
+      <main
+        ref={main}
+        id="main"
+        tabIndex={-1}
+        className="mx-auto w-full max-w-[72rem] flex-1 px-5 pt-5 pb-10 max-md:px-4"
+      >
         <Outlet />
       </main>
     </div>

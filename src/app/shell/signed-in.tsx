@@ -15,10 +15,36 @@ const said = (work: Promise<{ label: string } | null>, before: string, none: str
   void work.then((edit) => notify(edit ? `${before}: ${edit.label}` : none)).catch(notifyProblem);
 
 const EDITING: readonly Command[] = [
-  { id: 'palette', label: 'Find or do', group: 'General', keys: 'mod+k', isHidden: true, run: () => paletteOpen.set(!paletteOpen.get()) },
-  { id: 'keys', label: 'Show all keys', group: 'General', keys: '?', words: ['shortcuts', 'keyboard'], run: () => shortcutSheetOpen.set(true) },
-  { id: 'undo', label: 'Undo the last edit', group: 'General', keys: 'mod+z', run: () => said(undoLast(), 'Undone', 'Nothing to undo') },
-  { id: 'redo', label: 'Redo what was undone', group: 'General', keys: 'mod+shift+z', run: () => said(redoLast(), 'Done again', 'Nothing to redo') },
+  {
+    id: 'palette',
+    label: 'Find or do',
+    group: 'General',
+    keys: 'mod+k',
+    isHidden: true,
+    run: () => paletteOpen.set(!paletteOpen.get()),
+  },
+  {
+    id: 'keys',
+    label: 'Show all keys',
+    group: 'General',
+    keys: '?',
+    words: ['shortcuts', 'keyboard'],
+    run: () => shortcutSheetOpen.set(true),
+  },
+  {
+    id: 'undo',
+    label: 'Undo the last edit',
+    group: 'General',
+    keys: 'mod+z',
+    run: () => said(undoLast(), 'Undone', 'Nothing to undo'),
+  },
+  {
+    id: 'redo',
+    label: 'Redo what was undone',
+    group: 'General',
+    keys: 'mod+shift+z',
+    run: () => said(redoLast(), 'Done again', 'Nothing to redo'),
+  },
 ];
 
 /** What every page behind the sign-in has: the palette, the keys, and the places one may go. */
@@ -43,11 +69,17 @@ function usePlaceCommands(): void {
   useCommands(
     useMemo(() => {
       const go = (id: string, label: string, to: string, words: string[] = []): Command => ({
-        id, label, group: 'Go to', words, run: () => void navigate(to),
+        id,
+        label,
+        group: 'Go to',
+        words,
+        run: () => void navigate(to),
       });
       return [
         { ...go('deposits', 'All deposits', '/deposits'), keys: 'g a' },
-        ...(deposits ?? []).map(({ id, name }) => go(`deposit-${id}`, name, `/deposits/${id}`, ['deposit'])),
+        ...(deposits ?? []).map(({ id, name }) =>
+          go(`deposit-${id}`, name, `/deposits/${id}`, ['deposit']),
+        ),
         go('new-deposit', 'New deposit', '/deposits/new', ['create']),
         go('account', 'Your account', '/account', ['password', 'sessions', 'name']),
         ...(isAdministrator ? [go('admin', 'Administration', '/admin', ['users'])] : []),

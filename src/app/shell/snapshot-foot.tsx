@@ -7,7 +7,8 @@ export function SnapshotFoot({ depositId }: { depositId: number }) {
   const { data } = useQuery(snapshotQuery(depositId));
   if (!data) return null;
   const { snapshot, assembling } = data;
-  if (!snapshot) return <span>{assembling ? 'First snapshot in the making' : 'No snapshot yet'}</span>;
+  if (!snapshot)
+    return <span>{assembling ? 'First snapshot in the making' : 'No snapshot yet'}</span>;
   return (
     <>
       <span>Snapshot {snapshot.number}</span>

@@ -20,7 +20,10 @@ interface Props {
 
 export function SkipLink() {
   return (
-    <a href="#main" className="absolute top-1 left-1 z-50 -translate-y-16 rounded-2 bg-sheet px-3 py-2 text-copper focus:translate-y-0">
+    <a
+      href="#main"
+      className="absolute top-1 left-1 z-50 -translate-y-16 rounded-2 bg-sheet px-3 py-2 text-copper focus:translate-y-0"
+    >
       Skip to the evidence
     </a>
   );
@@ -45,7 +48,13 @@ export function TopBar({ place, tools }: Props) {
         Find or do…
         <kbd className="ml-auto">{keysInWords('mod+k')}</kbd>
       </button>
-      <IconButton icon={Search} label="Find or do" size="bar" className="lg:hidden" onClick={() => paletteOpen.set(true)} />
+      <IconButton
+        icon={Search}
+        label="Find or do"
+        size="bar"
+        className="lg:hidden"
+        onClick={() => paletteOpen.set(true)}
+      />
       {tools}
       <ThemeMenu />
       <YouMenu />
@@ -55,12 +64,33 @@ export function TopBar({ place, tools }: Props) {
 
 function ThemeMenu() {
   const [theme, setTheme] = useTheme();
-  const items = Theme.options.map((option) => ({ label: THEME_WORDS[option], isChosen: option === theme, run: () => setTheme(option) }));
-  return <Menu trigger={<IconButton icon={SunMoon} label={`Theme: ${THEME_WORDS[theme].toLowerCase()}`} size="bar" className="max-md:hidden" />} groups={[{ items }]} />;
+  const items = Theme.options.map((option) => ({
+    label: THEME_WORDS[option],
+    isChosen: option === theme,
+    run: () => setTheme(option),
+  }));
+  return (
+    <Menu
+      trigger={
+        <IconButton
+          icon={SunMoon}
+          label={`Theme: ${THEME_WORDS[theme].toLowerCase()}`}
+          size="bar"
+          className="max-md:hidden"
+        />
+      }
+      groups={[{ items }]}
+    />
+  );
 }
 
 const initials = (name: string): string =>
-  name.split(/[\s.]+/).filter(Boolean).map((part) => part[0]?.toUpperCase() ?? '').filter((_, index, all) => index === 0 || index === all.length - 1).join('');
+  name
+    .split(/[\s.]+/)
+    .filter(Boolean)
+    .map((part) => part[0]?.toUpperCase() ?? '')
+    .filter((_, index, all) => index === 0 || index === all.length - 1)
+    .join('');
 
 function YouMenu() {
   const me = useMe();
@@ -83,15 +113,24 @@ function YouMenu() {
           items: [
             { label: 'Your account', run: go('/account') },
             ...(me.isAdministrator ? [{ label: 'Administration', run: go('/admin') }] : []),
-            ...(me.isDemoInstance ? [{ label: 'Mailbox of the demonstration', run: go('/mailbox') }] : []),
+            ...(me.isDemoInstance
+              ? [{ label: 'Mailbox of the demonstration', run: go('/mailbox') }]
+              : []),
             { label: 'Keys', run: () => shortcutSheetOpen.set(true) },
             { label: `Theme: ${THEME_WORDS[next].toLowerCase()}`, run: () => setTheme(next) },
           ],
         },
-        { items: [{ label: 'Sign out', run: () => signOut.mutate(undefined, { onError: notifyProblem }) }] },
+        {
+          items: [
+            { label: 'Sign out', run: () => signOut.mutate(undefined, { onError: notifyProblem }) },
+          ],
+        },
       ]}
       trigger={
-        <button type="button" className="grid size-7 shrink-0 place-items-center rounded-full border-0 bg-trough-deep text-caption font-semibold text-ink max-md:size-8">
+        <button
+          type="button"
+          className="grid size-7 shrink-0 place-items-center rounded-full border-0 bg-trough-deep text-caption font-semibold text-ink max-md:size-8"
+        >
           <span aria-hidden>{initials(me.name)}</span>
           <span className="sr-only">Your account: {me.name}</span>
         </button>

@@ -12,7 +12,11 @@ export interface Place {
 /** Four places for the thumb, on phones only. */
 export function BottomBar({ places }: { places: readonly Place[] }) {
   return (
-    <nav aria-label="Sections" className="fixed inset-x-0 bottom-0 z-20 grid border-t border-rule-firm bg-sheet pb-[env(safe-area-inset-bottom)] md:hidden" style={{ gridTemplateColumns: `repeat(${places.length}, 1fr)` }}>
+    <nav
+      aria-label="Sections"
+      className="fixed inset-x-0 bottom-0 z-20 grid border-t border-rule-firm bg-sheet pb-[env(safe-area-inset-bottom)] md:hidden"
+      style={{ gridTemplateColumns: `repeat(${places.length}, 1fr)` }}
+    >
       {places.map(({ to, label, icon, isExact }) => (
         <NavLink
           key={to}

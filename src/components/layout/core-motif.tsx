@@ -1,5 +1,9 @@
 import { seededRandom } from '#kernels/random.ts';
-import { RockPatternDefs, rockFill, type RockPattern } from '#src/components/charts/rock-patterns.tsx';
+import {
+  RockPatternDefs,
+  rockFill,
+  type RockPattern,
+} from '#src/components/charts/rock-patterns.tsx';
 
 interface Piece {
   from: number;
@@ -40,14 +44,17 @@ function inventHole(random: ReturnType<typeof seededRandom>, index: number): Hol
   lay(between(16, 24), 'slant');
   const base = at + between(60, 120);
   while (at < base) {
-    lay(between(2.200, 12), random.uniform() < 0.2 ? 'level' : 'dots');
+    lay(between(2.2, 12), random.uniform() < 0.2 ? 'level' : 'dots');
     lay(between(3, random.uniform() < 0.25 ? 28 : 12), 'slant');
   }
   const lower = at;
   const end = at + between(110, 220);
   while (at < end) {
     lay(between(18, 62), 'dots');
-    lay(between(3, 15), random.uniform() < 0.3 ? 'plus' : random.uniform() < 0.5 ? 'vees' : 'slant');
+    lay(
+      between(3, 15),
+      random.uniform() < 0.3 ? 'plus' : random.uniform() < 0.5 ? 'vees' : 'slant',
+    );
   }
   return { start, pieces, edges: [upper, lower] };
 }
@@ -63,19 +70,38 @@ const holes = inventHoles();
 export function CoreMotif({ className }: { className?: string }) {
   const height = HOLES * PITCH;
   return (
-    <svg viewBox={`0 0 ${WIDTH} ${height}`} width={WIDTH} height={height} aria-hidden className={className}>
+    <svg
+      viewBox={`0 0 ${WIDTH} ${height}`}
+      width={WIDTH}
+      height={height}
+      aria-hidden
+      className={className}
+    >
       <RockPatternDefs prefix="motif" />
       {holes.map((hole, index) => (
         <g key={index} transform={`translate(0 ${index * PITCH})`}>
           <rect width={WIDTH} height={34} rx={3} fill="var(--trough)" stroke="var(--trough-deep)" />
           {hole.pieces.map(({ from, to, rock }) => (
-            <rect key={from} x={from} y={5} width={to - from} height={CORE_PX} fill={rockFill(rock, 'motif')} stroke="var(--rock-mark)" strokeWidth={0.6} />
+            <rect
+              key={from}
+              x={from}
+              y={5}
+              width={to - from}
+              height={CORE_PX}
+              fill={rockFill(rock, 'motif')}
+              stroke="var(--rock-mark)"
+              strokeWidth={0.6}
+            />
           ))}
           {hole.edges.map((edge) => (
             <rect key={edge} x={edge - 2} y={2} width={4} height={30} fill="var(--copper)" />
           ))}
           {TICKS.map((tick) => (
-            <path key={tick} d={`M${tick * 21.950 + 0.500} 36v${tick % 5 === 0 ? 6 : 3}`} stroke="var(--rule-firm)" />
+            <path
+              key={tick}
+              d={`M${tick * 21.95 + 0.5} 36v${tick % 5 === 0 ? 6 : 3}`}
+              stroke="var(--rule-firm)"
+            />
           ))}
         </g>
       ))}

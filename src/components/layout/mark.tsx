@@ -3,7 +3,13 @@ import { cx } from '#src/lib/cx.ts';
 /** Three runs of core with the edge stepping down through them. */
 export function Mark({ className }: { className?: string }) {
   return (
-    <svg width="26" height="22" viewBox="0 0 26 22" aria-hidden className={cx('shrink-0', className)}>
+    <svg
+      width="26"
+      height="22"
+      viewBox="0 0 26 22"
+      aria-hidden
+      className={cx('shrink-0', className)}
+    >
       <path d="M1 4h24M1 11h24M1 18h24" stroke="var(--ink-2)" strokeWidth="4.5" />
       <path d="M9 4h2.500M14 11h2.500M19 18h2.500" stroke="var(--copper)" strokeWidth="4.5" />
     </svg>

@@ -25,9 +25,15 @@ export function PageHead({ title, before, finding, chips, actions }: Props) {
           <h1 className="min-w-0 font-read text-title">{title}</h1>
           {chips}
         </div>
-        {finding && <div className="max-w-[54rem] font-read text-finding text-pretty text-ink-2">{finding}</div>}
+        {finding && (
+          <div className="max-w-[54rem] font-read text-finding text-pretty text-ink-2">
+            {finding}
+          </div>
+        )}
       </div>
-      {actions && <div className="flex flex-wrap items-center gap-2 pt-0.5 md:justify-end">{actions}</div>}
+      {actions && (
+        <div className="flex flex-wrap items-center gap-2 pt-0.5 md:justify-end">{actions}</div>
+      )}
     </div>
   );
 }

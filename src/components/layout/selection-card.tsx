@@ -21,7 +21,10 @@ interface Props {
 export function SelectionCard({ count, unit, detail, onClear, children, actions }: Props) {
   return (
     <CardSlot>
-      <aside aria-label="Selection" className="flex h-full flex-col gap-2.5 overflow-auto border-rule bg-sheet px-3.5 py-3 max-lg:max-h-[40dvh] max-lg:border-t lg:w-64 lg:border-l">
+      <aside
+        aria-label="Selection"
+        className="flex h-full flex-col gap-2.5 overflow-auto border-rule bg-sheet px-3.5 py-3 max-lg:max-h-[40dvh] max-lg:border-t lg:w-64 lg:border-l"
+      >
         <div className="flex items-center gap-2">
           <h2 className="flex-1 text-head">Selection</h2>
           <IconButton icon={X} label="Clear the selection" onClick={onClear} />

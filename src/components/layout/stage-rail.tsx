@@ -14,7 +14,10 @@ interface Props {
 /** The stages in the order of the job, each with its state in words and as a run. */
 export function StageRail({ depositId, stages, foot }: Props) {
   return (
-    <nav aria-label="Stages" className="flex min-h-0 w-14 shrink-0 flex-col overflow-x-hidden overflow-y-auto border-r border-rule pt-2.5 max-md:hidden lg:w-[11.5rem]">
+    <nav
+      aria-label="Stages"
+      className="flex min-h-0 w-14 shrink-0 flex-col overflow-x-hidden overflow-y-auto border-r border-rule pt-2.5 max-md:hidden lg:w-[11.5rem]"
+    >
       <ol className="m-0 list-none p-0">
         {stages.map((stage, index) => (
           <li key={stage.key}>
@@ -22,14 +25,28 @@ export function StageRail({ depositId, stages, foot }: Props) {
           </li>
         ))}
       </ol>
-      {foot && <div className="mt-auto grid border-t border-rule px-3 py-2 text-caption text-ink-3 empty:hidden max-lg:hidden">{foot}</div>}
+      {foot && (
+        <div className="mt-auto grid border-t border-rule px-3 py-2 text-caption text-ink-3 empty:hidden max-lg:hidden">
+          {foot}
+        </div>
+      )}
     </nav>
   );
 }
 
-function StageLink({ depositId, stage, number }: { depositId: number; stage: Stage; number: number }) {
+function StageLink({
+  depositId,
+  stage,
+  number,
+}: {
+  depositId: number;
+  stage: Stage;
+  number: number;
+}) {
   const { key, state, word, waitsFor } = stage;
-  const title = [STAGE_NAMES[key], word, waitsFor && `waits for ${waitsFor}`].filter(Boolean).join(': ');
+  const title = [STAGE_NAMES[key], word, waitsFor && `waits for ${waitsFor}`]
+    .filter(Boolean)
+    .join(': ');
   return (
     <NavLink
       to={stagePath(depositId, key)}
@@ -37,9 +54,25 @@ function StageLink({ depositId, stage, number }: { depositId: number; stage: Sta
       title={title}
       className="group relative grid grid-cols-1 items-baseline px-2.5 pt-1 pb-2 text-ink no-underline hover:bg-trough focus-visible:-outline-offset-2 aria-[current=page]:bg-sheet aria-[current=page]:before:absolute aria-[current=page]:before:top-1 aria-[current=page]:before:bottom-0.5 aria-[current=page]:before:left-0 aria-[current=page]:before:w-[3px] aria-[current=page]:before:bg-copper lg:grid-cols-[1.5rem_1fr_auto] lg:pr-3"
     >
-      <span aria-hidden className="pb-1 font-mono text-small leading-none text-ink-3 lg:pb-0 lg:text-tick lg:leading-none">{number}</span>
-      <span className="text-body group-aria-[current=page]:font-semibold max-lg:sr-only">{STAGE_NAMES[key]}</span>
-      <span className={cx('text-caption max-lg:sr-only', state === 'attention' ? 'font-semibold text-copper' : state === 'stale' ? 'text-ink-2 italic' : 'text-ink-3')}>
+      <span
+        aria-hidden
+        className="pb-1 font-mono text-small leading-none text-ink-3 lg:pb-0 lg:text-tick lg:leading-none"
+      >
+        {number}
+      </span>
+      <span className="text-body group-aria-[current=page]:font-semibold max-lg:sr-only">
+        {STAGE_NAMES[key]}
+      </span>
+      <span
+        className={cx(
+          'text-caption max-lg:sr-only',
+          state === 'attention'
+            ? 'font-semibold text-copper'
+            : state === 'stale'
+              ? 'text-ink-2 italic'
+              : 'text-ink-3',
+        )}
+      >
         {word}
       </span>
       <StageRun state={state} />
@@ -49,7 +82,8 @@ function StageLink({ depositId, stage, number }: { depositId: number; stage: Sta
 
 /** Empty: dotted; ready: outline; attention: ink, a copper piece, bare; stale: hatch; done: solid. */
 function StageRun({ state }: { state: Stage['state'] }) {
-  const place = 'absolute bottom-[3px] right-2.5 left-2.5 h-1 lg:right-3 lg:left-[2.125rem] rounded-[1px]';
+  const place =
+    'absolute bottom-[3px] right-2.5 left-2.5 h-1 lg:right-3 lg:left-[2.125rem] rounded-[1px]';
   if (state === 'attention') {
     return (
       <span aria-hidden className={cx(place, 'grid grid-cols-[58fr_13fr_23fr] gap-[3%]')}>

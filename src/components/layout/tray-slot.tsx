@@ -36,14 +36,38 @@ export function TraySlot({ header, closedSummary, children }: Props) {
   }, [height]);
   return (
     <TrayPortal>
-      <section aria-label="Core tray" className="relative flex min-w-0 flex-col border-t border-rule-firm bg-paper" style={{ height }}>
-        {isOpen && <Grip height={height} onDrag={setDragged} onKeep={(next) => { setDragged(null); keep(next); }} />}
+      <section
+        aria-label="Core tray"
+        className="relative flex min-w-0 flex-col border-t border-rule-firm bg-paper"
+        style={{ height }}
+      >
+        {isOpen && (
+          <Grip
+            height={height}
+            onDrag={setDragged}
+            onKeep={(next) => {
+              setDragged(null);
+              keep(next);
+            }}
+          />
+        )}
         <header className="flex h-[34px] shrink-0 items-center gap-2 overflow-hidden pr-3 pl-5">
           <h2 className="text-body leading-none font-semibold whitespace-nowrap">Core tray</h2>
-          {isOpen ? <div className="flex min-w-0 flex-1 items-center gap-2">{header}</div> : <div className="min-w-0 flex-1 truncate text-caption text-ink-2">{closedSummary}</div>}
-          <IconButton icon={isOpen ? ChevronDown : ChevronUp} label={isOpen ? 'Close the tray' : 'Open the tray'} aria-expanded={isOpen} onClick={() => setOpen(!isOpen)} />
+          {isOpen ? (
+            <div className="flex min-w-0 flex-1 items-center gap-2">{header}</div>
+          ) : (
+            <div className="min-w-0 flex-1 truncate text-caption text-ink-2">{closedSummary}</div>
+          )}
+          <IconButton
+            icon={isOpen ? ChevronDown : ChevronUp}
+            label={isOpen ? 'Close the tray' : 'Open the tray'}
+            aria-expanded={isOpen}
+            onClick={() => setOpen(!isOpen)}
+          />
         </header>
-        {isOpen && <div className="min-h-0 flex-1 overflow-hidden">{children(height - HEADER_PX - 1)}</div>}
+        {isOpen && (
+          <div className="min-h-0 flex-1 overflow-hidden">{children(height - HEADER_PX - 1)}</div>
+        )}
       </section>
     </TrayPortal>
   );
@@ -60,9 +84,15 @@ interface GripProps {
 
 function Grip({ height, onDrag, onKeep }: GripProps) {
   const [start, setStart] = useState<{ y: number; height: number } | null>(null);
-  const heightAt = (event: PointerEvent) => (start ? clamp(start.height + start.y - event.clientY) : height);
+  const heightAt = (event: PointerEvent) =>
+    start ? clamp(start.height + start.y - event.clientY) : height;
   const onKeyDown = (event: KeyboardEvent) => {
-    const next = { ArrowUp: height + STEP_PX, ArrowDown: height - STEP_PX, Home: TRAY.least, End: TRAY.most }[event.key];
+    const next = {
+      ArrowUp: height + STEP_PX,
+      ArrowDown: height - STEP_PX,
+      Home: TRAY.least,
+      End: TRAY.most,
+    }[event.key];
     if (next === undefined) return;
     event.preventDefault();
     onKeep(clamp(next));

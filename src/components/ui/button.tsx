@@ -31,16 +31,22 @@ const SIZES: Record<ButtonSize, string> = {
   entry: 'h-[42px] gap-2 px-4 text-head max-md:h-11',
 };
 
-const looks = ({ kind = 'plain', size = 'normal', isWide, className }: Look, isUnavailable = false): string =>
+const looks = (
+  { kind = 'plain', size = 'normal', isWide, className }: Look,
+  isUnavailable = false,
+): string =>
   cx(
     'inline-flex shrink-0 items-center justify-center rounded-2 border font-ui leading-none font-medium whitespace-nowrap no-underline transition-colors',
     SIZES[size],
-    isUnavailable ? 'cursor-not-allowed border-dashed border-rule-firm bg-transparent text-ink-3' : KINDS[kind],
+    isUnavailable
+      ? 'cursor-not-allowed border-dashed border-rule-firm bg-transparent text-ink-3'
+      : KINDS[kind],
     isWide && 'w-full',
     className,
   );
 
-interface Props extends Look, Omit<ButtonHTMLAttributes<HTMLButtonElement>, 'disabled' | 'className'> {
+interface Props
+  extends Look, Omit<ButtonHTMLAttributes<HTMLButtonElement>, 'disabled' | 'className'> {
   ref?: Ref<HTMLButtonElement>;
   /** Why it cannot be used now; the button stays focusable and says so. */
   unavailable?: string | false | null | undefined;
@@ -48,7 +54,19 @@ interface Props extends Look, Omit<ButtonHTMLAttributes<HTMLButtonElement>, 'dis
   isBusy?: boolean;
 }
 
-export function Button({ kind, size, icon, isWide, className, unavailable, isBusy, children, onClick, type, ...rest }: Props) {
+export function Button({
+  kind,
+  size,
+  icon,
+  isWide,
+  className,
+  unavailable,
+  isBusy,
+  children,
+  onClick,
+  type,
+  ...rest
+}: Props) {
   const isOff = Boolean(unavailable) || isBusy;
   const button = (
     <button
@@ -70,7 +88,15 @@ export function Button({ kind, size, icon, isWide, className, unavailable, isBus
 interface LinkButtonProps extends Look, Omit<LinkProps, 'className'> {}
 
 /** A link that looks like a button: it goes somewhere and changes nothing. */
-export function LinkButton({ kind, size, icon, isWide, className, children, ...rest }: LinkButtonProps) {
+export function LinkButton({
+  kind,
+  size,
+  icon,
+  isWide,
+  className,
+  children,
+  ...rest
+}: LinkButtonProps) {
   return (
     <Link {...rest} className={looks({ kind, size, isWide, className })}>
       {icon && <Icon icon={icon} size={size === 'tiny' ? 13 : 15} />}

@@ -25,7 +25,15 @@ const SHAPES: Record<Tone, ReactNode> = {
 
 export function ToneMark({ tone, size = 10 }: { tone: Tone; size?: number }) {
   return (
-    <svg width={size} height={size} viewBox="0 0 10 10" fill="none" stroke="currentColor" aria-hidden className="shrink-0">
+    <svg
+      width={size}
+      height={size}
+      viewBox="0 0 10 10"
+      fill="none"
+      stroke="currentColor"
+      aria-hidden
+      className="shrink-0"
+    >
       {SHAPES[tone]}
     </svg>
   );
@@ -57,13 +65,41 @@ export function Chip({ tone = 'plain', children, title, className }: Props) {
 }
 
 /** A label that can be taken away: a hole in the tray, a filter in force. */
-export function TagChip({ children, onRemove, removeLabel, isMono }: { children: ReactNode; onRemove?: () => void; removeLabel?: string; isMono?: boolean }) {
+export function TagChip({
+  children,
+  onRemove,
+  removeLabel,
+  isMono,
+}: {
+  children: ReactNode;
+  onRemove?: () => void;
+  removeLabel?: string;
+  isMono?: boolean;
+}) {
   return (
-    <span className={cx('inline-flex h-6 items-center rounded-2 bg-trough pl-2 text-caption font-medium text-ink', !onRemove && 'pr-2', isMono && 'font-mono')}>
+    <span
+      className={cx(
+        'inline-flex h-6 items-center rounded-2 bg-trough pl-2 text-caption font-medium text-ink',
+        !onRemove && 'pr-2',
+        isMono && 'font-mono',
+      )}
+    >
       {children}
       {onRemove && (
-        <button type="button" aria-label={removeLabel ?? 'Remove'} onClick={onRemove} className="grid size-6 place-items-center rounded-1 border-0 bg-transparent text-ink-3 hover:text-ink">
-          <svg width="9" height="9" viewBox="0 0 10 10" stroke="currentColor" strokeWidth="1.4" aria-hidden>
+        <button
+          type="button"
+          aria-label={removeLabel ?? 'Remove'}
+          onClick={onRemove}
+          className="grid size-6 place-items-center rounded-1 border-0 bg-transparent text-ink-3 hover:text-ink"
+        >
+          <svg
+            width="9"
+            height="9"
+            viewBox="0 0 10 10"
+            stroke="currentColor"
+            strokeWidth="1.4"
+            aria-hidden
+          >
             <path d="m1.500 1.500 7 7m0-7-7 7" />
           </svg>
         </button>

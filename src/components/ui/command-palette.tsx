@@ -28,19 +28,35 @@ export function CommandPalette() {
     <Dialog.Root open={isOpen} onOpenChange={paletteOpen.set}>
       <Dialog.Portal>
         <Dialog.Overlay className={OVERLAY} />
-        <Dialog.Content aria-describedby={undefined} className={`${FLOATING} top-[10vh] w-[calc(100vw-2rem)] max-w-[34rem] overflow-hidden`}>
+        <Dialog.Content
+          aria-describedby={undefined}
+          className={`${FLOATING} top-[10vh] w-[calc(100vw-2rem)] max-w-[34rem] overflow-hidden`}
+        >
           <Dialog.Title className="sr-only">Find or do</Dialog.Title>
           <Cmdk ref={list} label="Find or do" loop onValueChange={setChosen}>
             <div className="flex items-center gap-2 border-b border-rule px-3">
               <Icon icon={Search} className="text-ink-3" />
-              <Cmdk.Input onValueChange={setTyped} placeholder="A stage, a deposit, a command" className="h-11 flex-1 border-0 bg-transparent text-body text-ink outline-none placeholder:text-ink-3" />
+              <Cmdk.Input
+                onValueChange={setTyped}
+                placeholder="A stage, a deposit, a command"
+                className="h-11 flex-1 border-0 bg-transparent text-body text-ink outline-none placeholder:text-ink-3"
+              />
               <kbd>Esc</kbd>
             </div>
-            <Cmdk.List label="Places and commands" className="max-h-[min(24rem,60dvh)] overflow-auto p-1">
-              <Cmdk.Empty className="px-2.5 py-3 text-body text-ink-2">Nothing of that name here.</Cmdk.Empty>
+            <Cmdk.List
+              label="Places and commands"
+              className="max-h-[min(24rem,60dvh)] overflow-auto p-1"
+            >
+              <Cmdk.Empty className="px-2.5 py-3 text-body text-ink-2">
+                Nothing of that name here.
+              </Cmdk.Empty>
               {groups.map((group) => (
                 <Cmdk.Group key={group} heading={group} className={GROUP}>
-                  {commands.filter((command) => command.group === group).map((command) => <Item key={command.id} command={command} />)}
+                  {commands
+                    .filter((command) => command.group === group)
+                    .map((command) => (
+                      <Item key={command.id} command={command} />
+                    ))}
                 </Cmdk.Group>
               ))}
             </Cmdk.List>
@@ -66,7 +82,12 @@ function Item({ command }: { command: Command }) {
     run();
   };
   return (
-    <Cmdk.Item value={id} keywords={[label, ...words]} onSelect={onSelect} className="flex min-h-8 cursor-pointer items-center gap-2 rounded-2 px-2.5 text-body text-ink data-[selected=true]:bg-trough data-[selected=true]:shadow-[inset_3px_0_0_var(--copper)] max-md:min-h-11">
+    <Cmdk.Item
+      value={id}
+      keywords={[label, ...words]}
+      onSelect={onSelect}
+      className="flex min-h-8 cursor-pointer items-center gap-2 rounded-2 px-2.5 text-body text-ink data-[selected=true]:bg-trough data-[selected=true]:shadow-[inset_3px_0_0_var(--copper)] max-md:min-h-11"
+    >
       <span className="min-w-0 flex-1 truncate">{label}</span>
       {keys && <kbd>{keysInWords(keys)}</kbd>}
     </Cmdk.Item>

@@ -18,7 +18,8 @@ interface Props {
 }
 
 export const OVERLAY = 'fixed inset-0 z-40 bg-[#1714118c]';
-export const FLOATING = 'opens fixed left-1/2 z-50 -translate-x-1/2 rounded-3 border border-rule bg-sheet text-ink shadow-float';
+export const FLOATING =
+  'opens fixed left-1/2 z-50 -translate-x-1/2 rounded-3 border border-rule bg-sheet text-ink shadow-float';
 
 /** Focus goes to the first thing to fill in; a dialog without one takes it itself. */
 function focusFirstField(event: Event): void {
@@ -30,7 +31,15 @@ function focusFirstField(event: Event): void {
 }
 
 /** Only for signing, sharing, and what cannot be undone; all else happens in place. */
-export function Dialog({ isOpen, onClose, title, description, children, actions, width = 'narrow' }: Props) {
+export function Dialog({
+  isOpen,
+  onClose,
+  title,
+  description,
+  children,
+  actions,
+  width = 'narrow',
+}: Props) {
   return (
     <Radix.Root open={isOpen} onOpenChange={(open) => !open && onClose()}>
       <Radix.Portal>
@@ -38,7 +47,11 @@ export function Dialog({ isOpen, onClose, title, description, children, actions,
         <Radix.Content
           {...(description ? {} : { 'aria-describedby': undefined })}
           onOpenAutoFocus={focusFirstField}
-          className={cx(FLOATING, 'top-[12vh] max-h-[80dvh] w-[calc(100vw-2rem)] overflow-auto p-4', width === 'narrow' ? 'max-w-[28rem]' : 'max-w-[44rem]')}
+          className={cx(
+            FLOATING,
+            'top-[12vh] max-h-[80dvh] w-[calc(100vw-2rem)] overflow-auto p-4',
+            width === 'narrow' ? 'max-w-[28rem]' : 'max-w-[44rem]',
+          )}
         >
           <div className="flex items-start gap-2">
             <Radix.Title className="flex-1 text-head">{title}</Radix.Title>
@@ -46,7 +59,11 @@ export function Dialog({ isOpen, onClose, title, description, children, actions,
               <IconButton icon={X} label="Close" />
             </Radix.Close>
           </div>
-          {description && <Radix.Description className="mt-1 text-body text-ink-2">{description}</Radix.Description>}
+          {description && (
+            <Radix.Description className="mt-1 text-body text-ink-2">
+              {description}
+            </Radix.Description>
+          )}
           {children && <div className="mt-3 grid gap-3">{children}</div>}
           {actions && <div className="mt-4 flex flex-wrap justify-end gap-2">{actions}</div>}
         </Radix.Content>
@@ -69,7 +86,16 @@ interface ConfirmProps {
 }
 
 /** Asks before what cannot be undone. */
-export function ConfirmDialog({ isOpen, onClose, title, description, confirmLabel, onConfirm, isBusy, children }: ConfirmProps) {
+export function ConfirmDialog({
+  isOpen,
+  onClose,
+  title,
+  description,
+  confirmLabel,
+  onConfirm,
+  isBusy,
+  children,
+}: ConfirmProps) {
   return (
     <Dialog
       isOpen={isOpen}

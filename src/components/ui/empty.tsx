@@ -13,7 +13,10 @@ interface Props {
 export function Empty({ children, action, className }: Props) {
   return (
     <div className={cx('grid justify-items-start gap-2 py-2 text-body text-ink-2', className)}>
-      <span aria-hidden className="block h-3 w-40 max-w-full rounded-1 border border-dotted border-rule-firm" />
+      <span
+        aria-hidden
+        className="block h-3 w-40 max-w-full rounded-1 border border-dotted border-rule-firm"
+      />
       <p className="max-w-[34rem] text-pretty">{children}</p>
       {action}
     </div>

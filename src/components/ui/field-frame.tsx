@@ -28,13 +28,26 @@ interface Props extends FieldLook {
 }
 
 /** Label above, hint under, error under with a mark and words. */
-export function FieldFrame({ label, hint, error, isOptional, isLabelHidden, className, children }: Props) {
+export function FieldFrame({
+  label,
+  hint,
+  error,
+  isOptional,
+  isLabelHidden,
+  className,
+  children,
+}: Props) {
   const id = useId();
   const message = errorText(error);
-  const describedBy = [hint ? `${id}-hint` : '', message ? `${id}-error` : ''].filter(Boolean).join(' ');
+  const describedBy = [hint ? `${id}-hint` : '', message ? `${id}-error` : '']
+    .filter(Boolean)
+    .join(' ');
   return (
     <div className={cx('grid min-w-0 content-start gap-[3px]', className)}>
-      <label htmlFor={id} className={isLabelHidden ? 'sr-only' : 'text-small font-medium text-ink-2'}>
+      <label
+        htmlFor={id}
+        className={isLabelHidden ? 'sr-only' : 'text-small font-medium text-ink-2'}
+      >
         {label}
         {isOptional && <span className="font-normal text-ink-3"> (optional)</span>}
       </label>

@@ -1,8 +1,15 @@
 import type { InputHTMLAttributes, ReactNode, Ref, TextareaHTMLAttributes } from 'react';
 import { cx } from '#src/lib/cx.ts';
-import { CONTROL, CONTROL_HEIGHTS, FieldFrame, type ControlSize, type FieldLook } from './field-frame.tsx';
+import {
+  CONTROL,
+  CONTROL_HEIGHTS,
+  FieldFrame,
+  type ControlSize,
+  type FieldLook,
+} from './field-frame.tsx';
 
-interface Props extends FieldLook, Omit<InputHTMLAttributes<HTMLInputElement>, 'size' | 'className' | 'id'> {
+interface Props
+  extends FieldLook, Omit<InputHTMLAttributes<HTMLInputElement>, 'size' | 'className' | 'id'> {
   ref?: Ref<HTMLInputElement>;
   controlSize?: ControlSize;
   /** Unit at the right of the control. */
@@ -11,7 +18,18 @@ interface Props extends FieldLook, Omit<InputHTMLAttributes<HTMLInputElement>, '
 }
 
 /** A one-line input. Spread `register('name')` into it; `error` takes the form library's error. */
-export function Field({ label, hint, error, isOptional, isLabelHidden, className, controlSize = 'normal', unit, isMono, ...input }: Props) {
+export function Field({
+  label,
+  hint,
+  error,
+  isOptional,
+  isLabelHidden,
+  className,
+  controlSize = 'normal',
+  unit,
+  isMono,
+  ...input
+}: Props) {
   return (
     <FieldFrame {...{ label, hint, error, isOptional, isLabelHidden, className }}>
       {({ id, describedBy, isInvalid }) => (
@@ -30,12 +48,22 @@ export function Field({ label, hint, error, isOptional, isLabelHidden, className
   );
 }
 
-interface AreaProps extends FieldLook, Omit<TextareaHTMLAttributes<HTMLTextAreaElement>, 'className' | 'id'> {
+interface AreaProps
+  extends FieldLook, Omit<TextareaHTMLAttributes<HTMLTextAreaElement>, 'className' | 'id'> {
   ref?: Ref<HTMLTextAreaElement>;
 }
 
 /** Several lines: reasons, rationale, limits. */
-export function TextArea({ label, hint, error, isOptional, isLabelHidden, className, rows = 3, ...area }: AreaProps) {
+export function TextArea({
+  label,
+  hint,
+  error,
+  isOptional,
+  isLabelHidden,
+  className,
+  rows = 3,
+  ...area
+}: AreaProps) {
   return (
     <FieldFrame {...{ label, hint, error, isOptional, isLabelHidden, className }}>
       {({ id, describedBy, isInvalid }) => (

@@ -1,4 +1,5 @@
 import { Copy, Download } from 'lucide-react';
+import type { RefObject } from 'react';
 import { toCsv, type Cell } from '#src/lib/delimited.ts';
 import { saveFile } from '#src/lib/download.ts';
 import { notify, notifyProblem } from '#src/lib/toasts.ts';
@@ -19,7 +20,10 @@ interface Options {
 }
 
 /** Ways to take a picture away, for a plate's download menu: SVG, PNG at twice its size, copy, CSV. */
-export function figureExports(drawn: () => Drawn | null, { fileName, caption, table }: Options): MenuItem[] {
+export function figureExports(
+  drawn: () => Drawn | null,
+  { fileName, caption, table }: Options,
+): MenuItem[] {
   const withDrawn = (work: (figure: Drawn) => Promise<void>) => () => {
     const figure = drawn();
     if (figure) void work(figure).catch(notifyProblem);
@@ -29,7 +33,9 @@ export function figureExports(drawn: () => Drawn | null, { fileName, caption, ta
       label: 'SVG',
       hint: 'lines and type, for a report',
       icon: Download,
-      run: withDrawn(async (figure) => saveFile(`${fileName}.svg`, await figure.toSvg(caption), 'image/svg+xml;charset=utf-8')),
+      run: withDrawn(async (figure) =>
+        saveFile(`${fileName}.svg`, await figure.toSvg(caption), 'image/svg+xml;charset=utf-8'),
+      ),
     },
     {
       label: 'PNG',
@@ -53,12 +59,18 @@ export function figureExports(drawn: () => Drawn | null, { fileName, caption, ta
   return items;
 }
 
-const copyPicture = (caption: string) => async (figure: Drawn): Promise<void> => {
-  const png = await figure.toPng(caption, 2);
-  if (typeof ClipboardItem === 'undefined') {
-    notify('The browser did not let the page write to the clipboard. Take the PNG.');
-    return;
-  }
-  await navigator.clipboard.write([new ClipboardItem({ 'image/png': png })]);
-  notify('Picture copied');
-};
+/** The same for a chart's own ref; the ref is read when an item is taken, never while rendering. */
+export const useFigureExports = (chart: RefObject<Drawn | null>, options: Options): MenuItem[] =>
+  figureExports(() => chart.current, options);
+
+const copyPicture =
+  (caption: string) =>
+  async (figure: Drawn): Promise<void> => {
+    const png = await figure.toPng(caption, 2);
+    if (typeof ClipboardItem === 'undefined') {
+      notify('The browser did not let the page write to the clipboard. Take the PNG.');
+      return;
+    }
+    await navigator.clipboard.write([new ClipboardItem({ 'image/png': png })]);
+    notify('Picture copied');
+  };

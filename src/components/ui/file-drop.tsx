@@ -17,7 +17,15 @@ interface Props {
 }
 
 /** A bare trough to lay files in: drop them, or browse; several at once. */
-export function FileDrop({ label, hint, endings, onFiles, isSingle, unavailable, className }: Props) {
+export function FileDrop({
+  label,
+  hint,
+  endings,
+  onFiles,
+  isSingle,
+  unavailable,
+  className,
+}: Props) {
   const id = useId();
   const input = useRef<HTMLInputElement>(null);
   const [isOver, setOver] = useState(false);
@@ -25,7 +33,9 @@ export function FileDrop({ label, hint, endings, onFiles, isSingle, unavailable,
   const take = (list: FileList | null) => {
     if (!list || unavailable) return;
     const files = Array.from(list);
-    const good = files.filter(({ name }) => endings.some((ending) => name.toLowerCase().endsWith(ending)));
+    const good = files.filter(({ name }) =>
+      endings.some((ending) => name.toLowerCase().endsWith(ending)),
+    );
     const bad = files.filter((file) => !good.includes(file)).map(({ name }) => name);
     setRefused(bad.length > 0 ? `Expected ${endings.join(', ')}; found ${bad.join(', ')}` : '');
     if (good.length > 0) onFiles(isSingle ? good.slice(0, 1) : good);
@@ -43,10 +53,15 @@ export function FileDrop({ label, hint, endings, onFiles, isSingle, unavailable,
           onDrag(event, false);
           take(event.dataTransfer.files);
         }}
-        className={cx('flex flex-wrap items-center gap-x-3 gap-y-2 rounded-2 border border-dashed px-4 py-4 transition-colors', isOver ? 'border-copper bg-copper-wash' : 'border-rule-firm bg-trough')}
+        className={cx(
+          'flex flex-wrap items-center gap-x-3 gap-y-2 rounded-2 border border-dashed px-4 py-4 transition-colors',
+          isOver ? 'border-copper bg-copper-wash' : 'border-rule-firm bg-trough',
+        )}
       >
         <div className="min-w-0 flex-1">
-          <label htmlFor={id} className="text-body font-semibold text-ink">{label}</label>
+          <label htmlFor={id} className="text-body font-semibold text-ink">
+            {label}
+          </label>
           {hint && <p className="text-caption text-ink-2">{hint}</p>}
         </div>
         <Button icon={Upload} unavailable={unavailable} onClick={() => input.current?.click()}>
@@ -66,7 +81,11 @@ export function FileDrop({ label, hint, endings, onFiles, isSingle, unavailable,
           }}
         />
       </div>
-      {refused && <div role="alert" className="mt-1"><ErrorLine message={refused} /></div>}
+      {refused && (
+        <div role="alert" className="mt-1">
+          <ErrorLine message={refused} />
+        </div>
+      )}
     </div>
   );
 }

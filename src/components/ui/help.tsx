@@ -19,7 +19,14 @@ export function HelpButton({ subject, help }: { subject: string; help: HelpText 
         <IconButton icon={CircleHelp} label={`Help: ${subject}`} />
       </Popover.Trigger>
       <Popover.Portal>
-        <Popover.Content side="bottom" align="end" sideOffset={4} collisionPadding={8} aria-label={`Help: ${subject}`} className="opens z-40 grid w-80 max-w-[calc(100vw-2rem)] gap-1.5 rounded-3 border border-rule bg-sheet p-3 text-small text-ink shadow-float">
+        <Popover.Content
+          side="bottom"
+          align="end"
+          sideOffset={4}
+          collisionPadding={8}
+          aria-label={`Help: ${subject}`}
+          className="opens z-40 grid w-80 max-w-[calc(100vw-2rem)] gap-1.5 rounded-3 border border-rule bg-sheet p-3 text-small text-ink shadow-float"
+        >
           <p className="font-semibold">{subject}</p>
           <div>{help.text}</div>
           {help.caution && (

@@ -36,11 +36,23 @@ export function Menu({ trigger, groups, align = 'end', head }: Props) {
     <DropdownMenu.Root modal={false}>
       <DropdownMenu.Trigger asChild>{trigger}</DropdownMenu.Trigger>
       <DropdownMenu.Portal>
-        <DropdownMenu.Content align={align} sideOffset={5} collisionPadding={8} className="opens z-40 max-h-[var(--radix-dropdown-menu-content-available-height)] max-w-80 min-w-48 overflow-auto rounded-3 border border-rule bg-sheet p-1 shadow-float">
+        <DropdownMenu.Content
+          align={align}
+          sideOffset={5}
+          collisionPadding={8}
+          className="opens z-40 max-h-[var(--radix-dropdown-menu-content-available-height)] max-w-80 min-w-48 overflow-auto rounded-3 border border-rule bg-sheet p-1 shadow-float"
+        >
           {head && <div className="border-b border-rule px-2.5 pt-1 pb-2 text-small">{head}</div>}
           {groups.map((group, index) => (
-            <DropdownMenu.Group key={group.heading ?? index} className={cx(index > 0 && 'mt-1 border-t border-rule pt-1')}>
-              {group.heading && <DropdownMenu.Label className="px-2.5 py-1 text-caption font-semibold text-ink-3">{group.heading}</DropdownMenu.Label>}
+            <DropdownMenu.Group
+              key={group.heading ?? index}
+              className={cx(index > 0 && 'mt-1 border-t border-rule pt-1')}
+            >
+              {group.heading && (
+                <DropdownMenu.Label className="px-2.5 py-1 text-caption font-semibold text-ink-3">
+                  {group.heading}
+                </DropdownMenu.Label>
+              )}
               {group.items.map((item, at) => (
                 <Item key={at} item={item} />
               ))}
@@ -61,14 +73,20 @@ function Item({ item }: { item: MenuItem }) {
       aria-current={isChosen || undefined}
       className={cx(
         'flex min-h-7 items-center gap-2 rounded-2 px-2.5 py-1 text-body outline-none data-highlighted:bg-trough max-md:min-h-11',
-        unavailable ? 'cursor-not-allowed text-ink-3' : isGrave ? 'cursor-pointer text-bad' : 'cursor-pointer text-ink',
+        unavailable
+          ? 'cursor-not-allowed text-ink-3'
+          : isGrave
+            ? 'cursor-pointer text-bad'
+            : 'cursor-pointer text-ink',
         isChosen && 'font-semibold shadow-[inset_3px_0_0_var(--copper)]',
       )}
     >
       {icon && <Icon icon={icon} />}
       <span className="min-w-0 flex-1">
         <span className="block truncate">{label}</span>
-        {(hint || unavailable) && <span className="block text-caption font-normal text-ink-3">{unavailable ?? hint}</span>}
+        {(hint || unavailable) && (
+          <span className="block text-caption font-normal text-ink-3">{unavailable ?? hint}</span>
+        )}
       </span>
     </DropdownMenu.Item>
   );

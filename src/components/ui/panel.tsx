@@ -14,12 +14,29 @@ interface Props {
 }
 
 /** A floating sheet under its button: settings of a plot, the job tray. */
-export function Panel({ trigger, label, children, align = 'end', className, isOpen, onOpenChange }: Props) {
+export function Panel({
+  trigger,
+  label,
+  children,
+  align = 'end',
+  className,
+  isOpen,
+  onOpenChange,
+}: Props) {
   return (
     <Popover.Root {...(isOpen === undefined ? {} : { open: isOpen })} onOpenChange={onOpenChange}>
       <Popover.Trigger asChild>{trigger}</Popover.Trigger>
       <Popover.Portal>
-        <Popover.Content aria-label={label} align={align} sideOffset={5} collisionPadding={8} className={cx('opens z-40 max-h-[var(--radix-popover-content-available-height)] max-w-[calc(100vw-1rem)] overflow-auto rounded-3 border border-rule bg-sheet p-3 text-small text-ink shadow-float', className ?? 'w-80')}>
+        <Popover.Content
+          aria-label={label}
+          align={align}
+          sideOffset={5}
+          collisionPadding={8}
+          className={cx(
+            'opens z-40 max-h-[var(--radix-popover-content-available-height)] max-w-[calc(100vw-1rem)] overflow-auto rounded-3 border border-rule bg-sheet p-3 text-small text-ink shadow-float',
+            className ?? 'w-80',
+          )}
+        >
           {children}
         </Popover.Content>
       </Popover.Portal>

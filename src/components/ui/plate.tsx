@@ -47,16 +47,38 @@ interface Props {
 
 /** A sheet hanging from a firm rule: one picture, table or form with its title and its caption. */
 export function Plate(props: Props) {
-  const { title, qualifier, tools, exports, help, caption, stale, error, onRetry, busy, empty, tone = 'plain', isFlush, className, children } = props;
+  const {
+    title,
+    qualifier,
+    tools,
+    exports,
+    help,
+    caption,
+    stale,
+    error,
+    onRetry,
+    busy,
+    empty,
+    tone = 'plain',
+    isFlush,
+    className,
+    children,
+  } = props;
   const id = useId();
   const isBusyShown = useDelayed(Boolean(busy), 300);
   return (
     <section
       aria-labelledby={id}
       aria-busy={Boolean(busy) || undefined}
-      className={cx('relative flex min-w-0 flex-col rounded-b-2 border border-t-2 border-rule bg-sheet', tone === 'signing' ? 'border-t-copper' : 'border-t-ink-3', className)}
+      className={cx(
+        'relative flex min-w-0 flex-col rounded-b-2 border border-t-2 border-rule bg-sheet',
+        tone === 'signing' ? 'border-t-copper' : 'border-t-ink-3',
+        className,
+      )}
     >
-      {stale && <span aria-hidden className="hatch absolute inset-x-[-1px] -top-0.5 h-[5px] bg-sheet" />}
+      {stale && (
+        <span aria-hidden className="hatch absolute inset-x-[-1px] -top-0.5 h-[5px] bg-sheet" />
+      )}
       {isBusyShown && busy && (
         <div className="absolute inset-x-[-1px] -top-0.5">
           <ProgressRun value={busy.progress} label={`${title}: ${busy.phase ?? 'at work'}`} />
@@ -64,21 +86,49 @@ export function Plate(props: Props) {
       )}
       <header className="flex min-h-[30px] items-center gap-x-2 gap-y-1 px-3 pt-[5px] pr-2 pb-[3px] max-md:flex-wrap">
         <div className="flex min-w-0 flex-1 flex-wrap items-center gap-x-2 max-md:basis-1/2">
-          <h2 id={id} className="text-body font-semibold">{title}</h2>
+          <h2 id={id} className="text-body font-semibold">
+            {title}
+          </h2>
           {qualifier && <span className="min-w-0 text-caption text-ink-3">{qualifier}</span>}
           {stale && <Chip tone="stale">stale: {stale}</Chip>}
         </div>
-        {tools && <div className="flex shrink-0 flex-wrap items-center gap-2 max-md:max-w-full">{tools}</div>}
-        {exports && exports.length > 0 && <Menu trigger={<IconButton icon={Download} label={`Download: ${title}`} />} groups={[{ items: exports }]} />}
+        {tools && (
+          <div className="flex shrink-0 flex-wrap items-center gap-2 max-md:max-w-full">
+            {tools}
+          </div>
+        )}
+        {exports && exports.length > 0 && (
+          <Menu
+            trigger={<IconButton icon={Download} label={`Download: ${title}`} />}
+            groups={[{ items: exports }]}
+          />
+        )}
         {help && <HelpButton subject={title} help={help} />}
       </header>
       <div className="relative flex min-h-0 min-w-0 flex-1 flex-col">
         {isBusyShown && busy && <BusyLine busy={busy} />}
-        <div className={cx('min-h-0 min-w-0 flex-1 transition-opacity', !isFlush && 'px-3 pb-2', isBusyShown && 'opacity-40')}>
-          {error ? <Problem error={error} {...(onRetry ? { action: { label: 'Try again', run: onRetry } } : {})} /> : (empty ?? children)}
+        <div
+          className={cx(
+            'min-h-0 min-w-0 flex-1 transition-opacity',
+            !isFlush && 'px-3 pb-2',
+            isBusyShown && 'opacity-40',
+          )}
+        >
+          {error ? (
+            <Problem
+              error={error}
+              {...(onRetry ? { action: { label: 'Try again', run: onRetry } } : {})}
+            />
+          ) : (
+            (empty ?? children)
+          )}
         </div>
       </div>
-      {caption && <footer className="border-t border-dotted border-rule px-3 pt-1 pb-1.5 text-caption text-ink-3">{caption}</footer>}
+      {caption && (
+        <footer className="border-t border-dotted border-rule px-3 pt-1 pb-1.5 text-caption text-ink-3">
+          {caption}
+        </footer>
+      )}
     </section>
   );
 }

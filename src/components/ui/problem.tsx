@@ -16,7 +16,13 @@ interface Props {
 export function Problem({ error, action, children, className }: Props) {
   const { title, detail, fields, requestId } = describe(error);
   return (
-    <div role="alert" className={cx('rounded-2 border border-bad bg-bad-wash px-3 py-2 text-small text-ink', className)}>
+    <div
+      role="alert"
+      className={cx(
+        'rounded-2 border border-bad bg-bad-wash px-3 py-2 text-small text-ink',
+        className,
+      )}
+    >
       <p className="flex items-baseline gap-1.5 font-semibold text-bad">
         <ToneMark tone="bad" />
         {title}

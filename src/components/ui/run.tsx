@@ -33,7 +33,10 @@ export function Run({ parts, label, heightPx = 12, notches = [], className }: Pr
     <div
       role="img"
       aria-label={description}
-      className={cx('relative flex overflow-hidden rounded-1 border border-trough-deep bg-trough p-px', className)}
+      className={cx(
+        'relative flex overflow-hidden rounded-1 border border-trough-deep bg-trough p-px',
+        className,
+      )}
       style={{ height: heightPx + 4 }}
     >
       <div className="relative flex w-full">
@@ -44,12 +47,18 @@ export function Run({ parts, label, heightPx = 12, notches = [], className }: Pr
             className={cx('block h-full shrink-0', PART_LOOKS[part.look ?? 'solid'])}
             style={{
               width: `${Math.max(0, Math.min(1, part.share)) * 100}%`,
-              backgroundColor: (part.look ?? 'solid') === 'solid' ? (part.fill ?? 'var(--ink-3)') : 'var(--sheet)',
+              backgroundColor:
+                (part.look ?? 'solid') === 'solid' ? (part.fill ?? 'var(--ink-3)') : 'var(--sheet)',
             }}
           />
         ))}
         {notches.map((notch) => (
-          <span key={notch} aria-hidden className="absolute inset-y-0 w-[1.5px] -translate-x-1/2 bg-trough" style={{ left: `${notch * 100}%` }} />
+          <span
+            key={notch}
+            aria-hidden
+            className="absolute inset-y-0 w-[1.5px] -translate-x-1/2 bg-trough"
+            style={{ left: `${notch * 100}%` }}
+          />
         ))}
       </div>
     </div>
@@ -57,16 +66,28 @@ export function Run({ parts, label, heightPx = 12, notches = [], className }: Pr
 }
 
 /** Shares as a thin edged bar: groups of a selection, codes of a domain. */
-export function ShareBar({ parts, label, heightPx = 14 }: Pick<Props, 'parts' | 'label' | 'heightPx'>) {
+export function ShareBar({
+  parts,
+  label,
+  heightPx = 14,
+}: Pick<Props, 'parts' | 'label' | 'heightPx'>) {
   const description = `${label}: ${parts.map((part) => `${part.label} ${Math.round(part.share * 100)} %`).join(', ')}`;
   return (
-    <div role="img" aria-label={description} className="flex overflow-hidden rounded-1 border border-rule-firm bg-trough" style={{ height: heightPx }}>
+    <div
+      role="img"
+      aria-label={description}
+      className="flex overflow-hidden rounded-1 border border-rule-firm bg-trough"
+      style={{ height: heightPx }}
+    >
       {parts.map((part, index) => (
         <span
           key={index}
           title={`${part.label}, ${Math.round(part.share * 1000) / 10} %`}
           className={cx('block h-full', part.look === 'hatch' && 'hatch')}
-          style={{ width: `${part.share * 100}%`, backgroundColor: part.look === 'hatch' ? 'var(--sheet)' : (part.fill ?? 'var(--ink-3)') }}
+          style={{
+            width: `${part.share * 100}%`,
+            backgroundColor: part.look === 'hatch' ? 'var(--sheet)' : (part.fill ?? 'var(--ink-3)'),
+          }}
         />
       ))}
     </div>
@@ -93,7 +114,10 @@ export function ProgressRun({ value, label, heightPx = 4 }: ProgressProps) {
       style={{ height: heightPx }}
     >
       <span
-        className={cx('block h-full bg-copper-fill', value === null ? 'drift w-2/5' : 'transition-[width]')}
+        className={cx(
+          'block h-full bg-copper-fill',
+          value === null ? 'drift w-2/5' : 'transition-[width]',
+        )}
         style={value === null ? undefined : { width: `${Math.max(0.01, value) * 100}%` }}
       />
     </div>

@@ -18,13 +18,25 @@ interface Props<Value extends string> {
 }
 
 /** One of a few views or tools, side by side. */
-export function Segmented<Value extends string>({ label, segments, value, onPick, size = 'tiny' }: Props<Value>) {
+export function Segmented<Value extends string>({
+  label,
+  segments,
+  value,
+  onPick,
+  size = 'tiny',
+}: Props<Value>) {
   const pick = (picked: string) => {
     const segment = segments.find((candidate) => candidate.value === picked);
     if (segment) onPick(segment.value);
   };
   return (
-    <ToggleGroup.Root type="single" aria-label={label} value={value} onValueChange={pick} className="inline-flex max-w-full overflow-x-auto rounded-2 border border-rule-firm bg-sheet">
+    <ToggleGroup.Root
+      type="single"
+      aria-label={label}
+      value={value}
+      onValueChange={pick}
+      className="inline-flex max-w-full overflow-x-auto rounded-2 border border-rule-firm bg-sheet"
+    >
       {segments.map((segment) => (
         <ToggleGroup.Item
           key={segment.value}

@@ -1,6 +1,12 @@
 import type { Ref, SelectHTMLAttributes } from 'react';
 import { cx } from '#src/lib/cx.ts';
-import { CONTROL, CONTROL_HEIGHTS, FieldFrame, type ControlSize, type FieldLook } from './field-frame.tsx';
+import {
+  CONTROL,
+  CONTROL_HEIGHTS,
+  FieldFrame,
+  type ControlSize,
+  type FieldLook,
+} from './field-frame.tsx';
 
 export interface SelectOption<Value extends string = string> {
   value: Value;
@@ -10,7 +16,9 @@ export interface SelectOption<Value extends string = string> {
 }
 
 interface Props<Value extends string>
-  extends FieldLook, Omit<SelectHTMLAttributes<HTMLSelectElement>, 'size' | 'className' | 'id' | 'children'> {
+  extends
+    FieldLook,
+    Omit<SelectHTMLAttributes<HTMLSelectElement>, 'size' | 'className' | 'id' | 'children'> {
   ref?: Ref<HTMLSelectElement>;
   options: readonly SelectOption<Value>[];
   controlSize?: ControlSize;
@@ -20,7 +28,17 @@ interface Props<Value extends string>
 
 /** The browser's own list, which every device and reader knows, in house dress. */
 export function Select<Value extends string>({
-  label, hint, error, isOptional, isLabelHidden, className, options, controlSize = 'normal', onPick, onChange, ...select
+  label,
+  hint,
+  error,
+  isOptional,
+  isLabelHidden,
+  className,
+  options,
+  controlSize = 'normal',
+  onPick,
+  onChange,
+  ...select
 }: Props<Value>) {
   return (
     <FieldFrame {...{ label, hint, error, isOptional, isLabelHidden, className }}>
@@ -54,6 +72,12 @@ function Options({ options }: { options: readonly SelectOption[] }) {
           {label}
         </option>
       ));
-    return group === undefined ? items : <optgroup key={group} label={group}>{items}</optgroup>;
+    return group === undefined ? (
+      items
+    ) : (
+      <optgroup key={group} label={group}>
+        {items}
+      </optgroup>
+    );
   });
 }

@@ -23,15 +23,30 @@ export function ShortcutSheet() {
     <Dialog isOpen={isOpen} onClose={() => shortcutSheetOpen.set(false)} title="Keys" width="wide">
       <div className="grid gap-x-6 gap-y-4 md:grid-cols-2">
         {groups.map((group) => (
-          <KeyList key={group} heading={group} entries={withKeys.filter((command) => command.group === group).map(({ id, label, keys }) => ({ id, label, keys: keysInWords(keys) }))} />
+          <KeyList
+            key={group}
+            heading={group}
+            entries={withKeys
+              .filter((command) => command.group === group)
+              .map(({ id, label, keys }) => ({ id, label, keys: keysInWords(keys) }))}
+          />
         ))}
-        <KeyList heading="In place" entries={IN_PLACE.map((entry) => ({ ...entry, id: entry.label }))} />
+        <KeyList
+          heading="In place"
+          entries={IN_PLACE.map((entry) => ({ ...entry, id: entry.label }))}
+        />
       </div>
     </Dialog>
   );
 }
 
-function KeyList({ heading, entries }: { heading: string; entries: readonly { id: string; label: string; keys: string }[] }) {
+function KeyList({
+  heading,
+  entries,
+}: {
+  heading: string;
+  entries: readonly { id: string; label: string; keys: string }[];
+}) {
   return (
     <section>
       <h3 className="mb-1 text-caption font-semibold text-ink-3">{heading}</h3>

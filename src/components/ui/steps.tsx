@@ -34,11 +34,17 @@ export function Steps({ label, steps, current, onPick, className }: Props) {
           )}
         >
           {onPick && index !== here && !step.waitsFor ? (
-            <button type="button" onClick={() => onPick(step.key)} className="-my-1 min-h-6 max-w-full truncate border-0 bg-transparent p-0 text-left hover:text-copper hover:underline">
+            <button
+              type="button"
+              onClick={() => onPick(step.key)}
+              className="-my-1 min-h-6 max-w-full truncate border-0 bg-transparent p-0 text-left hover:text-copper hover:underline"
+            >
               {step.label}
             </button>
           ) : (
-            <span title={step.waitsFor} className="block truncate">{step.label}</span>
+            <span title={step.waitsFor} className="block truncate">
+              {step.label}
+            </span>
           )}
         </li>
       ))}

@@ -14,7 +14,10 @@ export function Toasts() {
       {notes.map((note) => (
         <Note key={note.id} note={note} />
       ))}
-      <Toast.Viewport className="pointer-events-none fixed bottom-[calc(var(--tray-now,0px)+0.75rem)] left-1/2 z-50 m-0 flex w-[min(34rem,calc(100vw-2rem))] -translate-x-1/2 list-none flex-col gap-2 p-0 max-md:bottom-20" />
+      <Toast.Viewport
+        label="Notices ({hotkey})"
+        className="pointer-events-none fixed bottom-[calc(var(--tray-now,0px)+0.75rem)] left-1/2 z-50 m-0 flex w-[min(34rem,calc(100vw-2rem))] -translate-x-1/2 list-none flex-col gap-2 p-0 max-md:bottom-20"
+      />
     </Toast.Provider>
   );
 }
@@ -29,10 +32,16 @@ function Note({ note }: { note: ToastNote }) {
         note.tone === 'bad' ? 'border-bad' : 'border-rule',
       )}
     >
-      <Toast.Title className={cx('min-w-0 flex-1', note.tone === 'bad' && 'text-bad')}>{note.text}</Toast.Title>
+      <Toast.Title className={cx('min-w-0 flex-1', note.tone === 'bad' && 'text-bad')}>
+        {note.text}
+      </Toast.Title>
       {action && (
         <Toast.Action asChild altText={action.label}>
-          <button type="button" onClick={action.run} className="h-7 rounded-2 border-0 bg-transparent px-2 font-medium text-copper underline hover:bg-trough">
+          <button
+            type="button"
+            onClick={action.run}
+            className="h-7 rounded-2 border-0 bg-transparent px-2 font-medium text-copper underline hover:bg-trough"
+          >
             {action.label}
           </button>
         </Toast.Action>

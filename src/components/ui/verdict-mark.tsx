@@ -12,7 +12,10 @@ export const VERDICT_WORDS: Record<Verdict, string> = {
 /** One hump, one with a dashed shoulder, two humps, a flat line. */
 const HUMPS: Record<Verdict, { path: string; dash?: string }> = {
   single: { path: 'M1 13C4 13 5 3 9 3s5 10 8 10' },
-  suspect: { path: 'M1 13C3 13 4 3 7 3c2.600 0 2.600 5 5 5.600C14 9.200 14.500 13 17 13', dash: '2.500 1.600' },
+  suspect: {
+    path: 'M1 13C3 13 4 3 7 3c2.600 0 2.600 5 5 5.600C14 9.200 14.500 13 17 13',
+    dash: '2.500 1.600',
+  },
   mixed: { path: 'M1 13C3 13 3 4 5.500 4S8 11 9 11s1.500-8.500 4-8.500S15 13 17 13' },
   'too-few': { path: 'M1 12.500h16' },
 };
@@ -34,7 +37,17 @@ const WASHES: Record<Verdict, string> = {
 export function VerdictIcon({ verdict }: { verdict: Verdict }) {
   const { path, dash } = HUMPS[verdict];
   return (
-    <svg width="18" height="15" viewBox="0 0 18 15" fill="none" stroke="currentColor" strokeWidth="1.700" strokeLinecap="round" aria-hidden className="shrink-0">
+    <svg
+      width="18"
+      height="15"
+      viewBox="0 0 18 15"
+      fill="none"
+      stroke="currentColor"
+      strokeWidth="1.700"
+      strokeLinecap="round"
+      aria-hidden
+      className="shrink-0"
+    >
       <path d={path} strokeDasharray={dash} />
     </svg>
   );
@@ -43,7 +56,13 @@ export function VerdictIcon({ verdict }: { verdict: Verdict }) {
 /** A mixing verdict, always with its word. */
 export function VerdictMark({ verdict, className }: { verdict: Verdict; className?: string }) {
   return (
-    <span className={cx('inline-flex items-center gap-[5px] text-small leading-5 font-medium whitespace-nowrap', COLOURS[verdict], className)}>
+    <span
+      className={cx(
+        'inline-flex items-center gap-[5px] text-small leading-5 font-medium whitespace-nowrap',
+        COLOURS[verdict],
+        className,
+      )}
+    >
       <VerdictIcon verdict={verdict} />
       {VERDICT_WORDS[verdict]}
     </span>
@@ -69,7 +88,8 @@ export function VerdictCell({ verdict, label, isPressed, onPress }: CellProps) {
       className={cx(
         'grid w-full min-w-[46px] justify-items-center rounded-2 border border-transparent px-px pb-0.5 text-tick leading-[11px] hover:outline hover:outline-rule-firm',
         WASHES[verdict],
-        isPressed && 'outline-2 -outline-offset-1 outline-copper hover:outline-2 hover:outline-copper',
+        isPressed &&
+          'outline-2 -outline-offset-1 outline-copper hover:outline-2 hover:outline-copper',
       )}
     >
       <VerdictIcon verdict={verdict} />

@@ -1,8 +1,16 @@
 const BROWSERS: readonly (readonly [RegExp, string])[] = [
-  [/Edg\//, 'Edge'], [/OPR\//, 'Opera'], [/Firefox\//, 'Firefox'], [/Chrom(e|ium)\//, 'Chrome or Chromium'], [/Safari\//, 'Safari'],
+  [/Edg\//, 'Edge'],
+  [/OPR\//, 'Opera'],
+  [/Firefox\//, 'Firefox'],
+  [/Chrom(e|ium)\//, 'Chrome or Chromium'],
+  [/Safari\//, 'Safari'],
 ];
 const SYSTEMS: readonly (readonly [RegExp, string])[] = [
-  [/Android/, 'Android'], [/iPhone|iPad/, 'iOS'], [/Windows/, 'Windows'], [/Mac OS X/, 'macOS'], [/Linux/, 'Linux'],
+  [/Android/, 'Android'],
+  [/iPhone|iPad/, 'iOS'],
+  [/Windows/, 'Windows'],
+  [/Mac OS X/, 'macOS'],
+  [/Linux/, 'Linux'],
 ];
 
 const found = (list: readonly (readonly [RegExp, string])[], text: string): string | undefined =>

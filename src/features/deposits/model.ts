@@ -29,7 +29,10 @@ export function bodyOf(form: DepositForm): DepositBodyInput {
   return {
     name,
     description,
-    grid: gridKind === 'epsg' ? { kind: 'epsg', code: Number(epsgCode) } : { kind: 'local', name: gridName },
+    grid:
+      gridKind === 'epsg'
+        ? { kind: 'epsg', code: Number(epsgCode) }
+        : { kind: 'local', name: gridName },
     payAnalytes,
     deleteriousAnalytes: splitAnalytes(deleterious),
   };
@@ -64,4 +67,5 @@ const MESSAGES: Record<string, string> = {
 
 export const messageFor = (field: string, message: string): string => MESSAGES[field] ?? message;
 
-export const gridWords = (grid: Deposit['grid']): string => (grid.kind === 'epsg' ? `EPSG ${grid.code}` : grid.name);
+export const gridWords = (grid: Deposit['grid']): string =>
+  grid.kind === 'epsg' ? `EPSG ${grid.code}` : grid.name;

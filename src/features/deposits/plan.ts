@@ -21,14 +21,20 @@ export function reachOf(holes: readonly HoleRow[]): { low: Flat; high: Flat } | 
   if (points.length === 0) return null;
   const easts = points.map(([east]) => east);
   const norths = points.map(([, north]) => north);
-  return { low: [Math.min(...easts), Math.min(...norths)], high: [Math.max(...easts), Math.max(...norths)] };
+  return {
+    low: [Math.min(...easts), Math.min(...norths)],
+    high: [Math.max(...easts), Math.max(...norths)],
+  };
 }
 
 /**
  * Where a fault plane meets the level of its point, as a line within the reach of the holes: its
  * strike is a quarter turn from the dip direction. Null where the line passes the holes by.
  */
-export function faultLine(fault: FaultPlane, reach: { low: Flat; high: Flat }): { label: string; points: Flat[] } | null {
+export function faultLine(
+  fault: FaultPlane,
+  reach: { low: Flat; high: Flat },
+): { label: string; points: Flat[] } | null {
   const turn = (fault.dipDirection * Math.PI) / 180;
   const along: Flat = [Math.cos(turn), -Math.sin(turn)];
   const start: Flat = [fault.x, fault.y];

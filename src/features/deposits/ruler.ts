@@ -27,7 +27,10 @@ export function rulerOf(totalMetres: number): Ruler {
   const parts = Math.floor(totalMetres / step);
   const major = Array.from({ length: parts + 1 }, (_, index) => {
     const value = (index * step) / (inKm ? 1000 : 1);
-    return { share: (index * step) / totalMetres, label: index === 0 ? (inKm ? '0 km' : '0 m') : formatCount(value) };
+    return {
+      share: (index * step) / totalMetres,
+      label: index === 0 ? (inKm ? '0 km' : '0 m') : formatCount(value),
+    };
   });
   const minorStep = step / 4;
   const minor = Array.from({ length: Math.floor(totalMetres / minorStep) + 1 }, (_, index) => index)

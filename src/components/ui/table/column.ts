@@ -41,12 +41,22 @@ export function compareCells(a: Cell, b: Cell): number {
 const collator = new Intl.Collator('en', { numeric: true, sensitivity: 'base' });
 
 export const isMissing = (cell: Cell): boolean =>
-  cell === null || cell === undefined || cell === '' || (typeof cell === 'number' && !Number.isFinite(cell));
+  cell === null ||
+  cell === undefined ||
+  cell === '' ||
+  (typeof cell === 'number' && !Number.isFinite(cell));
 
-const headerOf = <Row>({ header, unit }: Column<Row>): string => (unit ? `${header} (${unit})` : header);
+const headerOf = <Row>({ header, unit }: Column<Row>): string =>
+  unit ? `${header} (${unit})` : header;
 
 /** Header and cells of the columns that hold data, for files and the clipboard. */
-export function tableCells<Row>(columns: readonly Column<Row>[], rows: readonly Row[]): { header: string[]; cells: Cell[][] } {
+export function tableCells<Row>(
+  columns: readonly Column<Row>[],
+  rows: readonly Row[],
+): { header: string[]; cells: Cell[][] } {
   const kept = columns.filter(({ isControl }) => !isControl);
-  return { header: kept.map(headerOf), cells: rows.map((row) => kept.map((column) => valueOf(column, row))) };
+  return {
+    header: kept.map(headerOf),
+    cells: rows.map((row) => kept.map((column) => valueOf(column, row))),
+  };
 }

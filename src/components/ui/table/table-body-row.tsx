@@ -19,9 +19,23 @@ interface Props<Row> {
 }
 
 export function TableBodyRow<Row>(props: Props<Row>) {
-  const { columns, row, index, isVirtual, isDense, isLast, isPicked, extraClass, onPick, onHover, tabIndex, onFocus } = props;
+  const {
+    columns,
+    row,
+    index,
+    isVirtual,
+    isDense,
+    isLast,
+    isPicked,
+    extraClass,
+    onPick,
+    onHover,
+    tabIndex,
+    onFocus,
+  } = props;
   const onKeyDown = (event: KeyboardEvent<HTMLTableRowElement>) => {
-    if (event.target !== event.currentTarget || (event.key !== 'Enter' && event.key !== ' ')) return;
+    if (event.target !== event.currentTarget || (event.key !== 'Enter' && event.key !== ' '))
+      return;
     event.preventDefault();
     onPick?.(row);
   };
@@ -39,7 +53,9 @@ export function TableBodyRow<Row>(props: Props<Row>) {
         'focus-visible:-outline-offset-2',
         isVirtual && 'h-7',
         onPick && 'cursor-pointer',
-        isPicked ? 'bg-pick-wash [&>:first-child]:shadow-[inset_3px_0_0_var(--copper)]' : 'hover:bg-trough/45',
+        isPicked
+          ? 'bg-pick-wash [&>:first-child]:shadow-[inset_3px_0_0_var(--copper)]'
+          : 'hover:bg-trough/45',
         extraClass,
       )}
     >
@@ -55,7 +71,12 @@ export function TableBodyRow<Row>(props: Props<Row>) {
         );
         const key = `${column.header} ${column.unit ?? ''}`;
         const shown = column.cell(row);
-        const content = shown === null || shown === undefined || shown === '' ? <span className="text-ink-3">–</span> : shown;
+        const content =
+          shown === null || shown === undefined || shown === '' ? (
+            <span className="text-ink-3">–</span>
+          ) : (
+            shown
+          );
         return column.rowHeader ? (
           <th key={key} scope="row" className={cx(look, 'font-semibold')}>
             {content}

@@ -7,7 +7,11 @@ import type { MenuItem } from '../menu.tsx';
 import { tableCells, type Column } from './column.ts';
 
 /** Ways to take a table away, for a plate's download menu: CSV file, and TSV on the clipboard. */
-export function tableExports<Row>(fileName: string, columns: readonly Column<Row>[], rows: readonly Row[]): MenuItem[] {
+export function tableExports<Row>(
+  fileName: string,
+  columns: readonly Column<Row>[],
+  rows: readonly Row[],
+): MenuItem[] {
   return [
     {
       label: 'CSV',
@@ -25,7 +29,11 @@ export function tableExports<Row>(fileName: string, columns: readonly Column<Row
       run: () => {
         const { header, cells } = tableCells(columns, rows);
         void copyText(toTsv(header, cells)).then((isCopied) =>
-          notify(isCopied ? `${countOf(rows.length, 'row')} copied` : 'The browser did not let the page write to the clipboard. Take the CSV.'),
+          notify(
+            isCopied
+              ? `${countOf(rows.length, 'row')} copied`
+              : 'The browser did not let the page write to the clipboard. Take the CSV.',
+          ),
         );
       },
     },

@@ -37,7 +37,8 @@ const VIRTUAL_FROM = 150;
 
 /** Rows under a sticky header: sort by header, move by arrow keys, 100,000 rows as smooth as ten. */
 export function Table<Row extends object>(props: TableProps<Row>) {
-  const { caption, isCaptionShown, columns, rows, rowKey, firstSort, isDense, empty, className } = props;
+  const { caption, isCaptionShown, columns, rows, rowKey, firstSort, isDense, empty, className } =
+    props;
   const { onPick, isPicked, onHover, rowClass } = props;
   const scroller = useRef<HTMLDivElement>(null);
   const isScrolling = useOverflows(scroller, rows.length > 0 || empty === undefined);
@@ -52,7 +53,11 @@ export function Table<Row extends object>(props: TableProps<Row>) {
     overscan: 12,
     initialRect: { width: 800, height: 450 },
   });
-  const cursor = useRowCursor(model.rows.length, (index) => virtualizer.scrollToIndex(index), scroller);
+  const cursor = useRowCursor(
+    model.rows.length,
+    (index) => virtualizer.scrollToIndex(index),
+    scroller,
+  );
   const items = virtualizer.getVirtualItems();
   const shown = isVirtual
     ? items.map(({ index }) => index)
@@ -68,8 +73,16 @@ export function Table<Row extends object>(props: TableProps<Row>) {
       className={cx('relative min-w-0 overflow-auto', className)}
       style={maxHeightRem ? { maxHeight: `${maxHeightRem}rem` } : undefined}
     >
-      <table aria-rowcount={isVirtual ? model.rows.length + 1 : undefined} className={cx('w-full border-separate border-spacing-0 text-small', isVirtual && 'table-fixed')}>
-        <caption className={isCaptionShown ? 'pb-1 text-left text-caption text-ink-3' : 'sr-only'}>{caption}</caption>
+      <table
+        aria-rowcount={isVirtual ? model.rows.length + 1 : undefined}
+        className={cx(
+          'w-full border-separate border-spacing-0 text-small',
+          isVirtual && 'table-fixed',
+        )}
+      >
+        <caption className={isCaptionShown ? 'pb-1 text-left text-caption text-ink-3' : 'sr-only'}>
+          {caption}
+        </caption>
         <TableHead columns={columns} model={model} isDense={isDense} />
         <tbody onKeyDown={onKeyDown} onMouseLeave={onHover ? () => onHover(null) : undefined}>
           <Spacer heightPx={before} span={columns.length} />

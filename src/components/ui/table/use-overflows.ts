@@ -7,7 +7,10 @@ export function useOverflows(ref: RefObject<HTMLElement | null>, isShown: boolea
     const element = ref.current;
     if (!element || typeof ResizeObserver === 'undefined') return;
     const measure = () =>
-      setOverflows(element.scrollWidth > element.clientWidth + 1 || element.scrollHeight > element.clientHeight + 1);
+      setOverflows(
+        element.scrollWidth > element.clientWidth + 1 ||
+          element.scrollHeight > element.clientHeight + 1,
+      );
     const observer = new ResizeObserver(measure);
     observer.observe(element);
     if (element.firstElementChild) observer.observe(element.firstElementChild);

@@ -1,4 +1,11 @@
-import { createSortedRowModel, rowSortingFeature, tableFeatures, useTable, type ColumnDef, type SortingState } from '@tanstack/react-table';
+import {
+  createSortedRowModel,
+  rowSortingFeature,
+  tableFeatures,
+  useTable,
+  type ColumnDef,
+  type SortingState,
+} from '@tanstack/react-table';
 import { useMemo, useState } from 'react';
 import type { Cell } from '#src/lib/delimited.ts';
 import { compareCells, isMissing, valueOf, type Column } from './column.ts';

@@ -4,10 +4,16 @@ import { call } from '#src/lib/api-client.ts';
 import { depositsQuery } from '#src/lib/deposit-queries.ts';
 
 export const usersQuery = () =>
-  queryOptions({ queryKey: ['admin', 'users'], queryFn: ({ signal }) => call(listUsers, {}, signal) });
+  queryOptions({
+    queryKey: ['admin', 'users'],
+    queryFn: ({ signal }) => call(listUsers, {}, signal),
+  });
 
 export const allDepositsQuery = () =>
-  queryOptions({ queryKey: ['admin', 'deposits'], queryFn: ({ signal }) => call(listAllDeposits, {}, signal) });
+  queryOptions({
+    queryKey: ['admin', 'deposits'],
+    queryFn: ({ signal }) => call(listAllDeposits, {}, signal),
+  });
 
 export function useInviteUser() {
   const queryClient = useQueryClient();

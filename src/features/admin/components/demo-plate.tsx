@@ -19,7 +19,10 @@ export function DemoPlate() {
     });
   return (
     <Plate title="Demonstration" qualifier="invented data">
-      <p className="mb-2 max-w-[34rem] text-pretty text-ink-2">Visitors change the demonstration deposits freely. Put them back to their first state when they have wandered too far.</p>
+      <p className="mb-2 max-w-[34rem] text-pretty text-ink-2">
+        Visitors change the demonstration deposits freely. Put them back to their first state when
+        they have wandered too far.
+      </p>
       <Button onClick={() => setAsking(true)}>Put the demonstration back</Button>
       <ConfirmDialog
         isOpen={isAsking}

@@ -12,11 +12,31 @@ import { formatDate } from '#src/lib/format-dates.ts';
 import { allDepositsQuery } from '../api/admin-queries.ts';
 
 const COLUMNS: Column<AdminDeposit>[] = [
-  { header: 'Name', rowHeader: true, value: ({ name }) => name, cell: ({ name, isDemo }) => <span className="flex flex-wrap items-baseline gap-1.5">{name}{isDemo && <Chip tone="note">demonstration</Chip>}</span> },
+  {
+    header: 'Name',
+    rowHeader: true,
+    value: ({ name }) => name,
+    cell: ({ name, isDemo }) => (
+      <span className="flex flex-wrap items-baseline gap-1.5">
+        {name}
+        {isDemo && <Chip tone="note">demonstration</Chip>}
+      </span>
+    ),
+  },
   { header: 'Leads', cell: ({ leads }) => leads.join(', ') },
   { header: 'Members', align: 'right', cell: ({ members }) => members },
-  { header: 'Stored', align: 'right', cell: ({ bytesStored }) => formatBytes(bytesStored), value: ({ bytesStored }) => bytesStored },
-  { header: 'Created', isWhole: true, cell: ({ createdAt }) => formatDate(createdAt), value: ({ createdAt }) => createdAt },
+  {
+    header: 'Stored',
+    align: 'right',
+    cell: ({ bytesStored }) => formatBytes(bytesStored),
+    value: ({ bytesStored }) => bytesStored,
+  },
+  {
+    header: 'Created',
+    isWhole: true,
+    cell: ({ createdAt }) => formatDate(createdAt),
+    value: ({ createdAt }) => createdAt,
+  },
 ];
 
 /** All deposits by name and size; administration opens no deposit's contents. */
@@ -30,9 +50,24 @@ export function AllDepositsPlate() {
       error={deposits ? undefined : error}
       onRetry={() => void refetch()}
       exports={deposits && tableExports('deposits', COLUMNS, deposits)}
-      empty={deposits?.length === 0 ? <Empty>No deposit yet. Whoever is signed in can create one.</Empty> : undefined}
+      empty={
+        deposits?.length === 0 ? (
+          <Empty>No deposit yet. Whoever is signed in can create one.</Empty>
+        ) : undefined
+      }
     >
-      {deposits ? <Table caption="All deposits" columns={COLUMNS} rows={deposits} rowKey={({ id }) => id} firstSort={{ header: 'Name' }} maxHeightRem={24} /> : <Skeleton />}
+      {deposits ? (
+        <Table
+          caption="All deposits"
+          columns={COLUMNS}
+          rows={deposits}
+          rowKey={({ id }) => id}
+          firstSort={{ header: 'Name' }}
+          maxHeightRem={24}
+        />
+      ) : (
+        <Skeleton />
+      )}
     </Plate>
   );
 }

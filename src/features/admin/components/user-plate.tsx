@@ -27,14 +27,39 @@ export function UserPlate() {
     const flip = ({ id, name, ...user }: AdminUser, field: Switch) => {
       const set = (value: boolean) => updating.mutateAsync({ userId: id, [field]: value });
       const next = !user[field];
-      void set(next).then(() => notifyEdit({ label: `${name}: ${WORDS[field][next ? 1 : 0]}`, undo: () => set(!next), redo: () => set(next) })).catch(notifyProblem);
+      void set(next)
+        .then(() =>
+          notifyEdit({
+            label: `${name}: ${WORDS[field][next ? 1 : 0]}`,
+            undo: () => set(!next),
+            redo: () => set(next),
+          }),
+        )
+        .catch(notifyProblem);
     };
     return userColumns(me?.id ?? 0, flip);
   }, [updating, me?.id]);
   const active = users?.filter(({ isActive }) => isActive).length ?? 0;
   return (
-    <Plate title="Accounts" qualifier={users && `${countOf(active, 'open account')} of ${users.length}`} error={users ? undefined : error} onRetry={() => void refetch()} exports={users && tableExports('accounts', columns, users)}>
-      {users ? <Table caption="Everybody with an account" columns={columns} rows={users} rowKey={({ id }) => id} firstSort={{ header: 'Name' }} maxHeightRem={28} /> : <Skeleton />}
+    <Plate
+      title="Accounts"
+      qualifier={users && `${countOf(active, 'open account')} of ${users.length}`}
+      error={users ? undefined : error}
+      onRetry={() => void refetch()}
+      exports={users && tableExports('accounts', columns, users)}
+    >
+      {users ? (
+        <Table
+          caption="Everybody with an account"
+          columns={columns}
+          rows={users}
+          rowKey={({ id }) => id}
+          firstSort={{ header: 'Name' }}
+          maxHeightRem={28}
+        />
+      ) : (
+        <Skeleton />
+      )}
       <InviteUserForm />
     </Plate>
   );
@@ -45,13 +70,32 @@ const WORDS: Record<Switch, readonly [string, string]> = {
   isAdministrator: ['no longer administrator', 'now administrator'],
 };
 
-const userColumns = (myId: number, flip: (user: AdminUser, field: Switch) => void): Column<AdminUser>[] => [
-  { header: 'Name', rowHeader: true, cell: ({ name, email }) => <><span>{name}</span> <span className="block font-normal whitespace-nowrap text-ink-3">{email}</span></>, value: ({ name }) => name },
+const userColumns = (
+  myId: number,
+  flip: (user: AdminUser, field: Switch) => void,
+): Column<AdminUser>[] => [
+  {
+    header: 'Name',
+    rowHeader: true,
+    cell: ({ name, email }) => (
+      <>
+        <span>{name}</span>{' '}
+        <span className="block font-normal whitespace-nowrap text-ink-3">{email}</span>
+      </>
+    ),
+    value: ({ name }) => name,
+  },
   { header: 'Deposits', align: 'right', cell: ({ deposits }) => deposits },
-  { header: 'Last seen', isWhole: true, cell: ({ lastSeenAt }) => (lastSeenAt ? formatWhen(lastSeenAt) : 'never'), value: ({ lastSeenAt }) => lastSeenAt },
+  {
+    header: 'Last seen',
+    isWhole: true,
+    cell: ({ lastSeenAt }) => (lastSeenAt ? formatWhen(lastSeenAt) : 'never'),
+    value: ({ lastSeenAt }) => lastSeenAt,
+  },
   {
     header: 'State',
-    value: ({ isActive, isAdministrator }) => `${isActive ? 'open' : 'ended'}${isAdministrator ? ', administrator' : ''}`,
+    value: ({ isActive, isAdministrator }) =>
+      `${isActive ? 'open' : 'ended'}${isAdministrator ? ', administrator' : ''}`,
     cell: ({ isActive, isAdministrator }) => (
       <span className="flex flex-wrap gap-1">
         <Chip tone={isActive ? 'good' : 'bad'}>{isActive ? 'open' : 'ended'}</Chip>
@@ -64,13 +108,24 @@ const userColumns = (myId: number, flip: (user: AdminUser, field: Switch) => voi
     isControl: true,
     align: 'right',
     cell: (user) => {
-      const unavailable = user.id === myId ? 'Not for your own account: another administrator can' : undefined;
+      const unavailable =
+        user.id === myId ? 'Not for your own account: another administrator can' : undefined;
       return (
         <span className="flex flex-wrap justify-end gap-1">
-          <Button size="tiny" unavailable={unavailable} aria-label={`${user.isAdministrator ? 'Take administration from' : 'Make administrator:'} ${user.name}`} onClick={() => flip(user, 'isAdministrator')}>
+          <Button
+            size="tiny"
+            unavailable={unavailable}
+            aria-label={`${user.isAdministrator ? 'Take administration from' : 'Make administrator:'} ${user.name}`}
+            onClick={() => flip(user, 'isAdministrator')}
+          >
             {user.isAdministrator ? 'Take administration' : 'Make administrator'}
           </Button>
-          <Button size="tiny" unavailable={unavailable} aria-label={`${user.isActive ? 'End' : 'Open'} the account of ${user.name}`} onClick={() => flip(user, 'isActive')}>
+          <Button
+            size="tiny"
+            unavailable={unavailable}
+            aria-label={`${user.isActive ? 'End' : 'Open'} the account of ${user.name}`}
+            onClick={() => flip(user, 'isActive')}
+          >
             {user.isActive ? 'End account' : 'Open account'}
           </Button>
         </span>
@@ -82,7 +137,16 @@ const userColumns = (myId: number, flip: (user: AdminUser, field: Switch) => voi
 function InviteUserForm() {
   const inviting = useInviteUser();
   const [email, setEmail] = useState('');
-  const send = () => inviting.mutate({ email }, { onSuccess: () => { notify(`Invitation sent to ${email}`); setEmail(''); } });
+  const send = () =>
+    inviting.mutate(
+      { email },
+      {
+        onSuccess: () => {
+          notify(`Invitation sent to ${email}`);
+          setEmail('');
+        },
+      },
+    );
   return (
     <form
       className="mt-2 grid gap-2 border-t border-dotted border-rule pt-2"
@@ -92,8 +156,20 @@ function InviteUserForm() {
       }}
     >
       <div className="flex flex-wrap items-end gap-2">
-        <Field label="Invite to this instance, by e-mail" type="email" className="min-w-56 flex-1" value={email} onChange={(event) => setEmail(event.target.value)} />
-        <Button type="submit" isBusy={inviting.isPending} unavailable={email.includes('@') ? undefined : 'Expected an address such as name@site.example'}>
+        <Field
+          label="Invite to this instance, by e-mail"
+          type="email"
+          className="min-w-56 flex-1"
+          value={email}
+          onChange={(event) => setEmail(event.target.value)}
+        />
+        <Button
+          type="submit"
+          isBusy={inviting.isPending}
+          unavailable={
+            email.includes('@') ? undefined : 'Expected an address such as name@site.example'
+          }
+        >
           Send the invitation
         </Button>
       </div>

@@ -17,7 +17,8 @@ export function useUpdateName() {
 export function useChangePassword() {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (body: { currentPassword: string; newPassword: string }) => call(changePassword, { body }),
+    mutationFn: (body: { currentPassword: string; newPassword: string }) =>
+      call(changePassword, { body }),
     onSuccess: () => queryClient.invalidateQueries({ queryKey: sessionsQuery().queryKey }),
   });
 }

@@ -8,7 +8,7 @@ import { Button } from '#src/components/ui/button.tsx';
 import { Field } from '#src/components/ui/field.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
 import { call } from '#src/lib/api-client.ts';
-import { showFieldProblems } from '#src/lib/form-problems.ts';
+import { fieldWords, showFieldProblems } from '#src/lib/form-problems.ts';
 import { enterSession } from '#src/lib/session.ts';
 import { ROLE_NAMES } from '#src/lib/stages.ts';
 import { NewPasswordField } from './new-password-field.tsx';
@@ -41,7 +41,10 @@ export function AcceptForm({ token, invitation, onAccepted }: Props) {
   });
   const accepting = useMutation({
     mutationFn: ({ name, password }: Values) =>
-      call(acceptInvitation, { params: { token }, body: hasAccount ? { password } : { name, password } }),
+      call(acceptInvitation, {
+        params: { token },
+        body: hasAccount ? { password } : { name, password },
+      }),
     onError: (error) => showFieldProblems(error, ['name', 'password'], setError),
     onSuccess: ({ me, depositId }) => {
       enterSession(queryClient, me);
@@ -49,15 +52,45 @@ export function AcceptForm({ token, invitation, onAccepted }: Props) {
     },
   });
   return (
-    <form onSubmit={handleSubmit((values) => accepting.mutate(values))} noValidate className="grid gap-3.5">
+    <form
+      onSubmit={handleSubmit((values) => accepting.mutate(values))}
+      noValidate
+      className="grid gap-3.5"
+    >
       <p className="font-read text-finding text-ink-2">{invitationSentence(invitation)}</p>
-      <Field label="E-mail" type="email" autoComplete="username" controlSize="entry" value={email} readOnly />
+      <Field
+        label="E-mail"
+        type="email"
+        autoComplete="username"
+        controlSize="entry"
+        value={email}
+        readOnly
+      />
       {hasAccount ? (
-        <Field label="Your password" type="password" autoComplete="current-password" controlSize="entry" error={formState.errors.password && 'Expected the password of your account'} {...register('password')} />
+        <Field
+          label="Your password"
+          type="password"
+          autoComplete="current-password"
+          controlSize="entry"
+          error={fieldWords(formState.errors.password, 'Expected the password of your account')}
+          {...register('password')}
+        />
       ) : (
         <>
-          <Field label="Your name" autoComplete="name" controlSize="entry" hint="As colleagues and the record will read it." error={formState.errors.name && 'Expected a name'} {...register('name')} />
-          <NewPasswordField label="New password" controlSize="entry" error={formState.errors.password} register={register('password')} />
+          <Field
+            label="Your name"
+            autoComplete="name"
+            controlSize="entry"
+            hint="As colleagues and the record will read it."
+            error={fieldWords(formState.errors.name, 'Expected a name')}
+            {...register('name')}
+          />
+          <NewPasswordField
+            label="New password"
+            controlSize="entry"
+            error={formState.errors.password}
+            register={register('password')}
+          />
         </>
       )}
       {accepting.error && <Problem error={accepting.error} />}

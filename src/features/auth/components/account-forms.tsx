@@ -6,7 +6,7 @@ import { Name } from '#contract/common.ts';
 import { Button } from '#src/components/ui/button.tsx';
 import { Field } from '#src/components/ui/field.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
-import { showFieldProblems } from '#src/lib/form-problems.ts';
+import { fieldWords, showFieldProblems } from '#src/lib/form-problems.ts';
 import { notify } from '#src/lib/toasts.ts';
 import { useChangePassword, useUpdateName } from '../api/account-queries.ts';
 import { NewPasswordField } from './new-password-field.tsx';
@@ -15,11 +15,26 @@ const NameForm = z.strictObject({ name: Name });
 
 export function NameFields({ name, email }: { name: string; email: string }) {
   const updating = useUpdateName();
-  const { register, handleSubmit, formState } = useForm<z.infer<typeof NameForm>>({ resolver: zodResolver(NameForm), defaultValues: { name } });
+  const { register, handleSubmit, formState } = useForm<z.infer<typeof NameForm>>({
+    resolver: zodResolver(NameForm),
+    defaultValues: { name },
+  });
   return (
-    <form onSubmit={handleSubmit((body) => updating.mutate(body, { onSuccess: () => notify('Name saved') }))} noValidate className="grid gap-3">
+    <form
+      onSubmit={handleSubmit((body) =>
+        updating.mutate(body, { onSuccess: () => notify('Name saved') }),
+      )}
+      noValidate
+      className="grid gap-3"
+    >
       <Field label="E-mail" value={email} readOnly hint="The address you were invited by." />
-      <Field label="Name" autoComplete="name" hint="As colleagues and the record read it." error={formState.errors.name && 'Expected a name'} {...register('name')} />
+      <Field
+        label="Name"
+        autoComplete="name"
+        hint="As colleagues and the record read it."
+        error={fieldWords(formState.errors.name, 'Expected a name')}
+        {...register('name')}
+      />
       {updating.error && <Problem error={updating.error} />}
       <div>
         <Button type="submit" isBusy={updating.isPending}>
@@ -50,8 +65,18 @@ export function PasswordFields() {
   );
   return (
     <form onSubmit={send} noValidate className="grid gap-3">
-      <Field label="Present password" type="password" autoComplete="current-password" error={formState.errors.currentPassword && (formState.errors.currentPassword.type === 'server' ? formState.errors.currentPassword : 'Expected your present password')} {...register('currentPassword')} />
-      <NewPasswordField label="New password" error={formState.errors.newPassword} register={register('newPassword')} />
+      <Field
+        label="Present password"
+        type="password"
+        autoComplete="current-password"
+        error={fieldWords(formState.errors.currentPassword, 'Expected your present password')}
+        {...register('currentPassword')}
+      />
+      <NewPasswordField
+        label="New password"
+        error={formState.errors.newPassword}
+        register={register('newPassword')}
+      />
       {changing.error && <Problem error={changing.error} />}
       <div>
         <Button type="submit" isBusy={changing.isPending}>

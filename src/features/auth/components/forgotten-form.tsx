@@ -9,13 +9,20 @@ import { Button } from '#src/components/ui/button.tsx';
 import { Field } from '#src/components/ui/field.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
 import { call } from '#src/lib/api-client.ts';
+import { fieldWords } from '#src/lib/form-problems.ts';
 
 const Body = z.strictObject({ email: Email });
 
 /** Asks for a reset link. The answer never tells whether the address has an account. */
 export function ForgottenForm() {
-  const asking = useMutation({ mutationFn: (body: z.input<typeof Body>) => call(askPasswordReset, { body }) });
-  const { register, handleSubmit, formState } = useForm<z.input<typeof Body>, unknown, z.output<typeof Body>>({
+  const asking = useMutation({
+    mutationFn: (body: z.input<typeof Body>) => call(askPasswordReset, { body }),
+  });
+  const { register, handleSubmit, formState } = useForm<
+    z.input<typeof Body>,
+    unknown,
+    z.output<typeof Body>
+  >({
     resolver: zodResolver(Body),
     defaultValues: { email: '' },
   });
@@ -23,7 +30,8 @@ export function ForgottenForm() {
     return (
       <div role="status" className="grid gap-3">
         <p className="font-read text-finding text-ink-2">
-          If {asking.variables.email} has an account, a link to set a new password is on its way. It works once, for one hour.
+          If {asking.variables.email} has an account, a link to set a new password is on its way. It
+          works once, for one hour.
         </p>
         <p>
           <Link to="/sign-in">Back to sign-in</Link>
@@ -32,8 +40,19 @@ export function ForgottenForm() {
     );
   }
   return (
-    <form onSubmit={handleSubmit((body) => asking.mutate(body))} noValidate className="grid gap-3.5">
-      <Field label="E-mail" type="email" autoComplete="username" controlSize="entry" error={formState.errors.email && 'Expected an address such as name@site.example'} {...register('email')} />
+    <form
+      onSubmit={handleSubmit((body) => asking.mutate(body))}
+      noValidate
+      className="grid gap-3.5"
+    >
+      <Field
+        label="E-mail"
+        type="email"
+        autoComplete="username"
+        controlSize="entry"
+        error={fieldWords(formState.errors.email, 'Expected an address such as name@site.example')}
+        {...register('email')}
+      />
       {asking.error && <Problem error={asking.error} />}
       <Button type="submit" kind="main" size="entry" isWide isBusy={asking.isPending}>
         Send the link

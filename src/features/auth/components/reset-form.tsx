@@ -13,7 +13,10 @@ const Body = z.strictObject({ newPassword: NewPassword });
 type Body = z.infer<typeof Body>;
 
 export function ResetForm({ token }: { token: string }) {
-  const { register, handleSubmit, formState, setError } = useForm<Body>({ resolver: zodResolver(Body), defaultValues: { newPassword: '' } });
+  const { register, handleSubmit, formState, setError } = useForm<Body>({
+    resolver: zodResolver(Body),
+    defaultValues: { newPassword: '' },
+  });
   const setting = useMutation({
     mutationFn: (body: Body) => call(resetPassword, { params: { token }, body }),
     onError: (error) => showFieldProblems(error, ['newPassword'], setError),
@@ -21,7 +24,9 @@ export function ResetForm({ token }: { token: string }) {
   if (setting.isSuccess) {
     return (
       <div role="status" className="grid gap-3">
-        <p className="font-read text-finding text-ink-2">The new password is set, and all open sessions have ended.</p>
+        <p className="font-read text-finding text-ink-2">
+          The new password is set, and all open sessions have ended.
+        </p>
         <LinkButton to="/sign-in" kind="main" size="entry" isWide>
           Sign in
         </LinkButton>
@@ -29,8 +34,17 @@ export function ResetForm({ token }: { token: string }) {
     );
   }
   return (
-    <form onSubmit={handleSubmit((body) => setting.mutate(body))} noValidate className="grid gap-3.5">
-      <NewPasswordField label="New password" controlSize="entry" error={formState.errors.newPassword} register={register('newPassword')} />
+    <form
+      onSubmit={handleSubmit((body) => setting.mutate(body))}
+      noValidate
+      className="grid gap-3.5"
+    >
+      <NewPasswordField
+        label="New password"
+        controlSize="entry"
+        error={formState.errors.newPassword}
+        register={register('newPassword')}
+      />
       {setting.error && <Problem error={setting.error} />}
       <Button type="submit" kind="main" size="entry" isWide isBusy={setting.isPending}>
         Set the password

@@ -17,19 +17,46 @@ export function SessionTable() {
   const { data: sessions, error, refetch } = useQuery(sessionsQuery());
   const ending = useEndSession();
   const columns = useMemo(
-    () => sessionColumns((id) => ending.mutate(id, { onSuccess: () => notify('Session ended'), onError: notifyProblem })),
+    () =>
+      sessionColumns((id) =>
+        ending.mutate(id, { onSuccess: () => notify('Session ended'), onError: notifyProblem }),
+      ),
     [ending],
   );
-  if (error && !sessions) return <Problem error={error} action={{ label: 'Try again', run: () => void refetch() }} />;
+  if (error && !sessions)
+    return <Problem error={error} action={{ label: 'Try again', run: () => void refetch() }} />;
   if (!sessions) return <Skeleton />;
-  return <Table caption="Your open sessions" columns={columns} rows={sessions} rowKey={({ id }) => id} firstSort={{ header: 'Last seen', isDescending: true }} />;
+  return (
+    <Table
+      caption="Your open sessions"
+      columns={columns}
+      rows={sessions}
+      rowKey={({ id }) => id}
+      firstSort={{ header: 'Last seen', isDescending: true }}
+    />
+  );
 }
 
 const sessionColumns = (onEnd: (sessionId: string) => void): Column<SessionRow>[] => [
-  { header: 'Browser', rowHeader: true, cell: ({ userAgent }) => <span title={userAgent}>{deviceWords(userAgent)}</span>, value: ({ userAgent }) => deviceWords(userAgent) },
+  {
+    header: 'Browser',
+    rowHeader: true,
+    cell: ({ userAgent }) => <span title={userAgent}>{deviceWords(userAgent)}</span>,
+    value: ({ userAgent }) => deviceWords(userAgent),
+  },
   { header: 'Address', cell: ({ address }) => address, isMono: true },
-  { header: 'Since', isWhole: true, cell: ({ createdAt }) => formatInstant(createdAt), value: ({ createdAt }) => createdAt },
-  { header: 'Last seen', isWhole: true, cell: ({ lastSeenAt }) => formatInstant(lastSeenAt), value: ({ lastSeenAt }) => lastSeenAt },
+  {
+    header: 'Since',
+    isWhole: true,
+    cell: ({ createdAt }) => formatInstant(createdAt),
+    value: ({ createdAt }) => createdAt,
+  },
+  {
+    header: 'Last seen',
+    isWhole: true,
+    cell: ({ lastSeenAt }) => formatInstant(lastSeenAt),
+    value: ({ lastSeenAt }) => lastSeenAt,
+  },
   {
     header: 'End',
     isControl: true,
@@ -38,7 +65,11 @@ const sessionColumns = (onEnd: (sessionId: string) => void): Column<SessionRow>[
       isThisOne ? (
         <Chip tone="good">this one</Chip>
       ) : (
-        <Button size="tiny" aria-label={`End the session of ${deviceWords(userAgent)}`} onClick={() => onEnd(id)}>
+        <Button
+          size="tiny"
+          aria-label={`End the session of ${deviceWords(userAgent)}`}
+          onClick={() => onEnd(id)}
+        >
           End
         </Button>
       ),

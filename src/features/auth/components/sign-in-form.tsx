@@ -9,6 +9,7 @@ import { Button } from '#src/components/ui/button.tsx';
 import { Field } from '#src/components/ui/field.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
 import { call } from '#src/lib/api-client.ts';
+import { fieldWords } from '#src/lib/form-problems.ts';
 import { enterSession, instanceQuery } from '#src/lib/session.ts';
 
 const Credentials = z.strictObject({ email: Email, password: Password });
@@ -29,15 +30,40 @@ function useSignIn(onSignedIn: (me: Me) => void) {
 export function SignInForm({ onSignedIn }: { onSignedIn: (me: Me) => void }) {
   const signingIn = useSignIn(onSignedIn);
   const { data: instance } = useQuery(instanceQuery());
-  const { register, handleSubmit, formState } = useForm<Credentials, unknown, z.output<typeof Credentials>>({
+  const { register, handleSubmit, formState } = useForm<
+    Credentials,
+    unknown,
+    z.output<typeof Credentials>
+  >({
     resolver: zodResolver(Credentials),
     defaultValues: { email: '', password: '' },
   });
   return (
     <>
-      <form onSubmit={handleSubmit((body) => signingIn.mutate(body))} noValidate className="grid gap-3.5">
-        <Field label="E-mail" type="email" autoComplete="username" controlSize="entry" error={formState.errors.email && 'Expected an address such as name@site.example'} {...register('email')} />
-        <Field label="Password" type="password" autoComplete="current-password" controlSize="entry" error={formState.errors.password && 'Expected a password'} {...register('password')} />
+      <form
+        onSubmit={handleSubmit((body) => signingIn.mutate(body))}
+        noValidate
+        className="grid gap-3.5"
+      >
+        <Field
+          label="E-mail"
+          type="email"
+          autoComplete="username"
+          controlSize="entry"
+          error={fieldWords(
+            formState.errors.email,
+            'Expected an address such as name@site.example',
+          )}
+          {...register('email')}
+        />
+        <Field
+          label="Password"
+          type="password"
+          autoComplete="current-password"
+          controlSize="entry"
+          error={fieldWords(formState.errors.password, 'Expected a password')}
+          {...register('password')}
+        />
         {signingIn.error && <Problem error={signingIn.error} />}
         <Button type="submit" kind="main" size="entry" isWide isBusy={signingIn.isPending}>
           Sign in
@@ -48,7 +74,13 @@ export function SignInForm({ onSignedIn }: { onSignedIn: (me: Me) => void }) {
           Forgotten password
         </Link>
       </p>
-      {instance && instance.demoSignIns.length > 0 && <DemoSignIns people={instance.demoSignIns} isBusy={signingIn.isPending} onPick={(body) => signingIn.mutate(body)} />}
+      {instance && instance.demoSignIns.length > 0 && (
+        <DemoSignIns
+          people={instance.demoSignIns}
+          isBusy={signingIn.isPending}
+          onPick={(body) => signingIn.mutate(body)}
+        />
+      )}
     </>
   );
 }

@@ -1,5 +1,10 @@
 import { useMutation, useQueryClient } from '@tanstack/react-query';
-import { createDeposit, updateDeposit, type Deposit, type DepositBodyInput } from '#contract/deposits.ts';
+import {
+  createDeposit,
+  updateDeposit,
+  type Deposit,
+  type DepositBodyInput,
+} from '#contract/deposits.ts';
 import { call } from '#src/lib/api-client.ts';
 import { hasStatus } from '#src/lib/api-problem.ts';
 import { depositQuery, depositsQuery } from '#src/lib/deposit-queries.ts';
@@ -28,7 +33,8 @@ export function useUpdateDeposit(depositId: number, onUpdated: () => void) {
       onUpdated();
     },
     onError: (error) => {
-      if (hasStatus(error, 412)) void queryClient.invalidateQueries({ queryKey: depositQuery(depositId).queryKey });
+      if (hasStatus(error, 412))
+        void queryClient.invalidateQueries({ queryKey: depositQuery(depositId).queryKey });
     },
   });
 }

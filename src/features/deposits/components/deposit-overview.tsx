@@ -26,7 +26,11 @@ export function DepositOverview({ plan }: { plan?: ReactNode }) {
         chips={deposit.isDemo && <Chip tone="note">demonstration, invented data</Chip>}
         actions={
           <>
-            <LinkButton to={stagePath(deposit.id, 'intake')} icon={Upload} kind={isBare ? 'main' : 'plain'}>
+            <LinkButton
+              to={stagePath(deposit.id, 'intake')}
+              icon={Upload}
+              kind={isBare ? 'main' : 'plain'}
+            >
               Bring in files
             </LinkButton>
             {next && !isBare && (
@@ -37,14 +41,22 @@ export function DepositOverview({ plan }: { plan?: ReactNode }) {
           </>
         }
       />
-      {error && !overview && <Problem error={error} action={{ label: 'Try again', run: () => void refetch() }} />}
+      {error && !overview && (
+        <Problem error={error} action={{ label: 'Try again', run: () => void refetch() }} />
+      )}
       {!overview && !error && <Loading label="Reading the overview" />}
       {overview && (
         <div className="grid gap-3 lg:grid-cols-[minmax(0,1fr)_326px] xl:grid-cols-[minmax(0,1fr)_460px]">
           <div className="flex min-w-0 flex-col gap-3">
-            <div className="max-md:order-2"><MetresPlate overview={overview} depositId={deposit.id} /></div>
+            <div className="max-md:order-2">
+              <MetresPlate overview={overview} depositId={deposit.id} />
+            </div>
             <div className="grid min-w-0 flex-1 gap-3 max-md:contents lg:grid-cols-[minmax(0,1fr)_minmax(0,1.060fr)]">
-              <WaitingPlate waiting={overview.waiting} depositId={deposit.id} className="max-md:order-1" />
+              <WaitingPlate
+                waiting={overview.waiting}
+                depositId={deposit.id}
+                className="max-md:order-1"
+              />
               <LatelyPlate lately={overview.lately} className="max-md:order-4" />
             </div>
           </div>

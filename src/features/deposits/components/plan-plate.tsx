@@ -3,7 +3,7 @@ import { useMemo, useRef } from 'react';
 import type { ChartHandle } from '#src/components/charts/chart-types.ts';
 import { PlanView } from '#src/components/charts/plan-view.tsx';
 import { Empty } from '#src/components/ui/empty.tsx';
-import { figureExports } from '#src/components/ui/figure-exports.ts';
+import { useFigureExports } from '#src/components/ui/figure-exports.ts';
 import { Skeleton } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { holesQuery } from '#src/lib/deposit-queries.ts';
@@ -33,6 +33,11 @@ export function PlanPlate() {
     }),
     [data],
   );
+  const exports = useFigureExports(chart, {
+    fileName: `${deposit.name}-plan`,
+    caption,
+    table: () => table,
+  });
   return (
     <Plate
       title="Plan"
@@ -40,11 +45,23 @@ export function PlanPlate() {
       caption={traces.length > 0 ? caption : undefined}
       error={data ? undefined : error}
       onRetry={() => void refetch()}
-      exports={traces.length > 0 ? figureExports(() => chart.current, { fileName: `${deposit.name}-plan`, caption, table: () => table }) : undefined}
-      empty={data && traces.length === 0 ? <Empty>Holes are drawn here from above once collars and surveys are loaded.</Empty> : undefined}
+      exports={traces.length > 0 ? exports : undefined}
+      empty={
+        data && traces.length === 0 ? (
+          <Empty>Holes are drawn here from above once collars and surveys are loaded.</Empty>
+        ) : undefined
+      }
     >
       {data ? (
-        <PlanView chartRef={chart} title={`Plan of ${deposit.name}`} description={`${countOf(traces.length, 'hole')} from above on ${grid}`} holes={traces} faults={faults} table={table} height={244} />
+        <PlanView
+          chartRef={chart}
+          title={`Plan of ${deposit.name}`}
+          description={`${countOf(traces.length, 'hole')} from above on ${grid}`}
+          holes={traces}
+          faults={faults}
+          table={table}
+          height={244}
+        />
       ) : (
         <Skeleton lines={8} />
       )}

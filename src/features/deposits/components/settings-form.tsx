@@ -18,9 +18,22 @@ export function SettingsForm() {
   return (
     <>
       {(isOvertaken || hasStatus(update.error, 412)) && (
-        <div role="status" className="mb-3 rounded-2 border border-warn bg-warn-wash px-3 py-2 text-small">
-          <p>Someone else has changed these settings since you opened them. What you typed is still here.</p>
-          <Button size="tiny" className="mt-1.5" onClick={() => { update.reset(); setStarted(deposit); }}>
+        <div
+          role="status"
+          className="mb-3 rounded-2 border border-warn bg-warn-wash px-3 py-2 text-small"
+        >
+          <p>
+            Someone else has changed these settings since you opened them. What you typed is still
+            here.
+          </p>
+          <Button
+            size="tiny"
+            className="mt-1.5"
+            onClick={() => {
+              update.reset();
+              setStarted(deposit);
+            }}
+          >
             Show theirs
           </Button>
         </div>
@@ -32,7 +45,9 @@ export function SettingsForm() {
         isBusy={update.isPending}
         error={hasStatus(update.error, 412) ? null : update.error}
         unavailable={refusal}
-        onSubmit={(body) => update.mutate({ body, version: started.version }, { onSuccess: setStarted })}
+        onSubmit={(body) =>
+          update.mutate({ body, version: started.version }, { onSuccess: setStarted })
+        }
       />
     </>
   );

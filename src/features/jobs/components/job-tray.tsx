@@ -26,11 +26,25 @@ export function JobTray({ depositId }: { depositId: number }) {
   const running = jobs.filter(isActive).length;
   useEndNotices(jobs);
   return (
-    <Panel label="Jobs" className="w-[23rem]" trigger={<IconButton icon={Hourglass} size="bar" label={running > 0 ? `Jobs: ${running} running` : 'Jobs'} count={running} />}>
+    <Panel
+      label="Jobs"
+      className="w-[23rem]"
+      trigger={
+        <IconButton
+          icon={Hourglass}
+          size="bar"
+          label={running > 0 ? `Jobs: ${running} running` : 'Jobs'}
+          count={running}
+        />
+      }
+    >
       <h2 className="mb-1 text-body font-semibold">Jobs</h2>
       {error && <Problem error={error} />}
       {jobs.length === 0 ? (
-        <p className="text-ink-2">Nothing has run on this deposit yet. Long work shows here and goes on when you leave the page.</p>
+        <p className="text-ink-2">
+          Nothing has run on this deposit yet. Long work shows here and goes on when you leave the
+          page.
+        </p>
       ) : (
         <ul className="m-0 grid list-none p-0">
           {jobs.slice(0, MOST_SHOWN).map((job) => (
@@ -49,14 +63,19 @@ function useEndNotices(jobs: readonly Job[]): void {
   useEffect(() => {
     for (const job of jobs) {
       if (isActive(job)) active.current.add(job.id);
-      else if (active.current.delete(job.id) && job.startedBy.id === me?.id && lastedMs(job) > 10_000) {
+      else if (
+        active.current.delete(job.id) &&
+        job.startedBy.id === me?.id &&
+        lastedMs(job) > 10_000
+      ) {
         notify(`${job.title}: ${STATE_WORDS[job.state]}`);
       }
     }
   }, [jobs, me?.id]);
 }
 
-const lastedMs = ({ createdAt, endedAt }: Job): number => (endedAt ? Date.parse(endedAt) - Date.parse(createdAt) : 0);
+const lastedMs = ({ createdAt, endedAt }: Job): number =>
+  endedAt ? Date.parse(endedAt) - Date.parse(createdAt) : 0;
 
 const STATE_WORDS: Record<Job['state'], string> = {
   queued: 'waiting its turn',
@@ -67,7 +86,12 @@ const STATE_WORDS: Record<Job['state'], string> = {
   interrupted: 'starts again',
 };
 const STATE_TONES: Record<Job['state'], Tone> = {
-  queued: 'plain', running: 'note', done: 'good', failed: 'bad', cancelled: 'plain', interrupted: 'warn',
+  queued: 'plain',
+  running: 'note',
+  done: 'good',
+  failed: 'bad',
+  cancelled: 'plain',
+  interrupted: 'warn',
 };
 
 function JobLine({ job }: { job: Job }) {
@@ -88,9 +112,21 @@ function JobLine({ job }: { job: Job }) {
           </Button>
         )}
       </div>
-      {isActive(job) && <ProgressRun value={job.state === 'running' ? job.progress : 0} label={job.title} heightPx={6} />}
+      {isActive(job) && (
+        <ProgressRun
+          value={job.state === 'running' ? job.progress : 0}
+          label={job.title}
+          heightPx={6}
+        />
+      )}
       <div className="flex justify-between gap-2 text-caption text-ink-3">
-        <span>{isActive(job) ? (job.state === 'running' ? `${job.phase}, ${formatShare(job.progress)}` : STATE_WORDS[job.state]) : (job.error?.message ?? '')}</span>
+        <span>
+          {isActive(job)
+            ? job.state === 'running'
+              ? `${job.phase}, ${formatShare(job.progress)}`
+              : STATE_WORDS[job.state]
+            : (job.error?.message ?? '')}
+        </span>
         <span className="whitespace-nowrap">
           {job.startedBy.name}, {formatWhen(job.endedAt ?? job.createdAt)}
         </span>

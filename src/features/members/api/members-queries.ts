@@ -1,6 +1,14 @@
 import { queryOptions, useMutation, useQueryClient } from '@tanstack/react-query';
 import {
-  changeMemberRole, createToken, inviteMember, listMembers, listTokens, removeMember, revokeToken, withdrawInvitation, type InviteInput,
+  changeMemberRole,
+  createToken,
+  inviteMember,
+  listMembers,
+  listTokens,
+  removeMember,
+  revokeToken,
+  withdrawInvitation,
+  type InviteInput,
 } from '#contract/deposits.ts';
 import type { Role, TokenRight } from '#contract/roles.ts';
 import { call } from '#src/lib/api-client.ts';
@@ -29,13 +37,17 @@ function useRefreshMembers(depositId: number) {
 
 export function useInvite(depositId: number) {
   const onSuccess = useRefreshMembers(depositId);
-  return useMutation({ mutationFn: (body: InviteInput) => call(inviteMember, { params: { depositId }, body }), onSuccess });
+  return useMutation({
+    mutationFn: (body: InviteInput) => call(inviteMember, { params: { depositId }, body }),
+    onSuccess,
+  });
 }
 
 export function useWithdrawInvitation(depositId: number) {
   const onSuccess = useRefreshMembers(depositId);
   return useMutation({
-    mutationFn: (invitationId: number) => call(withdrawInvitation, { params: { depositId, invitationId } }),
+    mutationFn: (invitationId: number) =>
+      call(withdrawInvitation, { params: { depositId, invitationId } }),
     onSuccess,
   });
 }
@@ -60,7 +72,8 @@ export function useRemoveMember(depositId: number) {
 export function useCreateToken(depositId: number) {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (body: { name: string; right: TokenRight; days: number }) => call(createToken, { params: { depositId }, body }),
+    mutationFn: (body: { name: string; right: TokenRight; days: number }) =>
+      call(createToken, { params: { depositId }, body }),
     onSuccess: () => queryClient.invalidateQueries({ queryKey: tokensQuery(depositId).queryKey }),
   });
 }

@@ -26,24 +26,46 @@ export function MemberTable({ depositId, members }: Props) {
   const refusal = useRefusal(changeMemberRole);
   const changing = useChangeRole(depositId);
   const [leaving, setLeaving] = useState<Member | null>(null);
-  const columns = useMemo(() => columnsFor(refusal === undefined, setLeaving, ({ userId, name, role: before }, role) => {
-    const set = (to: Role) => changing.mutateAsync({ userId, role: to });
-    void set(role).then(() =>
-      notifyEdit({ label: `${name} is now ${ROLE_NAMES[role].toLowerCase()}`, undo: () => set(before), redo: () => set(role) }),
-    ).catch(() => undefined);
-  }), [refusal, changing]);
+  const columns = useMemo(
+    () =>
+      columnsFor(refusal === undefined, setLeaving, ({ userId, name, role: before }, role) => {
+        const set = (to: Role) => changing.mutateAsync({ userId, role: to });
+        void set(role)
+          .then(() =>
+            notifyEdit({
+              label: `${name} is now ${ROLE_NAMES[role].toLowerCase()}`,
+              undo: () => set(before),
+              redo: () => set(role),
+            }),
+          )
+          .catch(() => undefined);
+      }),
+    [refusal, changing],
+  );
   return (
     <>
       {changing.error && <Problem error={changing.error} className="mb-2" />}
-      <Table caption="Members of the deposit" columns={columns} rows={members} rowKey={({ userId }) => userId} firstSort={{ header: 'Name' }} />
-      {leaving && <RemoveDialog depositId={depositId} member={leaving} onClose={() => setLeaving(null)} />}
+      <Table
+        caption="Members of the deposit"
+        columns={columns}
+        rows={members}
+        rowKey={({ userId }) => userId}
+        firstSort={{ header: 'Name' }}
+      />
+      {leaving && (
+        <RemoveDialog depositId={depositId} member={leaving} onClose={() => setLeaving(null)} />
+      )}
     </>
   );
 }
 
 type ChangeRole = (member: Member, role: Role) => void;
 
-function columnsFor(mayChange: boolean, onRemove: (member: Member) => void, onChange: ChangeRole): Column<Member>[] {
+function columnsFor(
+  mayChange: boolean,
+  onRemove: (member: Member) => void,
+  onChange: ChangeRole,
+): Column<Member>[] {
   const base: Column<Member>[] = [
     {
       header: 'Name',
@@ -61,12 +83,25 @@ function columnsFor(mayChange: boolean, onRemove: (member: Member) => void, onCh
       value: ({ role }) => ROLES.indexOf(role),
       cell: (member) =>
         mayChange ? (
-          <Select label={`Role of ${member.name}`} isLabelHidden controlSize="tiny" className="w-40" options={ROLE_OPTIONS} value={member.role} onPick={(role) => onChange(member, role)} />
+          <Select
+            label={`Role of ${member.name}`}
+            isLabelHidden
+            controlSize="tiny"
+            className="w-40"
+            options={ROLE_OPTIONS}
+            value={member.role}
+            onPick={(role) => onChange(member, role)}
+          />
         ) : (
           ROLE_NAMES[member.role]
         ),
     },
-    { header: 'Since', isWhole: true, cell: ({ since }) => formatDate(since), value: ({ since }) => since },
+    {
+      header: 'Since',
+      isWhole: true,
+      cell: ({ since }) => formatDate(since),
+      value: ({ since }) => since,
+    },
   ];
   if (!mayChange) return base;
   const remove: Column<Member> = {
@@ -82,7 +117,15 @@ function columnsFor(mayChange: boolean, onRemove: (member: Member) => void, onCh
   return [...base, remove];
 }
 
-function RemoveDialog({ depositId, member, onClose }: { depositId: number; member: Member; onClose: () => void }) {
+function RemoveDialog({
+  depositId,
+  member,
+  onClose,
+}: {
+  depositId: number;
+  member: Member;
+  onClose: () => void;
+}) {
   const removing = useRemoveMember(depositId);
   const isMe = useMe()?.id === member.userId;
   return (
@@ -90,7 +133,11 @@ function RemoveDialog({ depositId, member, onClose }: { depositId: number; membe
       isOpen
       onClose={onClose}
       title={isMe ? 'Leave this deposit?' : `Remove ${member.name}?`}
-      description={isMe ? 'You lose access at once and must be invited to come back.' : 'Access ends at once, also of API tokens. What was done stays in the record.'}
+      description={
+        isMe
+          ? 'You lose access at once and must be invited to come back.'
+          : 'Access ends at once, also of API tokens. What was done stays in the record.'
+      }
       confirmLabel={isMe ? 'Leave' : `Remove ${member.name}`}
       isBusy={removing.isPending}
       onConfirm={() => removing.mutate(member.userId, { onSuccess: onClose })}

@@ -8,7 +8,11 @@ export const auditQuery = (depositId: number, text: string, page: number) =>
   queryOptions({
     queryKey: ['deposits', depositId, 'record', text, page],
     queryFn: ({ signal }) =>
-      call(listAudit, { params: { depositId }, query: { page, pageSize: PAGE_SIZE, ...(text ? { text } : {}) } }, signal),
+      call(
+        listAudit,
+        { params: { depositId }, query: { page, pageSize: PAGE_SIZE, ...(text ? { text } : {}) } },
+        signal,
+      ),
     placeholderData: keepPreviousData,
     staleTime: 10_000,
   });

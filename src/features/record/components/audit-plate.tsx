@@ -18,12 +18,37 @@ import { auditQuery, PAGE_SIZE } from '../api/record-queries.ts';
 const VIEW = { text: urlText(), page: urlNumber(1) };
 
 const COLUMNS: Column<AuditEntry>[] = [
-  { header: 'When', isWhole: true, widthRem: 10, isSortable: false, cell: ({ at }) => <time dateTime={at} title={formatInstantFully(at)}>{formatInstant(at)}</time>, value: ({ at }) => at },
+  {
+    header: 'When',
+    isWhole: true,
+    widthRem: 10,
+    isSortable: false,
+    cell: ({ at }) => (
+      <time dateTime={at} title={formatInstantFully(at)}>
+        {formatInstant(at)}
+      </time>
+    ),
+    value: ({ at }) => at,
+  },
   { header: 'Who', widthRem: 9, isSortable: false, cell: ({ who }) => who, rowHeader: true },
   { header: 'What', isSortable: false, cell: ({ sentence }) => sentence },
   { header: 'Kind', widthRem: 11, isSortable: false, isMono: true, cell: ({ action }) => action },
-  { header: 'Entry', widthRem: 4, align: 'right', isSortable: false, cell: ({ id }) => formatCount(id), value: ({ id }) => id },
-  { header: 'Hash', widthRem: 8, isSortable: false, isMono: true, cell: ({ hash }) => <span title={hash}>{formatHash(hash)}</span>, value: ({ hash }) => hash },
+  {
+    header: 'Entry',
+    widthRem: 4,
+    align: 'right',
+    isSortable: false,
+    cell: ({ id }) => formatCount(id),
+    value: ({ id }) => id,
+  },
+  {
+    header: 'Hash',
+    widthRem: 8,
+    isSortable: false,
+    isMono: true,
+    cell: ({ hash }) => <span title={hash}>{formatHash(hash)}</span>,
+    value: ({ hash }) => hash,
+  },
 ];
 
 /** The audit record, newest first: searched on the server, paged, taken away as CSV. */
@@ -35,11 +60,22 @@ export function AuditPlate({ depositId }: { depositId: number }) {
   return (
     <Plate
       title="What was done"
-      qualifier={data && `${formatCount(data.total)} ${text ? `entries with “${text}”` : data.total === 1 ? 'entry' : 'entries'}, newest first`}
+      qualifier={
+        data &&
+        `${formatCount(data.total)} ${text ? `entries with “${text}”` : data.total === 1 ? 'entry' : 'entries'}, newest first`
+      }
       error={data ? undefined : error}
       onRetry={() => void refetch()}
       busy={isFetching && data ? { progress: null, phase: 'reading' } : null}
-      tools={<DownloadButton href={endpointUrl(downloadAudit, { params: { depositId } })} size="tiny" icon={Download}>CSV</DownloadButton>}
+      tools={
+        <DownloadButton
+          href={endpointUrl(downloadAudit, { params: { depositId } })}
+          size="tiny"
+          icon={Download}
+        >
+          CSV
+        </DownloadButton>
+      }
     >
       <form
         role="search"
@@ -49,7 +85,14 @@ export function AuditPlate({ depositId }: { depositId: number }) {
           setView({ text: typed.trim(), page: 1 }, { push: true });
         }}
       >
-        <Field label="Find in the record" type="search" className="flex-1" maxLength={120} value={typed} onChange={(event) => setTyped(event.target.value)} />
+        <Field
+          label="Find in the record"
+          type="search"
+          className="flex-1"
+          maxLength={120}
+          value={typed}
+          onChange={(event) => setTyped(event.target.value)}
+        />
         <Button type="submit" icon={Search}>
           Find
         </Button>
@@ -61,22 +104,53 @@ export function AuditPlate({ depositId }: { depositId: number }) {
           columns={COLUMNS}
           rows={data.rows}
           rowKey={({ id }) => id}
-          empty={<Empty>{text ? `No entry holds “${text}”.` : 'Every change to this deposit is noted here from the first one on.'}</Empty>}
+          empty={
+            <Empty>
+              {text
+                ? `No entry holds “${text}”.`
+                : 'Every change to this deposit is noted here from the first one on.'}
+            </Empty>
+          }
         />
       )}
-      {pages > 1 && <Pager page={page} pages={pages} onPage={(next) => setView({ page: next }, { push: true })} />}
+      {pages > 1 && (
+        <Pager
+          page={page}
+          pages={pages}
+          onPage={(next) => setView({ page: next }, { push: true })}
+        />
+      )}
     </Plate>
   );
 }
 
-function Pager({ page, pages, onPage }: { page: number; pages: number; onPage: (page: number) => void }) {
+function Pager({
+  page,
+  pages,
+  onPage,
+}: {
+  page: number;
+  pages: number;
+  onPage: (page: number) => void;
+}) {
   return (
-    <nav aria-label="Pages of the record" className="mt-2 flex items-center justify-end gap-2 text-caption text-ink-2">
-      <Button size="tiny" unavailable={page <= 1 && 'This is the newest page'} onClick={() => onPage(page - 1)}>
+    <nav
+      aria-label="Pages of the record"
+      className="mt-2 flex items-center justify-end gap-2 text-caption text-ink-2"
+    >
+      <Button
+        size="tiny"
+        unavailable={page <= 1 && 'This is the newest page'}
+        onClick={() => onPage(page - 1)}
+      >
         Newer
       </Button>
       page {formatCount(page)} of {formatCount(pages)}
-      <Button size="tiny" unavailable={page >= pages && 'This is the oldest page'} onClick={() => onPage(page + 1)}>
+      <Button
+        size="tiny"
+        unavailable={page >= pages && 'This is the oldest page'}
+        onClick={() => onPage(page + 1)}
+      >
         Older
       </Button>
     </nav>
