@@ -17,8 +17,12 @@ export interface RunnerDeps {
 }
 
 export interface Runner {
-  /** Runs a job that is marked as running, to an end that is written down. Never rejects. */
-  run(live: LiveJob, kind: RunnableKind, job: StoredJob & { tries: number }): Promise<void>;
+  /**
+   * Runs a job that is marked as running, to an end that is written down. Never rejects.
+   *
+   * @returns False when the service is stopping, so that nothing more should start.
+   */
+  run(live: LiveJob, kind: RunnableKind, job: StoredJob & { tries: number }): Promise<boolean>;
   /** Removes the unpublished tables of a job, or of all that ended; a failure is only logged. */
   dropTables(jobId: number | null): Promise<void>;
   /** Asks for what follows a job that is done, then notes that it was asked for. */
@@ -58,7 +62,7 @@ export function createRunner({ db, compute, clock, log }: RunnerDeps): Runner {
     });
   }
 
-  async function fail(live: LiveJob, kind: RunnableKind, job: StoredJob & { tries: number }, error: unknown) {
+  async function fail(live: LiveJob, kind: RunnableKind, job: StoredJob & { tries: number }, error: unknown): Promise<boolean> {
     const end = endingOf(error, live.stopReason, job.tries, kind.timeLimitMs);
     if (end.isFault) log.error({ event: 'job.fault', jobId: job.id, kind: job.kind, err: error }, 'a job met a fault');
     const { progress, phase } = live.view();
@@ -73,6 +77,7 @@ export function createRunner({ db, compute, clock, log }: RunnerDeps): Runner {
       }),
     );
     if (isEnded) void dropTables(job.id);
+    return !end.givesTryBack;
   }
 
   return {
@@ -83,11 +88,13 @@ export function createRunner({ db, compute, clock, log }: RunnerDeps): Runner {
       try {
         const keep = await kind.run(job, { signal: live.abort.signal, onProgress: live.report });
         await finish(live, kind, job, keep);
+        return true;
       } catch (error) {
         // A write that fails here as well leaves the job as running: the next start takes it up.
-        await fail(live, kind, job, error).catch((worse: unknown) =>
-          log.error({ event: 'job.unwritten', jobId: job.id, err: worse }, 'the end of a job could not be written'),
-        );
+        return await fail(live, kind, job, error).catch((worse: unknown) => {
+          log.error({ event: 'job.unwritten', jobId: job.id, err: worse }, 'the end of a job could not be written');
+          return true;
+        });
       } finally {
         clearTimeout(limit);
       }

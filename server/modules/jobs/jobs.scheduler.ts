@@ -76,7 +76,8 @@ export function createScheduler({ kinds, slots, emit, ...deps }: SchedulerDeps):
     const live = createLiveJob(turn, seen, emit);
     const work = async (): Promise<void> => {
       if (isRepeat) await runner.dropTables(job.id);
-      await runner.run(live, kind, job);
+      // What a stopping service gives back is for the next start, not for this one again.
+      if (!(await runner.run(live, kind, job))) isClosed = true;
       const ended = await repository.find(job.id);
       if (ended?.state === 'done' && kind.after) await runner.followUp(kind, job);
       running.delete(job.id);
@@ -132,6 +133,8 @@ export function createScheduler({ kinds, slots, emit, ...deps }: SchedulerDeps):
     pump,
     viewOf: (jobId) => running.get(jobId)?.live.view(),
     async stop(jobId, reason) {
+      // A job on its way from waiting to running is in neither place: let it arrive.
+      if (!running.has(jobId)) await pumping;
       const found = running.get(jobId);
       found?.live.stop(reason);
       await found?.settled;
