@@ -92,6 +92,26 @@ const depositRoutes: RouteObject[] = [
     lazy: async () => ({ Component: (await import('./routes/groups.tsx')).GroupsPage }),
   },
   {
+    path: 'populations',
+    lazy: async () => ({ Component: (await import('./routes/populations.tsx')).PopulationsPage }),
+  },
+  {
+    path: 'domains',
+    lazy: async () => ({ Component: (await import('./routes/domains.tsx')).DomainsPage }),
+  },
+  {
+    path: 'domains/:domainId',
+    lazy: async () => ({ Component: (await import('./routes/domain.tsx')).DomainRoute }),
+  },
+  {
+    path: 'geomet',
+    lazy: async () => ({ Component: (await import('./routes/geomet.tsx')).GeometPage }),
+  },
+  {
+    path: 'releases',
+    lazy: async () => ({ Component: (await import('./routes/releases.tsx')).ReleasesPage }),
+  },
+  {
     path: 'record',
     lazy: async () => ({ Component: (await import('./routes/record.tsx')).RecordPage }),
   },
