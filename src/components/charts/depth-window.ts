@@ -65,7 +65,7 @@ export function rulerMarks(window: DepthWindow, lengthPx: number): RulerMark[] {
   for (let i = first; i <= last; i++) {
     const depthM = (i * step) / 5;
     const text = (Math.round(depthM * 10) / 10).toString().replace('-', '\u2212');
-    marks.push({ depthM, label: i % 5 === 0 ? `${text}\u202fm` : null });
+    marks.push({ depthM, label: i % 5 === 0 ? `${text}\u00a0m` : null });
   }
   return marks;
 }

@@ -109,9 +109,8 @@ function Drawing({ box, bins, props }: { box: Box; bins: readonly Bin[]; props: 
 
 /** Upright lines with their words above the plot, moved apart where they would touch. */
 export function ValueMarks({ marks, area, x }: { marks: readonly ValueMark[]; area: PlotArea; x: (value: number) => number }) {
-  const widest = Math.max(0, ...marks.map(({ label }) => textWidth(label, LABEL_PX)));
-  const half = Math.min(widest / 2, area.width / 2);
-  const middles = spreadAlong(marks.map(({ value }) => x(value)), widest + 8, area.left + half - 30, area.left + area.width - half + 12);
+  const widths = marks.map(({ label }) => textWidth(label, LABEL_PX, 'bold'));
+  const middles = spreadAlong(marks.map(({ value }) => x(value)), widths, 6, area.left - 30, area.left + area.width + 12);
   return (
     <g>
       {marks.map(({ value, label, isChosen = false }, index) => {

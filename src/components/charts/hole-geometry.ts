@@ -107,13 +107,20 @@ export function sectionPlace(point: { east: number; north: number }, section: Se
   return { alongM: de * Math.sin(azimuth) + dn * Math.cos(azimuth), offM: de * Math.cos(azimuth) - dn * Math.sin(azimuth) };
 }
 
-/** Name of the coordinate read along a section that runs within a degree of the grid, else metres along. */
-export function sectionAxis(section: SectionPlane): { word: string; label: (alongM: number) => number } {
+/** A coordinate read along an axis of the drawing: `start` at 0 m, rising or falling. */
+export interface AxisReading {
+  word: string;
+  start: number;
+  sign: 1 | -1;
+}
+
+/** The grid coordinate along a section that runs within a degree of the grid, else metres along. */
+export function sectionAxis(section: SectionPlane): AxisReading {
   const turn = ((section.azimuthDeg % 360) + 360) % 360;
   const near = (angle: number) => Math.abs(((turn - angle + 540) % 360) - 180) < 1;
-  if (near(0)) return { word: 'N', label: (along) => section.north + along };
-  if (near(180)) return { word: 'N', label: (along) => section.north - along };
-  if (near(90)) return { word: 'E', label: (along) => section.east + along };
-  if (near(270)) return { word: 'E', label: (along) => section.east - along };
-  return { word: 'm', label: (along) => along };
+  if (near(0)) return { word: ' N', start: section.north, sign: 1 };
+  if (near(180)) return { word: ' N', start: section.north, sign: -1 };
+  if (near(90)) return { word: ' E', start: section.east, sign: 1 };
+  if (near(270)) return { word: ' E', start: section.east, sign: -1 };
+  return { word: ' m', start: 0, sign: 1 };
 }

@@ -19,6 +19,8 @@ export interface LabelRequest {
   towards?: number;
   /** Gap between the point and the label. */
   gap?: number;
+  /** How far from the preferred side it may turn, in eighths; 4 is all round. */
+  turns?: number;
 }
 
 export interface PlacedLabel {
@@ -48,7 +50,7 @@ function around(label: LabelRequest, angle: number): Rect {
   return { x: x - label.width / 2, y: y - label.height / 2, width: label.width, height: label.height };
 }
 
-const TURNS = [0, 1, -1, 2, -2, 3, -3, 4];
+const EIGHTHS = [0, 1, -1, 2, -2, 3, -3, 4];
 
 /**
  * Lays labels beside their points so that none overlaps another, an obstacle or the edge. The
@@ -64,7 +66,8 @@ export function placeLabels(
   const placed: PlacedLabel[] = [];
   for (const label of [...requests].sort((a, b) => b.weight - a.weight)) {
     const start = label.towards ?? -Math.PI / 2;
-    const free = TURNS.map((turn) => around(label, start + (turn * Math.PI) / 4)).find(
+    const allowed = EIGHTHS.filter((turn) => Math.abs(turn) <= (label.turns ?? 4));
+    const free = allowed.map((turn) => around(label, start + (turn * Math.PI) / 4)).find(
       (rect) => inside(rect, room) && !taken.some((other) => overlaps(rect, other)),
     );
     if (free === undefined) continue;
@@ -75,23 +78,26 @@ export function placeLabels(
 }
 
 /**
- * Moves positions along one axis apart to at least `pitch`, in order, within [low, high]. Used for
- * the labels at the ends of lines.
+ * Moves the middles of labels along one axis so that they stay in order, `gap` apart and within
+ * [low, high]; where they cannot all fit they run over the low end.
  *
- * @returns New positions, in the order given.
+ * @returns New middles, in the order given.
  */
-export function spreadAlong(wanted: readonly number[], pitch: number, low: number, high: number): number[] {
-  const order = wanted.map((_value, index) => index).sort((a, b) => (wanted[a] ?? 0) - (wanted[b] ?? 0));
-  const out = [...wanted];
+export function spreadAlong(middles: readonly number[], sizes: readonly number[], gap: number, low: number, high: number): number[] {
+  const order = middles.map((_value, index) => index).sort((a, b) => (middles[a] ?? 0) - (middles[b] ?? 0));
+  const out = [...middles];
+  const half = (index: number) => (sizes[index] ?? 0) / 2;
   let floor = low;
   for (const index of order) {
-    out[index] = Math.max(wanted[index] ?? low, floor);
-    floor = (out[index] ?? floor) + pitch;
+    const middle = Math.max(middles[index] ?? low, floor + half(index));
+    out[index] = middle;
+    floor = middle + half(index) + gap;
   }
   let ceiling = high;
   for (const index of order.reverse()) {
-    out[index] = Math.min(out[index] ?? high, ceiling);
-    ceiling = (out[index] ?? ceiling) - pitch;
+    const middle = Math.min(out[index] ?? high, ceiling - half(index));
+    out[index] = middle;
+    ceiling = middle - half(index) - gap;
   }
   return out;
 }

@@ -1,7 +1,6 @@
 import { useMemo } from 'react';
 import { pointAtDepth } from './hole-geometry.ts';
-import type { HoleTrace, TracePoint } from './hole-geometry.ts';
-import { coordinateLabel } from './ticks.ts';
+import type { AxisReading, HoleTrace, TracePoint } from './hole-geometry.ts';
 import { buildScene } from './trace-scene.ts';
 import type { Flat } from './trace-scene.ts';
 import { TraceView } from './trace-view.tsx';
@@ -14,6 +13,8 @@ export interface PlanViewProps extends TraceBasics {
   flags?: readonly { label: string; east: number; north: number }[];
 }
 
+const EAST: AxisReading = { word: ' E', start: 0, sign: 1 };
+const NORTH: AxisReading = { word: ' N', start: 0, sign: 1 };
 const NO_FAULTS: NonNullable<PlanViewProps['faults']> = [];
 const NO_FLAGS: NonNullable<PlanViewProps['flags']> = [];
 const fromAbove = ({ east, north }: TracePoint): Flat => [east, north];
@@ -24,11 +25,12 @@ export function PlanView({ faults = NO_FAULTS, flags = NO_FLAGS, ...basics }: Pl
   const scene = useMemo(() => buildScene(basics.holes, fromAbove, false), [basics.holes]);
   const extras = useMemo(
     () => ({
-      xTick: (metres: number) => `${coordinateLabel(metres)} E`,
-      yTick: (metres: number) => `${coordinateLabel(metres)} N`,
+      xAxis: EAST,
+      yAxis: NORTH,
       lines: faults.map(({ label, points }) => ({ label, points, kind: 'fault' as const })),
       flags: flags.map(({ label, east, north }) => ({ label, at: [east, north] as const })),
       strokePx: 4.4,
+      exaggeration: 1,
     }),
     [faults, flags],
   );

@@ -1,7 +1,6 @@
 import { useCallback, useMemo } from 'react';
 import { pointAtDepth, sectionAxis, sectionPlace } from './hole-geometry.ts';
-import type { HoleTrace, SectionPlane, TracePoint } from './hole-geometry.ts';
-import { coordinateLabel } from './ticks.ts';
+import type { AxisReading, HoleTrace, SectionPlane, TracePoint } from './hole-geometry.ts';
 import { buildScene } from './trace-scene.ts';
 import type { Flat } from './trace-scene.ts';
 import { TraceView } from './trace-view.tsx';
@@ -15,6 +14,7 @@ export interface SectionViewProps extends TraceBasics {
   ground?: readonly { east: number; north: number; elevation: number }[];
 }
 
+const ELEVATION: AxisReading = { word: '', start: 0, sign: 1 };
 const NO_GROUND: NonNullable<SectionViewProps['ground']> = [];
 
 /** Holes within a corridor about a vertical section, seen square to it: V = H unless said. */
@@ -30,20 +30,20 @@ export function SectionView({ section, exaggeration = 1, ground = NO_GROUND, ...
   const scene = useMemo(() => buildScene(basics.holes, flatten, true), [basics.holes, flatten]);
   const extras = useMemo(() => {
     const plane = { east, north, azimuthDeg, halfWidthM };
-    const axis = sectionAxis(plane);
     const surface = ground
       .map((point) => ({ ...sectionPlace(point, plane), elevation: point.elevation }))
       .filter(({ offM }) => Math.abs(offM) <= halfWidthM)
       .sort((a, b) => a.alongM - b.alongM)
       .map(({ alongM, elevation }) => [alongM, elevation] as const);
     return {
-      xTick: (metres: number) => `${coordinateLabel(axis.label(metres))} ${axis.word}`,
-      yTick: coordinateLabel,
+      xAxis: sectionAxis(plane),
+      yAxis: ELEVATION,
       lines: surface.length > 1 ? [{ label: 'ground', points: surface, kind: 'ground' as const }] : [],
       flags: [],
       strokePx: 6,
+      exaggeration,
     };
-  }, [east, north, azimuthDeg, halfWidthM, ground]);
+  }, [east, north, azimuthDeg, halfWidthM, ground, exaggeration]);
   const placeOf = useCallback((hole: HoleTrace, depthM: number) => flatten(pointAtDepth(hole.points, depthM)), [flatten]);
-  return <TraceView {...basics} scene={scene} extras={extras} exaggeration={exaggeration} usualHeight={240} placeOf={placeOf} />;
+  return <TraceView {...basics} scene={scene} extras={extras} usualHeight={240} placeOf={placeOf} />;
 }

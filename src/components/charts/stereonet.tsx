@@ -35,10 +35,10 @@ export function Stereonet(props: StereonetProps) {
 
 /** Net and key: side by side in a wide box, one over the other in a narrow one. */
 export function netLayout(box: Box): { radius: number; cx: number; cy: number; keyX: number; keyY: number } {
-  const aside = box.width >= box.height + KEY_PX - 30;
-  const keyHeight = aside ? 0 : 5 * KEY_ROW_PX + 6;
-  const room = Math.min(aside ? box.width - KEY_PX - 20 : box.width, box.height - keyHeight);
-  const radius = Math.max(30, room / 2 - 20);
+  const roomAside = Math.min(box.width - KEY_PX - 12, box.height);
+  const roomAbove = Math.min(box.width, box.height - 5 * KEY_ROW_PX - 6);
+  const aside = roomAside >= roomAbove;
+  const radius = Math.max(30, Math.max(roomAside, roomAbove) / 2 - 20);
   const cx = aside ? radius + 14 : box.width / 2;
   const cy = aside ? box.height / 2 + 4 : radius + 20;
   return { radius, cx, cy, keyX: aside ? cx + radius + 24 : Math.max(8, (box.width - KEY_PX) / 2), keyY: aside ? cy - 36 : cy + radius + 16 };

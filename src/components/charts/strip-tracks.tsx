@@ -5,7 +5,7 @@ import { highestGrade, inWindow, joined, rootShare } from './core-paths.ts';
 import type { CoreInterval, DepthInterval } from './core-types.ts';
 import type { HoleStripProps } from './hole-strip.tsx';
 import { rockFill } from './rock-patterns.tsx';
-import { fitText } from './text-width.ts';
+import { textWidth } from './text-width.ts';
 
 /** Length along the hole and place across it, whichever way the strip lies. */
 export interface Laid {
@@ -59,11 +59,19 @@ export function StripTrack({ name, props, place, low, high, prefix }: TrackProps
 
 function RunLabel({ place, run, low, high, text, fill }: { place: Laid; run: DepthInterval; low: number; high: number; text: string; fill: string }) {
   const { x, y, width, height } = place.rect(run.fromM, run.toM, low, high);
-  const shown = fitText(text, width - 8, TICK_PX, 'mono');
-  if (shown === '' || shown.endsWith('…') || height < 12) return null;
+  const long = textWidth(text, TICK_PX, 'mono') + 8;
+  if (text === '') return null;
+  if (place.isVertical && long > width && long <= height && width >= 12) {
+    return (
+      <text transform={`translate(${x + width / 2} ${y + height / 2}) rotate(-90)`} dy="0.35em" textAnchor="middle" style={{ ...codeText, fill }}>
+        {text}
+      </text>
+    );
+  }
+  if (long > width || height < 12) return null;
   return (
     <text x={x + 5} y={y + height / 2} dy="0.35em" style={{ ...codeText, fill }}>
-      {shown}
+      {text}
     </text>
   );
 }
@@ -125,7 +133,7 @@ function GroupTrack({ intervals, groups, place, low, high, prefix }: { intervals
 }
 
 function StructureTrack({ props, place, low, high }: PlainTrack) {
-  const [middle, reach] = [(low + high) / 2, (high - low) / 2 - 1];
+  const [middle, reach] = [(low + high) / 2, Math.min(7, (high - low) / 2 - 1)];
   return (
     <g>
       {(props.structures ?? []).map(({ depthM, alphaDeg, sure }, index) => {

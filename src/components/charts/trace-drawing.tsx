@@ -3,22 +3,25 @@ import { captionText, halo, LABEL_PX, TICK_PX, tickText } from './chart-styles.t
 import { isPicked } from './chart-types.ts';
 import type { PickedRows } from './chart-types.ts';
 import { pickedMiddles } from './hole-geometry.ts';
-import type { HoleTrace, PaintKey } from './hole-geometry.ts';
+import type { AxisReading, HoleTrace, PaintKey } from './hole-geometry.ts';
 import { placeLabels } from './label-placement.ts';
 import { textWidth } from './text-width.ts';
-import { linearTicks } from './ticks.ts';
-import { scaleBarM } from './trace-scene.ts';
+import { coordinateLabel, linearTicks } from './ticks.ts';
+import type { TickRoom } from './ticks.ts';
+import { scaleBarM, shortNames } from './trace-scene.ts';
 import type { Flat, Scene, TracePlaces } from './trace-scene.ts';
 
 /** What a plan or section shows beside its holes, in metres of the scene. */
 export interface TraceExtras {
-  xTick: (metres: number) => string;
-  yTick: (metres: number) => string;
+  xAxis: AxisReading;
+  yAxis: AxisReading;
   /** Faults (dash and dot) and the ground (solid). */
   lines: readonly { label: string; points: readonly Flat[]; kind: 'fault' | 'ground' }[];
   /** Site checks and the like: a triangle. */
   flags: readonly { label: string; at: Flat }[];
   strokePx: number;
+  /** Vertical over horizontal scale. */
+  exaggeration: number;
 }
 
 interface Props {
@@ -97,7 +100,7 @@ export function TraceDrawing(props: Props) {
         )}
       </g>
       <Heads scene={scene} places={places} extras={extras} lit={lit} selectedHoles={selectedHoles} />
-      <ScaleBar places={places} />
+      <ScaleBar places={places} exaggeration={extras.exaggeration} />
     </g>
   );
 }
@@ -105,13 +108,9 @@ export function TraceDrawing(props: Props) {
 /** Coordinates at the foot and the left, with a pale grid. */
 function Grid({ places, extras }: Props) {
   const { area } = places;
-  const span = (at: (metres: number) => number, from: number, to: number): [number, number] => {
-    const unit = at(1) - at(0);
-    return [(from - at(0)) / unit, (to - at(0)) / unit];
-  };
   const [bottom, right] = [area.top + area.height, area.left + area.width];
-  const xTicks = linearTicks(span(places.x, area.left, right), { lengthPx: area.width, most: 5, label: extras.xTick });
-  const yTicks = linearTicks(span(places.y, bottom, area.top), { lengthPx: area.height, vertical: true, most: 5, label: extras.yTick });
+  const xTicks = readings(extras.xAxis, places.x, area.left, right, { lengthPx: area.width });
+  const yTicks = readings(extras.yAxis, places.y, bottom, area.top, { lengthPx: area.height, vertical: true });
   return (
     <g>
       {xTicks.map(({ value, label }) => {
@@ -138,9 +137,20 @@ function Grid({ places, extras }: Props) {
   );
 }
 
+/** Round coordinates along one axis, each with its place in metres of the scene. */
+function readings({ word, start, sign }: AxisReading, at: (metres: number) => number, from: number, to: number, room: TickRoom) {
+  const unit = at(1) - at(0);
+  const ends = [from, to].map((px) => start + (sign * (px - at(0))) / unit).sort((a, b) => a - b);
+  const label = (coordinate: number) => `${coordinateLabel(coordinate)}${word}`;
+  return linearTicks([ends[0] ?? 0, ends[1] ?? 1], { ...room, most: 6, label }).map((tick) => ({ label: tick.label, value: (tick.value - start) * sign }));
+}
+
 type HeadsProps = Pick<Props, 'scene' | 'places' | 'extras' | 'lit' | 'selectedHoles'>;
 
-/** Hole names by their collars, as many as keep clear of each other; faults and flags give way last. */
+/** More holes than this in view: only the chosen are named, the rest by pointer. */
+const MOST_NAMES = 24;
+
+/** Hole names above their collars, as many as keep clear of each other. */
 function Heads({ scene, places, extras, lit, selectedHoles }: HeadsProps) {
   const { area } = places;
   const room = { x: area.left - 20, y: 0, width: area.width + 28, height: area.top + area.height };
@@ -149,16 +159,20 @@ function Heads({ scene, places, extras, lit, selectedHoles }: HeadsProps) {
     return px >= area.left && px <= area.left + area.width && py >= area.top - 4 && py <= area.top + area.height;
   };
   const isStrong = (name: string) => name === lit || selectedHoles?.has(name) === true;
-  const names = scene.heads.filter(({ at }) => inView(at)).slice(0, 400);
+  const inside = scene.heads.filter(({ at }) => inView(at));
+  const names = inside.length > MOST_NAMES ? inside.filter(({ name }) => isStrong(name)) : inside;
+  const short = shortNames(inside.map(({ name }) => name));
+  const word = (name: string) => short.get(name) ?? name;
   const flags = extras.flags.filter(({ at }) => inView(at));
   const placed = placeLabels(
     names.map(({ name, at: [x, y] }) => ({
       id: name,
       x: places.x(x),
       y: places.y(y),
-      width: textWidth(name, TICK_PX, isStrong(name) ? 'bold' : 'plain') + 3,
+      width: textWidth(word(name), TICK_PX, isStrong(name) ? 'bold' : 'plain') + 3,
       height: 13,
       weight: isStrong(name) ? 2 : 1,
+      turns: isStrong(name) ? 4 : 1,
     })),
     room,
     [
@@ -175,14 +189,14 @@ function Heads({ scene, places, extras, lit, selectedHoles }: HeadsProps) {
         ))}
       {placed.map(({ id, x, y }) => (
         <text key={id} x={x} y={y} dy="0.35em" textAnchor="middle" style={{ ...tickText, ...halo, fill: 'var(--ink-2)', ...(isStrong(id) ? { fontWeight: 600, fill: 'var(--ink)' } : {}) }}>
-          {id}
+          {word(id)}
         </text>
       ))}
     </g>
   );
 }
 
-function ScaleBar({ places }: { places: TracePlaces }) {
+function ScaleBar({ places, exaggeration }: { places: TracePlaces; exaggeration: number }) {
   const perM = places.base.scale * places.zoom.k;
   const metres = scaleBarM(perM);
   const right = places.area.left + places.area.width - 2;
@@ -191,8 +205,8 @@ function ScaleBar({ places }: { places: TracePlaces }) {
   return (
     <g>
       <path d={`M${left} ${y - 4}v4H${right}v-4`} fill="none" stroke="var(--ink-2)" strokeWidth={1.3} />
-      <text x={(left + right) / 2} y={y - 5} textAnchor="middle" style={{ ...captionText, ...halo, fontSize: LABEL_PX - 1, fill: 'var(--ink-2)' }}>
-        {metres >= 1 ? metres : metres.toPrecision(1)} m
+      <text x={right} y={y - 6} textAnchor="end" style={{ ...captionText, ...halo, fontSize: LABEL_PX - 1, fill: 'var(--ink-2)' }}>
+        {metres >= 1 ? metres : metres.toPrecision(1)} m{exaggeration === 1 ? '' : `, V = ${exaggeration} H`}
       </text>
     </g>
   );

@@ -137,9 +137,18 @@ export function nearestMiddle({ middles }: Scene, x: number, y: number, reachM: 
   return found === null ? null : { row: middles.rows[found] ?? 0, hole: middles.holes[found] ?? '' };
 }
 
-/** Length of a scale bar: 1, 2 or 5 times a power of ten, drawn as 60 to 150 px. */
+/** Names without the start they share up to its last separator: TFD-019, TFD-020 become 019, 020. */
+export function shortNames(names: readonly string[]): Map<string, string> {
+  const [first = ''] = names;
+  let shared = names.length > 2 ? first.length : 0;
+  for (const name of names) while (shared > 0 && !name.startsWith(first.slice(0, shared))) shared--;
+  const cut = first.slice(0, shared).search(/[-_ .][^-_ .]*$/) + 1;
+  return new Map(names.map((name) => [name, name.slice(cut) === '' ? name : name.slice(cut)]));
+}
+
+/** Length of a scale bar: 1, 2 or 5 times a power of ten, drawn as 45 to 115 px. */
 export function scaleBarM(pixelsPerM: number): number {
-  const wanted = 60 / pixelsPerM;
+  const wanted = 45 / pixelsPerM;
   const power = 10 ** Math.floor(Math.log10(wanted));
   return ([1, 2, 5, 10].find((step) => step * power >= wanted) ?? 10) * power;
 }

@@ -30,7 +30,6 @@ export interface TraceBasics extends ChartBasics {
 interface Props extends TraceBasics {
   scene: Scene;
   extras: TraceExtras;
-  exaggeration?: number;
   usualHeight: number;
   /** Place of a row, for the ring about a hovered or chosen interval. */
   placeOf: (hole: HoleTrace, depthM: number) => Flat | null;
@@ -47,7 +46,7 @@ function metresAt(places: TracePlaces, px: number, py: number): Flat {
 
 /** Holes on a plan or a section: pan, zoom, hover an interval, take a hole. */
 export function TraceView(props: Props) {
-  const { scene, extras, exaggeration = 1, usualHeight } = props;
+  const { scene, extras, usualHeight } = props;
   const [lit, setLit] = useState<string | null>(null);
   const clip = useId();
   const measured = useBox({ width: 420, height: typeof props.height === 'number' ? props.height : usualHeight });
@@ -58,7 +57,7 @@ export function TraceView(props: Props) {
   const places = useMemo((): TracePlaces => {
     const area = { left: PAD.left, top: PAD.top, width, height };
     const all = extentOf([scene.extent.low, scene.extent.high, ...extras.lines.flatMap(({ points }) => points)]);
-    const base = fitExtent(all, area, exaggeration);
+    const base = fitExtent(all, area, extras.exaggeration);
     return {
       area,
       base,
@@ -66,7 +65,7 @@ export function TraceView(props: Props) {
       x: (metres) => PAD.left + shiftX + k * (base.x(metres) - PAD.left),
       y: (metres) => PAD.top + shiftY + k * (base.y(metres) - PAD.top),
     };
-  }, [scene, extras, exaggeration, width, height, k, shiftX, shiftY]);
+  }, [scene, extras, width, height, k, shiftX, shiftY]);
   return (
     <ChartFrame
       {...props}

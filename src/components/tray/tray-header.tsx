@@ -52,8 +52,12 @@ export function TrayHeader(props: Props) {
           {onAddHole !== undefined && <HolePicker names={holeNames.filter((name) => !inTray.has(name))} onAdd={onAddHole} />}
           <span className="shrink truncate text-caption text-ink-3">{props.note}</span>
           <RockKey entries={props.rocks} />
-          <TracksMenu tracks={props.tracks} gradeLabel={props.gradeLabel} grades={props.grades} onTracks={props.onTracks} />
-          <WindowButton window={props.window} fit={props.fit} onWindow={props.onWindow} />
+          {holes.length > 0 && (
+            <>
+              <TracksMenu tracks={props.tracks} gradeLabel={props.gradeLabel} grades={props.grades} onTracks={props.onTracks} />
+              <WindowButton window={props.window} fit={props.fit} onWindow={props.onWindow} />
+            </>
+          )}
         </>
       ) : (
         <span className="flex-1 truncate text-small text-ink-2">{props.summary}</span>

@@ -1,4 +1,4 @@
-import { useCallback } from 'react';
+import { useCallback, useMemo } from 'react';
 import { formatMetres } from '#src/lib/format.ts';
 import { tickText } from '../charts/chart-styles.ts';
 import { isPicked } from '../charts/chart-types.ts';
@@ -9,7 +9,7 @@ import type { DepthWindow } from '../charts/depth-window.ts';
 import type { RockKeyEntry } from '../charts/rock-patterns.tsx';
 import { fitText } from '../charts/text-width.ts';
 import { chosenRuns } from './interval-walk.ts';
-import { TroughTracks } from './trough-tracks.tsx';
+import { DomainCodes, TroughTracks } from './trough-tracks.tsx';
 import { LABELS_PX, TROUGH_GAP_PX } from './trough-layout.ts';
 import type { TroughLayout } from './trough-layout.ts';
 import type { TrayHole } from './tray-types.ts';
@@ -39,7 +39,8 @@ export function TrayTrough(props: Props) {
   const perM = lengthPx / (window[1] - lowM);
   const along = useCallback((depthM: number) => LABELS_PX + (depthM - originM - lowM) * perM, [originM, lowM, perM]);
   const { drag, cursor, handlers } = useTrough({ ...props, perM });
-  const own: DepthWindow = [lowM + originM, window[1] + originM];
+  const highM = window[1];
+  const own = useMemo((): DepthWindow => [lowM + originM, highM + originM], [lowM, highM, originM]);
   const hovered = hoveredRow === null ? undefined : hole.intervals.find(({ row }) => row === hoveredRow);
   const atCursor = cursor === null ? undefined : hole.intervals[cursor];
   const clip = `${props.prefix}-${hole.name.replace(/[^\w-]/g, '_')}`;
@@ -61,6 +62,7 @@ export function TrayTrough(props: Props) {
           <rect x={along(0) - 4} y={0.5} width={Math.max(1, along(hole.lengthM) - along(0) + 8)} height={layout.height - 1} rx={3} fill="var(--trough)" stroke="var(--trough-deep)" />
           <TroughTracks hole={hole} layout={layout} along={along} window={own} rockKey={props.rockKey} highestGrade={props.highestGrade} prefix={props.prefix} />
           <Blocks along={along} window={own} lengthPx={lengthPx} lengthM={hole.lengthM} height={layout.height} />
+          <DomainCodes intervals={hole.intervals} layout={layout} along={along} window={own} />
           <Chosen runs={selectedRows === undefined ? [] : chosenRuns(hole.intervals, (row) => isPicked(selectedRows, row))} along={along} height={layout.height} />
           {drag !== null && <DragWash drag={drag} along={along} height={layout.height} />}
           {hovered !== undefined && <Hairline interval={hovered} along={along} height={layout.height} />}
@@ -90,9 +92,11 @@ function TroughLabels({ hole, layout, gradeLabel }: { hole: TrayHole; layout: Tr
   );
 }
 
-/** Pale blocks as in a core tray, at the labels of the ruler. */
+const BLOCK_M = 50;
+
+/** Pale blocks as in a core tray, each 50 m, further apart where that is too close to see. */
 function Blocks({ along, window, lengthPx, lengthM, height }: { along: Along; window: DepthWindow; lengthPx: number; lengthM: number; height: number }) {
-  const step = labelStep(window, lengthPx);
+  const step = Math.max(BLOCK_M, labelStep(window, lengthPx));
   const first = Math.max(1, Math.ceil(window[0] / step));
   const count = Math.max(0, Math.floor(Math.min(window[1], lengthM) / step) - first + 1);
   return (

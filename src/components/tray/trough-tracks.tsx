@@ -91,29 +91,54 @@ function GroupTrack({ intervals, top, height, along, prefix }: Band & { interval
 const sameDomain = (a: CoreInterval, b: CoreInterval) =>
   a.domain?.code === b.domain?.code && (a.isHost === true) === (b.isHost === true) && (a.isHandSet === true) === (b.isHandSet === true);
 
+const domainRuns = (intervals: readonly CoreInterval[]) => joined(intervals, sameDomain).filter(({ domain }) => domain !== null);
+const isOutline = ({ isHost, domain }: CoreInterval) => isHost === true || domain === null || domain.slot === null;
+
 function DomainTrack({ intervals, top, height, along, prefix }: Band & { intervals: readonly CoreInterval[] }) {
   return (
     <g>
-      {joined(intervals, sameDomain).map((run) => {
-        if (run.domain === null) return null;
-        const { code, slot } = run.domain;
+      {domainRuns(intervals).map((run) => {
+        const slot = run.domain?.slot ?? null;
         const x = along(run.fromM);
         const width = Math.max(0.4, along(run.toM) - x);
-        const isOutline = run.isHost === true || slot === null;
-        const paint = isOutline ? { fill: 'none', stroke: 'var(--rule-firm)' } : { fill: runFill(slot, prefix), stroke: slotColours(slot).edge };
-        const ink = isOutline ? 'var(--ink-3)' : slotColours(slot).hollow ? 'var(--ink)' : slotColours(slot).onFill;
+        const paint = slot === null || isOutline(run) ? { fill: 'none', stroke: 'var(--rule-firm)' } : { fill: runFill(slot, prefix), stroke: slotColours(slot).edge };
+        const notch = Math.min(5, width);
         return (
           <g key={run.row}>
             <rect x={x} y={top} width={width} height={height} {...paint} strokeWidth={0.75} />
-            {run.isHandSet === true && <path d={`M${x + width - 5} ${top}h5v5z`} fill="var(--ink)" />}
-            {width > textWidth(code, TICK_PX, 'mono') + 7 && (
-              <text x={x + 4} y={top + height / 2} dy="0.36em" style={{ ...codeText, fill: ink, ...(isOutline ? { fontWeight: 400 } : {}) }}>
-                {code}
-              </text>
-            )}
+            {run.isHandSet === true && <path d={`M${x + width - notch} ${top}h${notch}v${notch}z`} fill="var(--ink)" />}
           </g>
         );
       })}
     </g>
   );
 }
+
+interface CodesProps {
+  intervals: readonly CoreInterval[];
+  layout: TroughLayout;
+  along: Along;
+  window: DepthWindow;
+}
+
+/** Codes of domains, where they fit in the part on show; above the blocks so that none is cut. */
+export const DomainCodes = memo(function DomainCodes({ intervals, layout, along, window }: CodesProps) {
+  const track = layout.tracks.find(({ name }) => name === 'domain');
+  if (track === undefined) return null;
+  return (
+    <g>
+      {domainRuns(intervals.filter((interval) => inWindow(interval, window))).map((run) => {
+        const { code, slot } = run.domain ?? { code: '', slot: null };
+        const from = along(Math.max(run.fromM, window[0]));
+        if (along(Math.min(run.toM, window[1])) - from < textWidth(code, TICK_PX, 'mono') + 7) return null;
+        const plain = slot === null || isOutline(run);
+        const fill = plain ? 'var(--ink-3)' : slotColours(slot).hollow ? 'var(--ink)' : slotColours(slot).onFill;
+        return (
+          <text key={run.row} x={from + 4} y={track.top + track.height / 2} dy="0.36em" style={{ ...codeText, fill, ...(plain ? { fontWeight: 400 } : {}) }}>
+            {code}
+          </text>
+        );
+      })}
+    </g>
+  );
+});
