@@ -28,6 +28,18 @@ export const REQUIRED_ROLES: Record<TableKind, readonly (readonly ColumnRole[])[
   fault: [['name'], ['x'], ['y'], ['z'], ['dip'], ['dip-direction']],
 };
 
+/** What a table of a kind uses, its required columns and the others; the rest of a file is skipped. */
+export const ROLES_OF_KIND: Record<TableKind, readonly ColumnRole[]> = {
+  collar: ['hole', 'x', 'y', 'z', 'length', 'azimuth', 'dip', 'campaign', 'date', 'note'],
+  survey: ['hole', 'depth', 'azimuth', 'dip', 'date', 'note'],
+  assay: ['hole', 'from', 'to', 'sample', 'campaign', 'laboratory', 'batch', 'date', 'analyte', 'note'],
+  surface: ['sample', 'x', 'y', 'z', 'code', 'campaign', 'laboratory', 'batch', 'date', 'analyte', 'note'],
+  lithology: ['hole', 'from', 'to', 'code', 'note'],
+  weathering: ['hole', 'from', 'to', 'code', 'note'],
+  structure: ['hole', 'depth', 'alpha', 'beta', 'dip', 'dip-direction', 'structure-type', 'confidence', 'note'],
+  fault: ['name', 'x', 'y', 'z', 'dip', 'dip-direction', 'note'],
+};
+
 /** Units an analyte column may be written in; storage is ppm. */
 export const ASSAY_UNITS = ['ppm', 'ppb', '%', 'g/t', 'mg/kg', 'ug/kg', 'kg/t', 'oz/st', 'oz/lt', 'oz/t'] as const;
 export const AssayUnit = z.enum(ASSAY_UNITS);

@@ -1,17 +1,5 @@
-import { COLUMN_ROLES, type ColumnGuess, type ColumnRole, type TableKind } from '#contract/files.ts';
+import { COLUMN_ROLES, ROLES_OF_KIND, type ColumnGuess, type ColumnRole, type TableKind } from '#contract/files.ts';
 import { parseHeader, type HeaderReading } from '#kernels/units/header.ts';
-
-/** What a kind of table uses beyond its required columns; other columns start as skipped. */
-const ROLES_OF_KIND: Record<TableKind, readonly ColumnRole[]> = {
-  collar: ['hole', 'x', 'y', 'z', 'length', 'azimuth', 'dip', 'campaign', 'date', 'note'],
-  survey: ['hole', 'depth', 'azimuth', 'dip', 'date', 'note'],
-  assay: ['hole', 'from', 'to', 'sample', 'campaign', 'laboratory', 'batch', 'date', 'analyte', 'note'],
-  surface: ['sample', 'x', 'y', 'z', 'code', 'campaign', 'laboratory', 'batch', 'date', 'analyte', 'note'],
-  lithology: ['hole', 'from', 'to', 'code', 'note'],
-  weathering: ['hole', 'from', 'to', 'code', 'note'],
-  structure: ['hole', 'depth', 'alpha', 'beta', 'dip', 'dip-direction', 'structure-type', 'confidence', 'note'],
-  fault: ['name', 'x', 'y', 'z', 'dip', 'dip-direction', 'note'],
-};
 
 const SAMPLE_CELLS = 50;
 
@@ -42,7 +30,9 @@ export function guessKind(header: readonly string[], fileName: string, rows: rea
 /** What each column probably is, for a kind; a role is given once, to the first column that fits. */
 export function guessColumns(header: readonly string[], rows: readonly string[][], kind: TableKind): ColumnGuess[] {
   const used = new Set<ColumnRole>();
-  return readingsOf(header, rows).map((reading, index) => {
+  const readings = readingsOf(header, rows);
+  const hasEasting = readings.some(({ role }) => role === 'x');
+  return readings.map((reading, index) => {
     const text = header[index] ?? '';
     const firstValue = rows.map((cells) => (cells[index] ?? '').trim()).find((cell) => cell !== '') ?? '';
     const role = isRole(reading.role) ? reading.role : 'skip';
@@ -56,6 +46,8 @@ export function guessColumns(header: readonly string[], rows: readonly string[][
     }
     if (used.has(role)) return skipped(`another column is ${role} already`);
     used.add(role);
+    // Beside an x there is no doubt whether y is a coordinate.
+    if (role === 'y' && hasEasting) return { ...base, role, certainty: 'sure', reason: 'stands beside x' };
     return { ...base, role, certainty: reading.certainty, reason: reading.reason };
   });
 }
