@@ -4,11 +4,8 @@ import { transact } from '#server/db/transact.ts';
 import type { Clock } from '#server/lib/clock.ts';
 import { AppError, orNotFound } from '#server/lib/errors.ts';
 import type { AuthService } from './auth.service.ts';
-import {
-  type InvitationsService,
-  noSuchInvitation,
-  type OpenInvitation,
-} from './invitations.service.ts';
+import type { OpenInvitation } from './invitations.repository.ts';
+import { type InvitationsService, noSuchInvitation } from './invitations.service.ts';
 import type { Passwords } from './password-hasher.ts';
 import { requireGoodPassword } from './password-rules.ts';
 import type { Origin, Sessions } from './sessions.ts';
