@@ -3,13 +3,13 @@ import { normalQuantile } from './normal.ts';
 /** A stream of reproducible numbers; the only source of randomness in the kernels. */
 export interface Random {
   /** 32 random bits as an unsigned integer. */
-  bits(): number;
+  readonly bits: () => number;
   /** Uniform on [0, 1), 53 bits. */
-  uniform(): number;
+  readonly uniform: () => number;
   /** Standard normal, one uniform draw each. */
-  normal(): number;
+  readonly normal: () => number;
   /** Uniform integer in [0, limit). */
-  below(limit: number): number;
+  readonly below: (limit: number) => number;
 }
 
 /** Four outputs of splitmix32 from a seed: the generator's first state. */

@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { logNormalCdf, normalCdf, normalDensity, normalQuantile } from '#kernels/normal.ts';
 
-const relative = (found: number, expected: number) => Math.abs(found - expected) / Math.abs(expected);
+const relative = (found: number, expected: number) =>
+  Math.abs(found - expected) / Math.abs(expected);
 
 describe('standard normal', () => {
   it.each([
@@ -39,9 +40,12 @@ describe('standard normal', () => {
     [-20, -203.9171553710973],
     [0, -0.6931471805599453],
     [5, -2.8665161296376294e-7],
-  ])('ln of the distribution function at %d (computed: scipy 1.10.1 norm.logcdf)', (z, expected) => {
-    expect(relative(logNormalCdf(z), expected)).toBeLessThan(1e-9);
-  });
+  ])(
+    'ln of the distribution function at %d (computed: scipy 1.10.1 norm.logcdf)',
+    (z, expected) => {
+      expect(relative(logNormalCdf(z), expected)).toBeLessThan(1e-9);
+    },
+  );
 
   it('has density 1/sqrt(2 pi) at 0', () => {
     expect(normalDensity(0)).toBeCloseTo(0.3989422804014327, 15);
