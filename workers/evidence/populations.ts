@@ -36,24 +36,44 @@ function densityOf({ values, qualifiers }: AssayColumn, mask: Uint8Array, grid: 
   return { ppm: grid.map(Math.exp), height: heights.map((height) => (tallest > 0 ? height / tallest : 0)) };
 }
 
-/** The pay analytes over the whole, in the domain, and in each part of it by rock, weathering and fault side. */
-export function populationParts(rows: DomainRows, mask: Uint8Array, assays: ReadonlyMap<string, AssayColumn>, code: string): PopulationPart[] {
-  const parts: PopulationPart[] = [];
-  const whole = new Uint8Array(mask.length).fill(1);
-  for (const [variable, assay] of assays) {
-    const grid = gridOf(assay);
-    const add = (key: string, label: string, role: PopulationPart['role'], splitBy: string | null, own: Uint8Array): void => {
-      const { verdict, n, mean, median, cv, dip, dipP, deltaBic, populations } = populationCell({ subsetKey: key, subsetLabel: label, variable, assay, lengthsM: rows.lengthsM, mask: own });
-      parts.push({ subsetKey: key, variable, verdict, n, mean, median, cv, dip, dipP, deltaBic, populations, label, role, splitBy, density: densityOf(assay, own, grid) });
-    };
-    add('all', 'all intervals', 'before', null, whole);
-    add(`domain:${code}`, code, 'domain', null, mask);
-    for (const { name, logged } of rows.categories) {
-      logged.levels.forEach((level, place) => {
-        const own = mask.map((isIn, row) => (isIn === 1 && logged.codes[row] === place ? 1 : 0));
-        if (own.reduce((sum, isIn) => sum + isIn, 0) >= LEAST_PART) add(`${name}:${level}`, level, 'part', name, own);
-      });
-    }
+interface PartRequest {
+  key: string;
+  label: string;
+  role: PopulationPart['role'];
+  splitBy: string | null;
+  mask: Uint8Array;
+}
+
+/** Whole, domain or part as one row of the picture: its screen in brief and its curve. */
+function partOf(rows: DomainRows, variable: string, assay: AssayColumn, grid: readonly number[], { key, label, role, splitBy, mask }: PartRequest): PopulationPart {
+  const weightsM = rows.holeStarts ? rows.lengthsM : null;
+  const { verdict, n, mean, median, cv, dip, dipP, deltaBic, populations } = populationCell({ subsetKey: key, subsetLabel: label, variable, assay, weightsM, mask });
+  return { subsetKey: key, variable, verdict, n, mean, median, cv, dip, dipP, deltaBic, populations, label, role, splitBy, density: densityOf(assay, mask, grid) };
+}
+
+/** One pay analyte over the whole, ready to be set beside each domain. */
+export interface PayAnalyte {
+  variable: string;
+  assay: AssayColumn;
+  grid: readonly number[];
+  whole: PopulationPart;
+}
+
+export function payAnalyte(rows: DomainRows, variable: string, assay: AssayColumn): PayAnalyte {
+  const grid = gridOf(assay);
+  const mask = new Uint8Array(rows.lengthsM.length).fill(1);
+  return { variable, assay, grid, whole: partOf(rows, variable, assay, grid, { key: 'all', label: 'all intervals', role: 'before', splitBy: null, mask }) };
+}
+
+/** A pay analyte over the whole, in the domain, and in each part of it by rock, weathering and fault side. */
+export function populationParts(rows: DomainRows, mask: Uint8Array, { variable, assay, grid, whole }: PayAnalyte, code: string): PopulationPart[] {
+  const parts = [whole, partOf(rows, variable, assay, grid, { key: `domain:${code}`, label: code, role: 'domain', splitBy: null, mask })];
+  for (const { name, logged } of rows.categories) {
+    logged.levels.forEach((level, place) => {
+      const own = mask.map((isIn, row) => (isIn === 1 && logged.codes[row] === place ? 1 : 0));
+      if (own.reduce((sum, isIn) => sum + isIn, 0) < LEAST_PART) return;
+      parts.push(partOf(rows, variable, assay, grid, { key: `${name}:${level}`, label: level, role: 'part', splitBy: name, mask: own }));
+    });
   }
   return parts;
 }

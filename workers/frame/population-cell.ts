@@ -1,40 +1,77 @@
-import type { CellDetail } from '#contract/screens.ts';
-import { QUALIFIER } from '#contract/tables.ts';
-import { normalQuantile } from '#kernels/normal.ts';
+import type { CellDetail, MixtureFit } from '#contract/screens.ts';
+import { KernelError } from '#kernels/kernel-error.ts';
+import type { LognormalMixture } from '#kernels/populations/lognormal-mixture.ts';
+import { screenPopulation, type PopulationScreen } from '#kernels/populations/screen-population.ts';
 import type { AssayColumn } from './snapshot-tables.ts';
-import { stopgapScreen } from './screen-stopgap.ts';
 
 export interface PopulationInput {
   subsetKey: string;
   subsetLabel: string;
   variable: string;
   assay: AssayColumn;
-  lengthsM: Float64Array;
+  /** Metres of each row; null counts rows equally (surface samples). */
+  weightsM: Float64Array | null;
   /** 1 where a row is in the subset. */
   mask: Uint8Array;
 }
 
-/** Screens one variable in one subset for mixed populations. */
-export function populationCell({ subsetKey, subsetLabel, variable, assay, lengthsM, mask }: PopulationInput): CellDetail {
-  const rows = Array.from(mask.keys()).filter((row) => mask[row] === 1);
-  const known = rows.filter((row) => (assay.qualifiers[row] ?? 3) <= QUALIFIER.above && (assay.values[row] ?? 0) > 0);
-  const values = Float64Array.from(known, (row) => (assay.qualifiers[row] === QUALIFIER.below ? 0.65 : 1) * (assay.values[row] ?? 0));
-  const n = values.length;
-  const screened = n >= 3 ? stopgapScreen(values) : null;
-  const sorted = Float64Array.from(values).sort();
-  const mean = n > 0 ? values.reduce((s, v) => s + v, 0) / n : null;
-  const sd = n > 1 && mean !== null ? Math.sqrt(values.reduce((s, v) => s + (v - mean) ** 2, 0) / (n - 1)) : null;
-  const step = Math.max(1, Math.ceil(n / 300));
-  const places = Array.from(sorted.keys()).filter((i) => i % step === 0 || i < 20 || i >= n - 20);
-  const lo = Math.log(sorted[0] ?? 1), hi = Math.log(sorted[n - 1] ?? 2);
-  const edges = Array.from({ length: 31 }, (_, i) => Math.exp(lo + ((hi - lo || 1) * i) / 30));
-  const counts = new Array<number>(30).fill(0);
-  for (const v of values) counts[Math.min(29, Math.floor(((Math.log(v) - lo) / (hi - lo || 1)) * 30))]! += 1;
+interface SubsetRows {
+  values: Float64Array;
+  qualifiers: Uint8Array;
+  weights: Float64Array | null;
+}
+
+const MISSING_PLOT = { z: [], ppm: [], drawnOf: 0 };
+
+function pick({ assay, weightsM, mask }: PopulationInput): SubsetRows {
+  const rows = Int32Array.from(mask.keys()).filter((row) => mask[row] === 1);
   return {
-    subsetKey, subsetLabel, variable, verdict: screened?.verdict ?? 'too-few', n, mean, median: n > 0 ? (sorted[n >> 1] ?? null) : null, cv: mean && sd !== null ? sd / mean : null,
-    dip: screened?.dip ?? null, dipP: screened?.dipP ?? null, dipPText: screened ? `p ${screened.dipP}` : '–', deltaBic: screened?.deltaBic ?? null, populations: screened?.chosenK ?? null,
-    metres: rows.reduce((s, r) => s + (lengthsM[r] ?? 0), 0), nBelow: rows.filter((r) => assay.qualifiers[r] === 1).length, nAbove: rows.filter((r) => assay.qualifiers[r] === 2).length, nMissing: rows.length - n,
-    min: sorted[0] ?? null, max: sorted[n - 1] ?? null, logSd: screened?.mixtures[0]?.components[0]?.logSd ?? null, weighted: false, mixtures: screened?.mixtures ?? [], chosenK: screened?.chosenK ?? null, evenOddsPpm: null,
-    reasons: [], plot: { z: places.map((i) => normalQuantile((i + 0.5) / n)), ppm: places.map((i) => sorted[i] ?? 0), drawnOf: n }, histogram: { edgesPpm: edges, counts }, notes: [],
+    values: Float64Array.from(rows, (row) => assay.values[row] ?? Number.NaN),
+    qualifiers: Uint8Array.from(rows, (row) => assay.qualifiers[row] ?? 3),
+    weights: weightsM && Float64Array.from(rows, (row) => weightsM[row] ?? 0),
+  };
+}
+
+/** A grade that cannot be judged, such as one with many values over range, is told so and fails no other cell. */
+function judged({ values, qualifiers, weights }: SubsetRows): PopulationScreen | KernelError {
+  try {
+    return screenPopulation(values, weights, qualifiers);
+  } catch (error) {
+    if (error instanceof KernelError) return error;
+    throw error;
+  }
+}
+
+const fitOf = ({ k, bic, logLik, accepted, note, components }: LognormalMixture): MixtureFit => ({
+  k, bic, logLik, accepted, note, components: components.map(({ share, median, logSd }) => ({ share, medianPpm: median, logSd })),
+});
+
+const names = ({ subsetKey, subsetLabel, variable }: PopulationInput) => ({ subsetKey, subsetLabel, variable });
+
+/** Screens one variable in one subset for mixed populations, in the contract's words. */
+export function populationCell(input: PopulationInput): CellDetail {
+  const rows = pick(input);
+  const screen = judged(rows);
+  if (screen instanceof KernelError) return refused(input, rows, screen);
+  const { n, nBelow, nAbove, nMissing, dip, mixtures, chosenK, summaries, plot, histogram } = screen;
+  const summary = summaries?.weighted ?? summaries?.unweighted ?? null;
+  return {
+    ...names(input), verdict: screen.verdict, n, nBelow, nAbove, nMissing, metres: screen.metres ?? n, weighted: rows.weights !== null,
+    mean: summary?.mean ?? null, median: summary?.median ?? null, cv: summary?.cv ?? null, min: summary?.min ?? null, max: summary?.max ?? null, logSd: summaries?.logSd ?? null,
+    dip: dip?.dip ?? null, dipP: dip?.pValue?.p ?? null, dipPText: dip?.pValue ? `p ${dip.pValue.text}` : 'no p', deltaBic: screen.deltaBic, populations: chosenK, chosenK,
+    mixtures: mixtures.map(fitOf), evenOddsPpm: screen.evenOdds, reasons: screen.reasons,
+    plot: plot ? { z: Array.from(plot.z), ppm: Array.from(plot.y, Math.exp), drawnOf: plot.drawnOf } : MISSING_PLOT,
+    histogram: histogram ? { edgesPpm: Array.from(histogram.edges, Math.exp), counts: Array.from(histogram.counts) } : { edgesPpm: [], counts: [] },
+    notes: screen.notes,
+  };
+}
+
+function refused(input: PopulationInput, { values, qualifiers, weights }: SubsetRows, { message }: KernelError): CellDetail {
+  const count = (code: number): number => qualifiers.reduce((sum, qualifier) => sum + (qualifier === code ? 1 : 0), 0);
+  const n = count(0) + count(1) + count(2);
+  return {
+    ...names(input), verdict: 'too-few', n, nBelow: count(1), nAbove: count(2), nMissing: values.length - n, metres: weights?.reduce((sum, weight) => sum + weight, 0) ?? n, weighted: weights !== null,
+    mean: null, median: null, cv: null, min: null, max: null, logSd: null, dip: null, dipP: null, dipPText: 'no p', deltaBic: null, populations: null, chosenK: null, mixtures: [], evenOddsPpm: null,
+    reasons: [`Not judged: ${message}.`], plot: MISSING_PLOT, histogram: { edgesPpm: [], counts: [] }, notes: [],
   };
 }

@@ -3,7 +3,7 @@ import { splitByCategory } from '#workers/evidence/category-split.ts';
 import { inDomainMask, readDomainRows, rowFinder, runsOf, type DomainRows } from '#workers/evidence/domain-rows.ts';
 import { evidenceFinding } from '#workers/evidence/finding.ts';
 import { orientationSets, readStructures } from '#workers/evidence/orientations.ts';
-import { populationParts } from '#workers/evidence/populations.ts';
+import { payAnalyte, populationParts, type PayAnalyte } from '#workers/evidence/populations.ts';
 import { readAssay, type AssayColumn, type SnapshotTables, type Support } from '#workers/frame/snapshot-tables.ts';
 import { QUALIFIER } from '#contract/tables.ts';
 import { defineTask } from '#workers/task.ts';
@@ -40,8 +40,8 @@ function metalOf({ values, qualifiers }: AssayColumn, lengthsM: Float64Array, ma
   return sum;
 }
 
-function gradesOf(populations: readonly PopulationPart[], assays: ReadonlyMap<string, AssayColumn>, { lengthsM }: DomainRows, mask: Uint8Array): DomainEvidence['grades'] {
-  return [...assays].map(([analyte, assay]) => {
+function gradesOf(populations: readonly PopulationPart[], pay: readonly PayAnalyte[], { lengthsM }: DomainRows, mask: Uint8Array): DomainEvidence['grades'] {
+  return pay.map(({ variable: analyte, assay }) => {
     const own = populations.find(({ variable, role }) => variable === analyte && role === 'domain');
     const whole = metalOf(assay, lengthsM, null);
     return {
@@ -56,7 +56,10 @@ export default defineTask<EvidenceInput, EvidenceOutput>((input, { report, store
   const { snapshotId, tables, support, payAnalytes, domains, domainIds } = input;
   report('read columns', 0);
   const rows = readDomainRows(store(), tables, support, input.groupingTableId, input.faults);
-  const assays = new Map(payAnalytes.map((analyte) => [analyte, readAssay(store(), tables, support, analyte)]));
+  const pay = payAnalytes.map((variable, place) => {
+    report(`screen ${variable}`, (0.1 * place) / payAnalytes.length);
+    return payAnalyte(rows, variable, readAssay(store(), tables, support, variable));
+  });
   const structures = readStructures(store(), input.structureTableId);
   const findRow = rowFinder(rows);
   const wanted = domains.filter(({ id }) => domainIds.includes(id));
@@ -71,10 +74,12 @@ export default defineTask<EvidenceInput, EvidenceOutput>((input, { report, store
     });
     tell('orientation', 0.5);
     const inside = structures.filter(({ hole, depthM }) => mask[findRow(hole, depthM)] === 1);
-    tell('populations', 0.6);
-    const populations = populationParts(rows, mask, assays, code);
+    const populations = pay.flatMap((analyte, i) => {
+      tell(`populations of ${analyte.variable}`, 0.6 + (0.4 * i) / pay.length);
+      return populationParts(rows, mask, analyte, code);
+    });
     const found = {
-      domainId: id, domainVersion: version, ...extentOf(rows, mask), splits, structures: inside, orientations: orientationSets(inside), populations, grades: gradesOf(populations, assays, rows, mask),
+      domainId: id, domainVersion: version, ...extentOf(rows, mask), splits, structures: inside, orientations: orientationSets(inside), populations, grades: gradesOf(populations, pay, rows, mask),
       notes: inside.length === 0 && support === 'drill' ? ['No oriented structure lies inside this domain.'] : [],
     };
     return { ...found, finding: evidenceFinding(found) };

@@ -15,12 +15,12 @@ export interface MadeDemo extends Omit<DemoDeposit, 'files' | 'plantedProblems'>
 /** Makes the invented deposit and writes its tables as the files a team would load. */
 export default defineTask<MakeDemoInput, MadeDemo>(({ folder }, { report }) => {
   report('make the demonstration deposit', 0);
-  const { files, plantedProblems: _planted, ...demo } = makeDemoDeposit();
+  const { files, name, description, grid, payAnalytes, deleteriousAnalytes, truth, suiteAnalytes } = makeDemoDeposit();
   mkdirSync(folder, { recursive: true });
   const written = files.map(({ fileName, kind, mode, csv }) => {
     const path = join(folder, fileName);
     writeFileSync(path, csv);
     return { fileName, kind, mode, path, sizeBytes: statSync(path).size, rows: csv.trimEnd().split('\n').length - 1 };
   });
-  return { ...demo, files: written };
+  return { name, description, grid, payAnalytes, deleteriousAnalytes, truth, suiteAnalytes, files: written };
 });

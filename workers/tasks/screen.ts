@@ -49,13 +49,14 @@ export default defineTask<ScreenInput, ScreenOutput>((input, { report, store }) 
   const { tables, support, variables } = input;
   report('read columns', 0);
   const lengthsM = readLengths(store(), tables, support);
+  const weightsM = support === 'drill' ? lengthsM : null;
   const subsets = subsetsOf(store(), input, lengthsM);
   const cells: CellDetail[] = [];
   variables.forEach((variable, place) => {
     const assay = readAssay(store(), tables, support, variable);
     subsets.forEach(({ key, label, mask }, subset) => {
       report(`screen ${variable} in ${label}`, 0.05 + (0.9 * (place + subset / subsets.length)) / variables.length);
-      cells.push(populationCell({ subsetKey: key, subsetLabel: label, variable, assay, lengthsM, mask }));
+      cells.push(populationCell({ subsetKey: key, subsetLabel: label, variable, assay, weightsM, mask }));
     });
   });
   return { variables, subsets: subsets.map(({ key, kind, label, slot, n, metres }) => ({ key, kind, label, slot, n, metres })), cells, finding: findingOf(cells, subsets) };

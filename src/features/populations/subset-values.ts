@@ -11,6 +11,8 @@ export interface SubsetValues {
   /** ppm, measured and above their limit only. */
   ppm: Float64Array;
   rows: Int32Array;
+  /** Metres of each; null for surface samples, which count one each. */
+  weights: Float64Array | null;
   /** Share of the subset's grades that lie below detection. */
   belowShare: number;
 }
@@ -67,21 +69,25 @@ export function useSubsetValues(wanted: Wanted): SubsetValues | null {
     ],
   }).map(({ data }) => data);
   const firstRow = place?.firstRow ?? 0;
+  const { snapshot, support } = wanted;
+  const lengths = useQuery({ ...columnQuery(depositId, snapshot?.frameTableId ?? 0, FRAME.length), enabled: snapshot !== null }).data;
   return useMemo(() => {
-    if (!values || !qualifiers || !isIn) return null;
+    if (!values || !qualifiers || !isIn || !lengths) return null;
     const ppm: number[] = [];
     const rows: number[] = [];
-    let below = 0;
+    let [below, total] = [0, 0];
     values.forEach((value, i) => {
       const qualifier = qualifiers[i] ?? QUALIFIER.missing;
       if (!isIn(firstRow + i) || qualifier > QUALIFIER.above) return;
-      if (qualifier === QUALIFIER.below) below += 1;
+      const metres = support === 'drill' ? (lengths[firstRow + i] ?? 0) : 1;
+      total += metres;
+      if (qualifier === QUALIFIER.below) below += metres;
       else if (value > 0) {
         ppm.push(value);
         rows.push(firstRow + i);
       }
     });
-    const total = ppm.length + below;
-    return { ppm: Float64Array.from(ppm), rows: Int32Array.from(rows), belowShare: total > 0 ? below / total : 0 };
-  }, [values, qualifiers, isIn, firstRow]);
+    const weights = support === 'drill' ? Float64Array.from(rows, (row) => lengths[row] ?? 0) : null;
+    return { ppm: Float64Array.from(ppm), rows: Int32Array.from(rows), weights, belowShare: total > 0 ? below / total : 0 };
+  }, [values, qualifiers, isIn, firstRow, lengths, support]);
 }

@@ -54,7 +54,7 @@ export function BeforeAfterPlate({ evidence, domain }: { evidence: DomainEvidenc
   const tools = (
     <>
       <Select label="Grade" isLabelHidden controlSize="tiny" options={variables.map((value) => ({ value, label: value }))} value={variable} onPick={setVariable} />
-      {splits.length > 0 && <Select label="Split by" isLabelHidden controlSize="tiny" options={splits.map((value) => ({ value, label: `by ${categoryName(value).toLowerCase()}` }))} value={split ?? ''} onPick={setSplit} />}
+      {splits.length > 0 && <Select label="Split by" isLabelHidden controlSize="tiny" options={splits.map((value) => ({ value, label: `by ${categoryName(value).replace(/^[A-Z]/, (letter) => letter.toLowerCase())}` }))} value={split ?? ''} onPick={setSplit} />}
     </>
   );
   return (

@@ -38,7 +38,7 @@ export function SplitsPlate({ evidence }: { evidence: DomainEvidence }) {
   const rows = useMemo(() => evidence.splits.flatMap(({ category, levels }) => levels.map((level): Row => ({ category, ...level }))), [evidence]);
   return (
     <Plate title="What the domain is made of" qualifier={`${countOf(evidence.intervals, 'interval')}, ${formatMetres(evidence.metres)}`} help={HELP} exports={tableExports('domain-splits', EXPORTED, rows)} caption={`Shares by metres, tests by intervals · snapshot ${evidence.snapshotNumber}`}>
-      <div className="grid gap-x-6 gap-y-4 md:grid-cols-2 xl:grid-cols-4">
+      <div className="grid gap-x-6 gap-y-4 md:grid-cols-2 lg:grid-cols-4">
         {evidence.splits.map((split) => <Split key={split.category} split={split} />)}
       </div>
     </Plate>

@@ -38,10 +38,10 @@ const HELP = {
 };
 
 function captionOf(cell: CellDetail, { snapshotNumber, support }: Screen): string {
-  const metres = support === 'drill' ? `, ${formatMetres(cell.metres)}` : '';
+  const metres = support === 'drill' ? `, ${formatMetres(cell.metres)}, length-weighted` : ', each sample counts once';
   const gain = cell.deltaBic === null ? '' : ` · ΔBIC ${formatFigures(cell.deltaBic, 3)} for two over one`;
   const cv = cell.cv === null ? '' : ` · CV ${formatFigures(cell.cv, 3)}`;
-  return `n = ${formatCount(cell.n)}${metres} · each interval counts once · lognormal mixture by EM${gain}${cv} · snapshot ${snapshotNumber}`;
+  return `n = ${formatCount(cell.n)}${metres} · lognormal mixture by EM${gain}${cv} · snapshot ${snapshotNumber}`;
 }
 
 /** One cell of the matrix drawn large, with the reasons of its verdict. */
@@ -66,7 +66,7 @@ export function CellPlate({ screen, subset, variable, values, view, onView }: Pr
     >
       {!cell || !grades ? <Skeleton lines={9} /> : (
         <>
-          <CellDrawing cell={cell} grades={grades} belowShare={values?.belowShare ?? 0} slot={subset.slot} unit={unit} view={view} title={title} chartRef={chartRef} />
+          <CellDrawing cell={cell} grades={grades} weights={values?.weights ?? null} belowShare={values?.belowShare ?? 0} slot={subset.slot} unit={unit} view={view} title={title} chartRef={chartRef} />
           <Reasons cell={cell} unit={unit} />
         </>
       )}
@@ -77,6 +77,7 @@ export function CellPlate({ screen, subset, variable, values, view, onView }: Pr
 interface DrawingProps {
   cell: CellDetail;
   grades: Float64Array;
+  weights: Float64Array | null;
   belowShare: number;
   slot: number | null;
   unit: ReturnType<typeof unitOf>;
@@ -85,12 +86,12 @@ interface DrawingProps {
   chartRef: React.RefObject<ChartHandle | null>;
 }
 
-function CellDrawing({ cell, grades, belowShare, slot, unit, view, title, chartRef }: DrawingProps) {
+function CellDrawing({ cell, grades, weights, belowShare, slot, unit, view, title, chartRef }: DrawingProps) {
   const fit = chosenFit(cell);
   const components = useMemo(() => (fit && fit.k > 1 ? drawnComponents(fit, unit) : []), [fit, unit]);
   const words = fit && fit.k > 1 ? componentWords(fit, unit, cell.variable) : [];
   const description = `${cell.n} values, verdict ${cell.verdict}. ${cell.reasons.join(' ')}`;
-  const shared = { title, description, values: grades, valueLabel: `${cell.variable}, ${unit} (log scale)`, slot, components, componentWords: words, height: 330, chartRef };
+  const shared = { title, description, values: grades, ...(weights ? { weights } : {}), valueLabel: `${cell.variable}, ${unit} (log scale)`, slot, components, componentWords: words, height: 300, chartRef };
   if (grades.length < 3) return <p className="py-8 text-center text-ink-2">Fewer than three values above detection: there is nothing to draw.</p>;
   if (view === 'histogram') return <Histogram {...shared} kind="log" />;
   const evenOdds = cell.evenOddsPpm === null ? null : { value: gradeIn(cell.evenOddsPpm, unit), label: `even odds at ${formatGrade(cell.evenOddsPpm, unit)} ${cell.variable}` };

@@ -107,7 +107,7 @@ function ScreenPlates({ screen, groupings, busy }: PlatesProps) {
         stale={screen.isStale && `on snapshot ${screen.snapshotNumber}`}
         busy={busy}
         exports={tableExports('mixing-verdicts', EXPORTED, screen.cells)}
-        caption={`Dip test, mixture BIC and separation · ${formatCount(screen.cells.length)} cells · each interval counts once · snapshot ${screen.snapshotNumber} · few: n under 30`}
+        caption={`Dip test, mixture BIC and separation · ${formatCount(screen.cells.length)} cells · ${screen.support === 'drill' ? 'length-weighted' : 'each sample counts once'} · snapshot ${screen.snapshotNumber} · few: n under 30`}
       >
         <VerdictMatrix screen={screen} picked={{ subset: cell?.subsetKey ?? '', variable: cell?.variable ?? '' }} onPick={pick} />
       </Plate>
