@@ -64,9 +64,20 @@ describe('JO-01 a worker takes down its own job, not the service', () => {
 });
 
 test('work asked for while the host is away waits for the next one', { timeout: PATIENCE_MS }, async () => {
-  const dying = failureOf('grow-one-array');
-  await dying;
+  await failureOf('grow-one-array');
   expect(await Promise.all([1, 2, 3].map((n) => compute.run('echo', n)))).toEqual([1, 2, 3]);
+});
+
+test('AU-04 sign-ins do not fail when the host ends under them: they are worked out by the next one', { timeout: PATIENCE_MS }, async () => {
+  let isDying = true;
+  const dying = failureOf('grow-one-array').finally(() => (isDying = false));
+  const outcomes: unknown[] = [];
+  while (isDying) {
+    outcomes.push(await compute.run('hash-password', { password: 'plum wagon 41 otters' }).catch((error: unknown) => error));
+  }
+  await dying;
+  expect(outcomes.length).toBeGreaterThan(0);
+  for (const outcome of outcomes) expect(outcome).toHaveProperty('hash');
 });
 
 test('a host whose server has gone ends by itself', async () => {
