@@ -49,7 +49,7 @@ export function DepositOverview({ plan }: { plan?: ReactNode }) {
         <div className="grid gap-3 lg:grid-cols-[minmax(0,1fr)_326px] xl:grid-cols-[minmax(0,1fr)_460px]">
           <div className="flex min-w-0 flex-col gap-3">
             <div className="max-md:order-2">
-              <MetresPlate overview={overview} depositId={deposit.id} />
+              <MetresPlate overview={overview} />
             </div>
             <div className="grid min-w-0 flex-1 gap-3 max-md:contents lg:grid-cols-[minmax(0,1fr)_minmax(0,1.060fr)]">
               <WaitingPlate

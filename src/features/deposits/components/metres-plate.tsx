@@ -1,30 +1,18 @@
 import type { Overview } from '#contract/deposits.ts';
 import { Empty } from '#src/components/ui/empty.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
-import { LinkButton } from '#src/components/ui/button.tsx';
 import { cx } from '#src/lib/cx.ts';
 import { formatCount, formatMetres } from '#src/lib/format.ts';
 import { notchStep, rulerOf, type Ruler } from '../ruler.ts';
 
-interface Props {
-  overview: Overview;
-  depositId: number;
-}
-
 /** How far the drilled metres have come, each step a run of core under one ruler. */
-export function MetresPlate({ overview, depositId }: Props) {
+export function MetresPlate({ overview }: { overview: Overview }) {
   const { totalMetres, metres } = overview;
   const step = notchStep(totalMetres);
   if (totalMetres <= 0) {
     return (
       <Plate title="How far the metres have come">
-        <Empty
-          action={
-            <LinkButton to={`/deposits/${depositId}/intake`} kind="main">
-              Bring in files
-            </LinkButton>
-          }
-        >
+        <Empty>
           Each step of the job is drawn here as a run of core against the metres drilled. Collars,
           surveys and assays come first.
         </Empty>

@@ -7,7 +7,7 @@ import type { Column } from '#src/components/ui/table/column.ts';
 import { Table } from '#src/components/ui/table/table.tsx';
 import { tableExports } from '#src/components/ui/table/table-tools.tsx';
 import { VERDICT_WORDS, VerdictMark } from '#src/components/ui/verdict-mark.tsx';
-import { formatFigures, withUnit } from '#src/lib/format.ts';
+import { formatGrade } from '#src/lib/format.ts';
 import { formatInstantFully, formatWhen } from '#src/lib/format-dates.ts';
 import { STAGE_NAMES, stagePath } from '#src/lib/stages.ts';
 
@@ -92,23 +92,34 @@ export function LatelyPlate({
 
 type Grade = Overview['grades'][number];
 
+const VARIABLE: Column<Grade> = {
+  header: 'Variable',
+  rowHeader: true,
+  cell: ({ analyte, domainCode }) => `${analyte} in ${domainCode}`,
+};
+const VERDICT: Column<Grade> = {
+  header: 'Verdict',
+  cell: ({ verdict }) => <VerdictMark verdict={verdict} />,
+  value: ({ verdict }) => VERDICT_WORDS[verdict],
+};
+
 const GRADE_COLUMNS: Column<Grade>[] = [
-  {
-    header: 'Variable',
-    rowHeader: true,
-    cell: ({ analyte, domainCode }) => `${analyte} in ${domainCode}`,
-  },
+  VARIABLE,
   {
     header: 'Median',
     align: 'right',
-    cell: ({ median, unit }) => (median === null ? '–' : withUnit(formatFigures(median), unit)),
+    cell: ({ median, unit }) => formatGrade(median, unit),
     value: ({ median }) => median,
   },
-  {
-    header: 'Verdict',
-    cell: ({ verdict }) => <VerdictMark verdict={verdict} />,
-    value: ({ verdict }) => VERDICT_WORDS[verdict],
-  },
+  VERDICT,
+];
+
+/** In a file a column has one unit. */
+const FILE_COLUMNS: Column<Grade>[] = [
+  VARIABLE,
+  { header: 'Median', unit: 'ppm', cell: ({ median }) => median },
+  { header: 'n', cell: ({ n }) => n },
+  VERDICT,
 ];
 
 export function GradesPlate({
@@ -124,7 +135,7 @@ export function GradesPlate({
       qualifier="length-weighted"
       className={className}
       exports={
-        grades.length > 0 ? tableExports('grades-in-domains', GRADE_COLUMNS, grades) : undefined
+        grades.length > 0 ? tableExports('grades-in-domains', FILE_COLUMNS, grades) : undefined
       }
       empty={
         grades.length === 0 ? (

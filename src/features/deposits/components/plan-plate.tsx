@@ -8,9 +8,9 @@ import { Skeleton } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { holesQuery } from '#src/lib/deposit-queries.ts';
 import { countOf, formatMetres } from '#src/lib/format.ts';
+import { faultLine, reachOf, traceOf } from '#src/lib/hole-traces.ts';
 import { useDeposit } from '#src/lib/use-deposit.ts';
 import { gridWords } from '../model.ts';
-import { faultLine, reachOf, traceOf } from '../plan.ts';
 
 /** Where the holes lie: collars, traces and faults from above. */
 export function PlanPlate() {

@@ -9,7 +9,7 @@ import {
   NEW_DEPOSIT,
   splitAnalytes,
 } from '#src/features/deposits/model.ts';
-import { faultLine, reachOf, traceOf } from '#src/features/deposits/plan.ts';
+import { faultLine, reachOf, traceOf } from '#src/lib/hole-traces.ts';
 import { niceStep, notchStep, rulerOf } from '#src/features/deposits/ruler.ts';
 import { setNumberLocale } from '#src/lib/format.ts';
 
