@@ -37,6 +37,7 @@ export default defineConfig({
           name: 'journeys',
           environment: 'node',
           include: ['tests/journeys/**/*.test.ts'],
+          globalSetup: ['tests/support/journey-setup.ts'],
           fileParallelism: false,
           testTimeout: 600_000,
           hookTimeout: 300_000,
