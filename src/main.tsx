@@ -9,15 +9,14 @@ import { App } from './app/app.tsx';
 import { makeRouter } from './app/router.tsx';
 import { signInAddress } from './app/safe-return.ts';
 import { makeQueryClient } from './lib/query-client.ts';
-import { leaveSession } from './lib/session.ts';
 import { followTheme } from './lib/theme.ts';
 
 followTheme();
 
+/** A full load: nothing read in the session that ended stays in memory. */
 const queryClient = makeQueryClient(() => {
-  const { pathname, search } = router.state.location;
-  leaveSession(queryClient);
-  void router.navigate(signInAddress(`${pathname}${search}`), { replace: true });
+  const { pathname, search } = window.location;
+  if (pathname !== '/sign-in') window.location.assign(signInAddress(`${pathname}${search}`));
 });
 const router = makeRouter(queryClient);
 

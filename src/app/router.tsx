@@ -35,6 +35,8 @@ async function depositInHand(
 ): Promise<null> {
   const depositId = Number(params['depositId']);
   if (!Number.isSafeInteger(depositId) || depositId <= 0) throw new Absent();
+  // Loaders run side by side: without a session nothing of the deposit is asked for.
+  await queryClient.ensureQueryData(meQuery());
   await Promise.all([
     queryClient.ensureQueryData(depositQuery(depositId)),
     queryClient.ensureQueryData(stagesQuery(depositId)),
@@ -86,6 +88,14 @@ const depositRoutes: RouteObject[] = [
   {
     path: 'intake/:uploadId',
     lazy: async () => ({ Component: (await import('./routes/upload.tsx')).UploadPage }),
+  },
+  {
+    path: 'holes',
+    lazy: async () => ({ Component: (await import('./routes/holes.tsx')).HolesPage }),
+  },
+  {
+    path: 'holes/:hole',
+    lazy: async () => ({ Component: (await import('./routes/hole.tsx')).HolePage }),
   },
   {
     path: 'groups',

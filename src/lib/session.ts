@@ -1,10 +1,4 @@
-import {
-  queryOptions,
-  useMutation,
-  useQuery,
-  useQueryClient,
-  type QueryClient,
-} from '@tanstack/react-query';
+import { queryOptions, useMutation, useQuery, type QueryClient } from '@tanstack/react-query';
 import { getInstance, getMe, signOut, type Me } from '#contract/auth.ts';
 import { call } from './api-client.ts';
 import { hasStatus } from './api-problem.ts';
@@ -31,30 +25,24 @@ export const useMe = (): Me | undefined => useQuery({ ...meQuery(), enabled: fal
 
 /** Begins a session in the page: nothing of a person before is left. */
 export function enterSession(queryClient: QueryClient, me: Me): void {
-  leaveSession(queryClient);
+  queryClient.removeQueries({ predicate: ({ queryKey }) => queryKey[0] !== 'instance' });
+  clearSelection();
+  forgetEdits();
   setPreferencePerson(me.id);
   queryClient.setQueryData(meQuery().queryKey, me);
 }
 
-/** Empties what was read, what was taken and what could be undone. */
-export function leaveSession(queryClient: QueryClient): void {
-  queryClient.clear();
-  clearSelection();
-  forgetEdits();
-  setPreferencePerson(null);
-}
-
-/** Signs out. A session that had ended already counts as done. */
+/**
+ * Signs out. A session that had ended already counts as done.
+ *
+ * @param onDone Leaves by a full load, so that nothing read stays in memory.
+ */
 export function useSignOut(onDone: () => void) {
-  const queryClient = useQueryClient();
   return useMutation({
     mutationFn: () =>
       call(signOut, {}).catch((error: unknown) => {
         if (!hasStatus(error, 401)) throw error;
       }),
-    onSuccess: () => {
-      leaveSession(queryClient);
-      onDone();
-    },
+    onSuccess: onDone,
   });
 }

@@ -59,7 +59,8 @@ const problem = (status: number, detail: string, more: object = {}) =>
 
 export { problem };
 
-function stubFetch(answers: Answers): SentRequest[] {
+/** Puts a table of answers in the place of the server. @returns what was asked of it. */
+export function stubFetch(answers: Answers): SentRequest[] {
   const sent: SentRequest[] = [];
   vi.stubGlobal('fetch', (input: string, init: RequestInit = {}) => {
     const url = new URL(input, 'http://localhost');

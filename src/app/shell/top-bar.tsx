@@ -34,7 +34,7 @@ export function TopBar({ place, tools }: Props) {
   return (
     <header className="ruler-edge relative z-20 flex h-[46px] shrink-0 items-center gap-2.5 border-b border-rule-firm bg-sheet px-3.5">
       <Link to="/deposits" aria-label="Selvage, all deposits" className="rounded-1 no-underline">
-        <Brand />
+        <Brand isShort={Boolean(place)} />
       </Link>
       {place && <span aria-hidden className="mx-1 h-5 w-px bg-rule" />}
       <div className="min-w-0">{place}</div>
@@ -96,7 +96,7 @@ function YouMenu() {
   const me = useMe();
   const navigate = useNavigate();
   const [theme, setTheme] = useTheme();
-  const signOut = useSignOut(() => void navigate('/sign-in'));
+  const signOut = useSignOut(() => window.location.assign('/sign-in'));
   if (!me) return null;
   const go = (to: string) => () => void navigate(to);
   const next: Theme = theme === 'dark' ? 'light' : 'dark';

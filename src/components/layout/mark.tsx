@@ -16,12 +16,12 @@ export function Mark({ className }: { className?: string }) {
   );
 }
 
-/** Mark and name. */
-export function Brand() {
+/** Mark and name; on the narrowest phones `isShort` keeps the name for readers only. */
+export function Brand({ isShort }: { isShort?: boolean }) {
   return (
     <span className="inline-flex items-center gap-2 font-read text-[1.125rem] leading-none font-semibold tracking-[-0.005em] text-ink">
       <Mark />
-      Selvage
+      <span className={cx(isShort && 'max-[420px]:sr-only')}>Selvage</span>
     </span>
   );
 }

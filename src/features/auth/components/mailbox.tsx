@@ -54,7 +54,7 @@ export function Mailbox() {
           <p className="text-caption text-ink-3">
             to {to}, {formatInstant(at)}
           </p>
-          <p className="mt-2 max-w-[44rem] text-body break-words whitespace-pre-wrap">
+          <p className="mt-2 max-w-[44rem] text-body wrap-anywhere whitespace-pre-wrap">
             <LinkedText text={text} />
           </p>
         </li>

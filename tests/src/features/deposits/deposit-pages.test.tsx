@@ -38,7 +38,7 @@ const OVERVIEW = {
   ],
   lately: [{ at: '2026-11-27T09:42:00Z', who: 'L. Amadi', what: 'set the arsenic limit' }],
   grades: [
-    { domainCode: '1200', analyte: 'Cu', unit: '%', median: 2.61, verdict: 'mixed', n: 80 },
+    { domainCode: '1200', analyte: 'Cu', unit: '%', median: 26_100, verdict: 'mixed', n: 80 },
     { domainCode: '1100', analyte: 'As', unit: 'ppm', median: null, verdict: 'too-few', n: 4 },
   ],
 };
@@ -162,6 +162,8 @@ describe('the overview', () => {
       'href',
       '/deposits/1/groups',
     );
+    // Storage is ppm: 26,100 ppm are 2.61 %.
+    expect(screen.getByRole('row', { name: /Cu in 1200/ })).toHaveTextContent(/2\.61.%/);
     const arsenic = screen.getByRole('row', { name: /As in 1100/ });
     expect(within(arsenic).getByText('–')).toBeInTheDocument();
     expect(within(arsenic).getByText('too few')).toBeInTheDocument();
