@@ -82,7 +82,8 @@ export function createApp(deps: AppDeps, clientDir = CLIENT_DIR): App {
   const mounted = routers.flatMap(mountedOn);
   const streams = createStreamWatch();
   const guard = createGuard(sources, { cookieName, publicUrl: env.publicUrl, log });
-  attachGate(app, { guard, idempotency: createIdempotency(db, clock), streams });
+  const { events } = services.analysis;
+  attachGate(app, { guard, idempotency: createIdempotency(db, clock), streams, changed: (depositId, resource) => events.changed(depositId, resource) });
   app.use('/api', ...routers);
   app.use('/api', () => {
     throw new AppError(404, 'no-such-address', 'There is nothing at this address.');

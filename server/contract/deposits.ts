@@ -87,7 +87,7 @@ export const Overview = z.object({
   waiting: z.array(z.object({ stage: StageKey, tone: z.enum(['good', 'warn', 'bad', 'note', 'stale']), title: z.string(), detail: z.string() })),
   lately: z.array(z.object({ at: Instant, who: z.string(), what: z.string() })),
   grades: z.array(z.object({
-    /** Median in `unit`. */
+    /** Median in ppm; `unit` is how the deposit shows it. */
     domainCode: z.string(), analyte: z.string(), unit: GradeUnit, median: z.number().nullable(),
     verdict: z.enum(['single', 'suspect', 'mixed', 'too-few']), n: z.number().int(),
   })),

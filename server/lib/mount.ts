@@ -14,6 +14,8 @@ export interface Gate {
   guard: Guard;
   idempotency: Idempotency;
   streams: StreamWatch;
+  /** Hears of each change that went through: the deposit and the resource, the path part after it. */
+  changed(depositId: number, resource: string): void;
 }
 
 const gates = new WeakMap<Application, Gate>();
@@ -122,6 +124,7 @@ export function mount<
     }
     const work = async (): Promise<Answer> => {
       const body = endpoint.response.parse(await handler(context));
+      tellOfChange(gate, endpoint, depositIdOf(endpoint, req));
       return { status: res.statusCode === 200 ? endpoint.status : res.statusCode, body };
     };
     sendJson(res, await onceIfKeyed(gate, endpoint, grant, req, { params, query, body }, work));
@@ -138,6 +141,13 @@ function depositIdOf(endpoint: Endpoint, req: Request): number | null {
   if (endpoint.access.kind !== 'deposit') return null;
   const { depositId } = parsePart(endpoint.params, req.params, 'params');
   return typeof depositId === 'number' ? depositId : null;
+}
+
+/** Long work tells of itself when it ends; all else that is no reading has changed something. */
+function tellOfChange(gate: Gate, { method, path, status }: Endpoint, depositId: number | null): void {
+  if (method === 'get' || status === 202 || depositId === null) return;
+  const resource = path.split('/')[3];
+  if (resource) gate.changed(depositId, resource);
 }
 
 function bodyReader<Body extends z.ZodType>(

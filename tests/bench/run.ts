@@ -1,4 +1,7 @@
 import { columnStoreBench } from './column-store.ts';
+import { componentsBench } from './components.ts';
+import { groupsBench } from './groups.ts';
+import { importBench } from './import.ts';
 
 /** One workload, done by ours and by a peer that does the same or the least that must be done. */
 export interface Bench {
@@ -12,7 +15,7 @@ export interface Bench {
 }
 
 /** Every bench of the project: a file adds its maker here. */
-const BENCHES: readonly (() => Bench | Promise<Bench>)[] = [columnStoreBench];
+const BENCHES: readonly (() => Bench | Promise<Bench>)[] = [columnStoreBench, componentsBench, groupsBench, importBench];
 
 const RUNS = 5;
 

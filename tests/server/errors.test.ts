@@ -122,7 +122,7 @@ describe('OU-03 every failure is a problem document without internals', () => {
       response: z.object({ count: z.number().max(3) }),
     });
     mount(router, lying, () => ({ count: 4, secret: 'x' }));
-    attachGate(app, {
+    attachGate(app, { changed: () => undefined,
       guard: { admit: () => Promise.resolve({ actor: null, member: null }) },
       idempotency: { once: (_key, work) => work() },
       streams: real.streams,

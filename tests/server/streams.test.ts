@@ -30,7 +30,7 @@ async function streamApp(recheckMs: number) {
     res.writeHead(200, { 'Content-Type': 'text/event-stream' });
     res.write(': open\n\n');
   });
-  attachGate(app, {
+  attachGate(app, { changed: () => undefined,
     guard: {
       admit: () =>
         state.isAllowed

@@ -2,7 +2,6 @@ import type { Knex } from 'knex';
 import type { Deposit, Overview, Stage } from '#contract/deposits.ts';
 import type { DomainList } from '#contract/domains.ts';
 import type { Snapshot } from '#contract/snapshots.ts';
-import { ppmPerUnit } from '#kernels/units/assay-unit.ts';
 import type { AuditRow } from '#server/modules/record/audit-chain.ts';
 import type { CodesService } from '#server/modules/codes/codes.service.ts';
 import type { ComponentsService } from '#server/modules/components/components.service.ts';
@@ -79,7 +78,7 @@ export function createOverview(sources: OverviewSources) {
     const evidence = await Promise.all(list.domains.map(async ({ id, code }) => ({ code, found: await domains.evidence(depositId, id) })));
     return evidence.flatMap(({ code, found }) => (found?.grades ?? []).flatMap(({ analyte, median, verdict }) => {
       const unit = pay.find((candidate) => candidate.analyte === analyte)?.unit;
-      return unit ? [{ domainCode: code, analyte, unit, median: median === null ? null : median / ppmPerUnit(unit), verdict, n: found?.intervals ?? 0 }] : [];
+      return unit ? [{ domainCode: code, analyte, unit, median, verdict, n: found?.intervals ?? 0 }] : [];
     }));
   }
 

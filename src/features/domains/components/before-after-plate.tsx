@@ -3,7 +3,7 @@ import type { Domain, DomainEvidence, PopulationPart } from '#contract/domains.t
 import type { GradeUnit } from '#contract/deposits.ts';
 import type { ChartHandle } from '#src/components/charts/chart-types.ts';
 import { DensityRidges } from '#src/components/charts/density-ridges.tsx';
-import { figureExports } from '#src/components/ui/figure-exports.ts';
+import { useFigureExports } from '#src/components/ui/figure-exports.ts';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { Select } from '#src/components/ui/select.tsx';
 import type { Column } from '#src/components/ui/table/column.ts';
@@ -49,8 +49,9 @@ export function BeforeAfterPlate({ evidence, domain }: { evidence: DomainEvidenc
     const at = density?.ppm.map((ppm) => gradeIn(ppm, unit)) ?? [];
     return { label: `${ROLES[role]}${label}`, note: `n = ${formatCount(n)}, ${VERDICT_WORDS[verdict]}`, slot: role === 'domain' ? domain.slot : null, values: at, ...(density ? { curve: { at, height: density.height } } : {}) };
   }), [parts, unit, domain.slot]);
-  if (variables.length === 0) return null;
   const caption = `Kernel density of ln ${variable}, each of one height; n in intervals · snapshot ${evidence.snapshotNumber}`;
+  const exports = useFigureExports(chartRef, { fileName: `${variable}-before-after`, caption });
+  if (variables.length === 0) return null;
   const tools = (
     <>
       <Select label="Grade" isLabelHidden controlSize="tiny" options={variables.map((value) => ({ value, label: value }))} value={variable} onPick={setVariable} />
@@ -58,7 +59,7 @@ export function BeforeAfterPlate({ evidence, domain }: { evidence: DomainEvidenc
     </>
   );
   return (
-    <Plate title="Before and after the split" tools={tools} help={HELP} caption={caption} exports={figureExports(() => chartRef.current, { fileName: `${variable}-before-after`, caption })}>
+    <Plate title="Before and after the split" tools={tools} help={HELP} caption={caption} exports={exports}>
       <DensityRidges title={`${variable} before and after`} description={parts.map(({ label, verdict }) => `${label} ${VERDICT_WORDS[verdict]}`).join('; ')} ridges={ridges} kind="log" valueLabel={`${variable}, ${unit} (log scale)`} chartRef={chartRef} />
       <Table caption={`${variable} in each part`} columns={columns} rows={parts} rowKey={({ subsetKey }) => subsetKey} isDense />
     </Plate>

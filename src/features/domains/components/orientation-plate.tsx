@@ -3,7 +3,7 @@ import type { DomainEvidence, OrientationSet } from '#contract/domains.ts';
 import type { ChartHandle } from '#src/components/charts/chart-types.ts';
 import { Stereonet } from '#src/components/charts/stereonet.tsx';
 import { Empty } from '#src/components/ui/empty.tsx';
-import { figureExports } from '#src/components/ui/figure-exports.ts';
+import { useFigureExports } from '#src/components/ui/figure-exports.ts';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { Select } from '#src/components/ui/select.tsx';
 import type { Column } from '#src/components/ui/table/column.ts';
@@ -41,9 +41,10 @@ export function OrientationPlate({ evidence }: { evidence: DomainEvidence }) {
   const meanPlane = mean?.meanPlane && mean.meanPlane.dipDirection !== null ? { dip: mean.meanPlane.dip, dipDirection: mean.meanPlane.dipDirection } : null;
   const sets = evidence.orientations.filter(({ structureType }) => structureType === type);
   const caption = `Poles to ${type}, equal area, lower half · n = ${formatCount(lines.length)} · mean of ${mean?.confidence ?? 'none'} · snapshot ${evidence.snapshotNumber}`;
+  const exports = useFigureExports(chartRef, { fileName: 'orientation', caption });
   if (types.length === 0) return <Plate title="Orientation" empty={<Empty>No oriented structure lies inside this domain. Load structures in Intake, or ask site to measure some.</Empty>} />;
   return (
-    <Plate title="Orientation" tools={types.length > 1 && <Select label="Structure type" isLabelHidden controlSize="tiny" options={types.map((value) => ({ value, label: value }))} value={type} onPick={setPicked} />} help={HELP} caption={caption} exports={figureExports(() => chartRef.current, { fileName: 'orientation', caption })}>
+    <Plate title="Orientation" tools={types.length > 1 && <Select label="Structure type" isLabelHidden controlSize="tiny" options={types.map((value) => ({ value, label: value }))} value={type} onPick={setPicked} />} help={HELP} caption={caption} exports={exports}>
       <Stereonet title="Structures inside the domain" description={mean?.reading ?? 'No mean plane.'} lines={lines} meanPlane={meanPlane} cone95={mean?.alpha95 ?? null} height={250} chartRef={chartRef} />
       <Table caption={`Orientation of ${type} by confidence`} columns={COLUMNS} rows={sets} rowKey={({ confidence }) => confidence} isDense />
       {mean && <p className="mt-1 text-small text-ink-2">{mean.reading}</p>}

@@ -5,7 +5,7 @@ import { Histogram } from '#src/components/charts/histogram.tsx';
 import { ProbabilityPlot } from '#src/components/charts/probability-plot.tsx';
 import type { ChartHandle } from '#src/components/charts/chart-types.ts';
 import { Facts } from '#src/components/layout/selection-card.tsx';
-import { figureExports } from '#src/components/ui/figure-exports.ts';
+import { useFigureExports } from '#src/components/ui/figure-exports.ts';
 import { Skeleton } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { Segmented } from '#src/components/ui/segmented.tsx';
@@ -53,6 +53,11 @@ export function CellPlate({ screen, subset, variable, values, view, onView }: Pr
   const grades = useMemo(() => values?.ppm.map((ppm) => gradeIn(ppm, unit)) ?? null, [values, unit]);
   const caption = cell ? captionOf(cell, screen) : undefined;
   const title = `${variable} in ${subset.label}`;
+  const exports = useFigureExports(chartRef, {
+    fileName: `${variable}-${subset.label}`,
+    caption: caption ?? '',
+    table: () => ({ columns: [`${variable} ${unit}`], rows: Array.from(grades ?? [], (grade) => [grade]) }),
+  });
   return (
     <Plate
       title={title}
@@ -62,7 +67,7 @@ export function CellPlate({ screen, subset, variable, values, view, onView }: Pr
       stale={screen.isStale && `on snapshot ${screen.snapshotNumber}`}
       error={cell ? undefined : error}
       onRetry={() => void refetch()}
-      exports={figureExports(() => chartRef.current, { fileName: `${variable}-${subset.label}`, caption: caption ?? '', table: () => ({ columns: [`${variable} ${unit}`], rows: Array.from(grades ?? [], (grade) => [grade]) }) })}
+      exports={exports}
     >
       {!cell || !grades ? <Skeleton lines={9} /> : (
         <>
