@@ -123,7 +123,7 @@ const userColumns = (
           <Button
             size="tiny"
             unavailable={unavailable}
-            aria-label={`${user.isActive ? 'End' : 'Open'} the account of ${user.name}`}
+            aria-label={`${user.isActive ? 'End' : 'Open'} account of ${user.name}`}
             onClick={() => flip(user, 'isActive')}
           >
             {user.isActive ? 'End account' : 'Open account'}

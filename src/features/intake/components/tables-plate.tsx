@@ -94,7 +94,7 @@ function historyColumns(depositId: number, refusal: string | undefined, busyId: 
       isControl: true,
       align: 'right',
       cell: (revision) => (
-        <Button size="tiny" unavailable={refusal} isBusy={busyId === revision.id} aria-label={`Use revision ${revision.number} of ${KIND_NAMES[revision.kind]}`} onClick={() => onUse(revision)}>
+        <Button size="tiny" unavailable={refusal} isBusy={busyId === revision.id} aria-label={`Use this revision, ${revision.number} of ${KIND_NAMES[revision.kind]}`} onClick={() => onUse(revision)}>
           Use this revision
         </Button>
       ),
