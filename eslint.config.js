@@ -67,7 +67,7 @@ export default tseslint.config(
     ['^(?!zod$|\\./|#contract/)', 'the contract imports zod and itself'],
   ]),
   mayNotImport(['server/modules/**', 'server/lib/**', 'server/db/**'], [
-    ['^(#src/|#tests/|piscina|#workers/(?!client|task-types|tasks/))', 'the server reaches the workers through workers/client.ts and task types'],
+    ['^(#src/|#tests/|piscina|#workers/(?!client|task-types|tasks/|frame/snapshot-tables|intake/column-plan))', 'the server reaches the workers through workers/client.ts and task types'],
   ]),
   mayNotImport(['src/components/**', 'src/lib/**'], [
     ['^(#src/(features|app)/|#server/|#workers/|#seeds/)', 'components and lib know neither features nor the server'],

@@ -1,6 +1,6 @@
 import { createReadStream } from 'node:fs';
 import { stat } from 'node:fs/promises';
-import { Readable, Transform } from 'node:stream';
+import { Transform, type Readable } from 'node:stream';
 import { CsvError, parse, type Options } from 'csv-parse';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { detectEncoding, readHead, type TextEncoding } from './text-encoding.ts';
@@ -64,7 +64,8 @@ export async function eachRow(
   source.on('error', (error) => parser.destroy(error));
   let row = 0;
   try {
-    for await (const cells of parser) {
+    const records: AsyncIterable<string[]> = parser;
+    for await (const cells of records) {
       row += 1;
       onRow(row, cells);
       if (row % 2048 === 0) onProgress(size === 0 ? 1 : bytesRead / size);

@@ -32,7 +32,7 @@ export function codesRepository(db: Knex) {
       .join('users', 'users.id', 'code_sets.created_by')
       .join('snapshots', (on) => on.on('snapshots.id', 'code_sets.snapshot_id').andOn('snapshots.deposit_id', 'code_sets.deposit_id'))
       .where('code_sets.deposit_id', depositId)
-      .select('code_sets.*', 'users.name as created_by_name', 'snapshots.number as snapshot_number');
+      .select<JoinedRow[]>('code_sets.*', 'users.name as created_by_name', 'snapshots.number as snapshot_number');
 
   /** Stale once tables or domains changed after it was made. */
   const toCodeSet = (row: JoinedRow, now: { snapshotId: string; recipeSha256: string }): CodeSet => ({

@@ -32,7 +32,7 @@ export function componentsRepository(db: Knex) {
       .join('suites', 'suites.id', 'component_runs.suite_id')
       .join('snapshots', (on) => on.on('snapshots.id', 'component_runs.snapshot_id').andOn('snapshots.deposit_id', 'component_runs.deposit_id'))
       .where('component_runs.deposit_id', depositId)
-      .select('component_runs.*', 'users.name as created_by_name', 'suites.name as suite_name', 'snapshots.number as snapshot_number', 'snapshots.frame_table_id');
+      .select<NamedRow[]>('component_runs.*', 'users.name as created_by_name', 'suites.name as suite_name', 'snapshots.number as snapshot_number', 'snapshots.frame_table_id');
 
   const toRun = (row: NamedRow, currentSnapshotId: string): ComponentRun => ({
     ...ComponentResult.parse(JSON.parse(row.result)),

@@ -34,7 +34,7 @@ export function domainsRepository(db: Knex) {
       .join('users', 'users.id', 'domains.created_by')
       .leftJoin('domain_evidence', 'domain_evidence.domain_id', 'domains.id')
       .where('domains.deposit_id', depositId)
-      .select('domains.*', 'users.name as created_by_name', 'domain_evidence.domain_version as evidence_version', 'domain_evidence.snapshot_id as evidence_snapshot_id');
+      .select<JoinedRow[]>('domains.*', 'users.name as created_by_name', 'domain_evidence.domain_version as evidence_version', 'domain_evidence.snapshot_id as evidence_snapshot_id');
 
   const toDomain = (row: JoinedRow, groups: readonly GroupRow[], currentSnapshotId: string): Domain => {
     const groupLabels = labelsOf(row);

@@ -52,7 +52,7 @@ export function geometRepository(db: Knex) {
       .join('users', 'users.id', 'zone_runs.created_by')
       .join('snapshots', (on) => on.on('snapshots.id', 'zone_runs.snapshot_id').andOn('snapshots.deposit_id', 'zone_runs.deposit_id'))
       .where('zone_runs.deposit_id', depositId)
-      .select('zone_runs.*', 'users.name as created_by_name', 'snapshots.number as snapshot_number', 'snapshots.frame_table_id');
+      .select<JoinedRow[]>('zone_runs.*', 'users.name as created_by_name', 'snapshots.number as snapshot_number', 'snapshots.frame_table_id');
 
   const toRun = (row: JoinedRow, now: StandsOn): ZoneRun => ({
     ...ZoneResult.parse(JSON.parse(row.result)),

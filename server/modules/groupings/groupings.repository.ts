@@ -58,7 +58,7 @@ export function groupingsRepository(db: Knex) {
       .join('component_runs', 'component_runs.id', 'groupings.component_run_id')
       .join('snapshots', (on) => on.on('snapshots.id', 'component_runs.snapshot_id').andOn('snapshots.deposit_id', 'component_runs.deposit_id'))
       .where('groupings.deposit_id', depositId)
-      .select('groupings.*', 'users.name as created_by_name', 'component_runs.suite_id', 'component_runs.snapshot_id', 'component_runs.table_id as component_table_id', 'snapshots.number as snapshot_number', 'snapshots.frame_table_id');
+      .select<JoinedRow[]>('groupings.*', 'users.name as created_by_name', 'component_runs.suite_id', 'component_runs.snapshot_id', 'component_runs.table_id as component_table_id', 'snapshots.number as snapshot_number', 'snapshots.frame_table_id');
 
   const toGrouping = (row: JoinedRow, groups: readonly GroupRow[], currentSnapshotId: string): Grouping => {
     const { groups: stored, ...result } = GroupingResult.parse(JSON.parse(row.result));
@@ -94,7 +94,7 @@ export function groupingsRepository(db: Knex) {
       const rows: (SweepRowStored & { snapshot_id: string })[] = await db('sweeps')
         .join('component_runs', 'component_runs.id', 'sweeps.component_run_id')
         .where('sweeps.deposit_id', depositId).orderBy('sweeps.id', 'desc').limit(30)
-        .select('sweeps.*', 'component_runs.snapshot_id');
+        .select<(SweepRowStored & { snapshot_id: string })[]>('sweeps.*', 'component_runs.snapshot_id');
       return rows.map((row) => ({
         ...SweepResult.parse(JSON.parse(row.result)),
         id: row.id, componentRunId: row.component_run_id, components: row.components, seed: row.seed, isStale: row.snapshot_id !== currentSnapshotId, createdAt: row.created_at,

@@ -1,5 +1,5 @@
 import type { Knex } from 'knex';
-import * as z from 'zod';
+import type * as z from 'zod';
 import { HoleDetail, HoleRow } from '#contract/holes.ts';
 import { orNotFound } from '#server/lib/errors.ts';
 import type { SnapshotsService } from '#server/modules/snapshots/snapshots.service.ts';

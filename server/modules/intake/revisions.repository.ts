@@ -45,7 +45,7 @@ export function revisionsRepository(db: Knex) {
       .join('users', 'users.id', 'revisions.loaded_by')
       .join('uploads', 'uploads.id', 'revisions.upload_id')
       .where('revisions.deposit_id', depositId)
-      .select('revisions.*', 'users.name as loaded_by_name', 'uploads.file_name');
+      .select<NamedRevisionRow[]>('revisions.*', 'users.name as loaded_by_name', 'uploads.file_name');
 
   return {
     async list(depositId: number): Promise<Revision[]> {

@@ -55,7 +55,7 @@ export function uploadsRepository(db: Knex) {
       .join('users', 'users.id', 'uploads.uploaded_by')
       .where('uploads.deposit_id', depositId)
       .whereNot('uploads.state', 'discarded')
-      .select('uploads.*', 'users.name as uploaded_by_name');
+      .select<NamedUploadRow[]>('uploads.*', 'users.name as uploaded_by_name');
 
   const problems = (uploadId: number, only: { severity?: RowProblem['severity'] | undefined; code?: string | undefined }) => {
     const query = db<RowProblem & { id: number; upload_id: number; original: string }>('row_problems').where({ upload_id: uploadId });

@@ -34,7 +34,7 @@ export function screensRepository(db: Knex) {
       .leftJoin('groupings', 'groupings.id', 'screens.grouping_id')
       .join('snapshots', (on) => on.on('snapshots.id', 'screens.snapshot_id').andOn('snapshots.deposit_id', 'screens.deposit_id'))
       .where('screens.deposit_id', depositId)
-      .select('screens.*', 'users.name as created_by_name', 'groupings.name as grouping_name', 'snapshots.number as snapshot_number');
+      .select<JoinedRow[]>('screens.*', 'users.name as created_by_name', 'groupings.name as grouping_name', 'snapshots.number as snapshot_number');
 
   const toScreen = (row: JoinedRow, currentSnapshotId: string): Screen => ({
     ...ScreenResult.parse(JSON.parse(row.result)),

@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto';
 import type { Knex } from 'knex';
-import * as z from 'zod';
+import type * as z from 'zod';
 import { Snapshot } from '#contract/snapshots.ts';
 import { AppError } from '#server/lib/errors.ts';
 import { revisionsRepository, type RevisionRow } from '#server/modules/intake/revisions.repository.ts';

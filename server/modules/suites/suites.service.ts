@@ -38,7 +38,7 @@ export function createSuites(db: Knex, clock: Clock, record: RecordService, snap
     trx<NamedSuiteRow>('suites')
       .join('users', 'users.id', 'suites.created_by')
       .where('suites.deposit_id', depositId)
-      .select('suites.*', 'users.name as created_by_name', trx.raw('(SELECT count(*) FROM component_runs WHERE component_runs.suite_id = suites.id) AS runs'));
+      .select<NamedSuiteRow[]>('suites.*', 'users.name as created_by_name', trx.raw('(SELECT count(*) FROM component_runs WHERE component_runs.suite_id = suites.id) AS runs'));
 
   async function get(depositId: number, suiteId: number, trx: Knex = db): Promise<Suite> {
     const row: NamedSuiteRow | undefined = await named(depositId, trx).where('suites.id', suiteId).first();
@@ -79,6 +79,7 @@ export function createSuites(db: Knex, clock: Clock, record: RecordService, snap
     },
 
     async update(depositId: number, suiteId: number, body: SuiteBody, expectedVersion: number, actor: Actor): Promise<Suite> {
+      await get(depositId, suiteId);
       await checkAnalytes(depositId, body);
       return transact(db, async (trx) => {
         const suite = await get(depositId, suiteId, trx);

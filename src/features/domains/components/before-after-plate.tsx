@@ -43,12 +43,12 @@ export function BeforeAfterPlate({ evidence, domain }: { evidence: DomainEvidenc
   const split = splits.includes(pickedSplit) ? pickedSplit : (splits[0] ?? null);
   const chartRef = useRef<ChartHandle>(null);
   const unit = payAnalytes.find(({ analyte }) => analyte === variable)?.unit ?? 'ppm';
-  const parts = useMemo(() => partsBefore(evidence.populations, variable, split), [evidence, variable, split]);
+  const parts = partsBefore(evidence.populations, variable, split);
   const columns = useMemo(() => columnsFor(unit), [unit]);
-  const ridges = useMemo(() => parts.map(({ label, role, n, verdict, density }) => {
+  const ridges = parts.map(({ label, role, n, verdict, density }) => {
     const at = density?.ppm.map((ppm) => gradeIn(ppm, unit)) ?? [];
     return { label: `${ROLES[role]}${label}`, note: `n = ${formatCount(n)}, ${VERDICT_WORDS[verdict]}`, slot: role === 'domain' ? domain.slot : null, values: at, ...(density ? { curve: { at, height: density.height } } : {}) };
-  }), [parts, unit, domain.slot]);
+  });
   const caption = `Kernel density of ln ${variable}, each of one height; n in intervals · snapshot ${evidence.snapshotNumber}`;
   const exports = useFigureExports(chartRef, { fileName: `${variable}-before-after`, caption });
   if (variables.length === 0) return null;
