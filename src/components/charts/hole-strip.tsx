@@ -55,6 +55,15 @@ function tracksOf({ structures = [], weathering = [], intervals = [], gradeLabel
   ];
 }
 
+const FOOT_LINE_PX = 16;
+
+/** The order of the tracks, and what the shades of weathering mean. */
+function footWords({ orientation, weatheringOrder = [], weathering = [] }: HoleStripProps, tracks: readonly Track[], widthPx: number): string[] {
+  const order = `${tracks.map(({ name }) => name).join(', ')}: ${orientation === 'vertical' ? 'left to right' : 'top to bottom'}`;
+  const shades = weathering.length > 0 && weatheringOrder.length > 1 ? [`weathering from dark to pale: ${weatheringOrder.join(', ')}`] : [];
+  return [order, ...shades].map((line) => fitText(line, widthPx, LABEL_PX));
+}
+
 const RULER_PX = { horizontal: 18, vertical: 46 };
 
 function Drawing({ box, props }: { box: Box; props: HoleStripProps }) {
@@ -62,7 +71,8 @@ function Drawing({ box, props }: { box: Box; props: HoleStripProps }) {
   const prefix = useId();
   const isVertical = orientation === 'vertical';
   const tracks = tracksOf(props);
-  const foot = 20;
+  const words = footWords(props, tracks, box.width - 8);
+  const foot = 4 + words.length * FOOT_LINE_PX;
   const length = (isVertical ? box.height - foot : box.width) - 10;
   const place = laid(props, 5, length);
   const across = (isVertical ? box.width : box.height - foot) - RULER_PX[orientation] - 8;
@@ -88,9 +98,11 @@ function Drawing({ box, props }: { box: Box; props: HoleStripProps }) {
       {framed !== undefined && framed !== null && (
         <rect {...place.rect(framed.fromM, framed.toM, RULER_PX[orientation] - 3, RULER_PX[orientation] + across + 11)} rx={2} fill="none" stroke="var(--copper)" strokeWidth={2.5} />
       )}
-      <text x={isVertical ? 0 : 5} y={box.height - 5} style={captionText}>
-        {fitText(`${tracks.map(({ name }) => name).join(', ')}: ${isVertical ? 'left to right' : 'top to bottom'}`, box.width - 8, LABEL_PX)}
-      </text>
+      {words.map((line, index) => (
+        <text key={line} x={isVertical ? 0 : 5} y={box.height - 5 - (words.length - 1 - index) * FOOT_LINE_PX} style={captionText}>
+          {line}
+        </text>
+      ))}
     </g>
   );
 }

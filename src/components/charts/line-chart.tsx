@@ -1,6 +1,6 @@
 import { plotArea, XAxis, YAxis, ZeroLine } from './axes.tsx';
 import { markPath } from './category-marks.tsx';
-import { axisTitle, halo, LABEL_PX, TICK_PX } from './chart-styles.ts';
+import { axisTitle, halo, TICK_PX, type } from './chart-styles.ts';
 import { ChartFrame } from './chart-frame.tsx';
 import type { Box, ChartBasics, PlotArea, ScaleKind, Tick } from './chart-types.ts';
 import { lineLabels } from './line-labels.ts';
@@ -112,7 +112,7 @@ function Drawing({ box, props }: { box: Box; props: LineChartProps }) {
 /** The chosen x is written in bold over its plain tick. */
 function ChosenTick({ x, y, label }: { x: number; y: number; label: string }) {
   return (
-    <text x={x} y={y} textAnchor="middle" style={{ font: `600 ${TICK_PX}px var(--font-ui)`, fill: 'var(--ink)', ...halo }}>
+    <text x={x} y={y} textAnchor="middle" style={{ ...type('ui', 600, TICK_PX), fill: 'var(--ink)', ...halo }}>
       {label}
     </text>
   );
@@ -159,7 +159,7 @@ function Panel({ panel, domain, ticks, area, x }: PanelProps) {
         </g>
       ))}
       {labels.map(({ id, x: lx, y: ly }) => (
-        <text key={id} x={lx} y={ly} dy="0.35em" textAnchor="middle" style={{ ...axisTitle, font: `400 ${LABEL_PX}px var(--font-ui)`, fill: 'var(--ink)', ...halo }}>
+        <text key={id} x={lx} y={ly} dy="0.35em" textAnchor="middle" style={{ ...axisTitle, fill: 'var(--ink)', ...halo }}>
           {id}
         </text>
       ))}

@@ -1,4 +1,4 @@
-import { halo, LABEL_PX, tickText, axisTitle, TICK_PX } from './chart-styles.ts';
+import { axisTitle, halo, tickText, TICK_PX } from './chart-styles.ts';
 import { ChartFrame } from './chart-frame.tsx';
 import type { Box, ChartBasics } from './chart-types.ts';
 import { textWidth } from './text-width.ts';
@@ -68,7 +68,7 @@ function Drawing({ box, props }: { box: Box; props: LoadingsBarsProps }) {
         );
       })}
       <line x1={x(0)} x2={x(0)} y1={HEAD_PX} y2={base} stroke="var(--rule-firm)" />
-      <text x={Math.max(widest, box.width / 2)} y={base + 31} textAnchor="middle" style={{ ...axisTitle, font: `400 ${LABEL_PX}px var(--font-ui)` }}>
+      <text x={Math.max(widest, box.width / 2)} y={base + 31} textAnchor="middle" style={axisTitle}>
         {axisLabel}
       </text>
     </g>

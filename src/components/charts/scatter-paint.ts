@@ -7,158 +7,182 @@ import { resolveTokens, tokenValue } from './theme-colours.ts';
 export const MOST_MARKS = 10_000;
 const MARKS_OVER_DOTS = 4_000;
 export const CONTOURS_FROM = 20_000;
-export const MARK_RADIUS = 2.4;
+const MARK_RADIUS = 2.4;
+/** Slot of a point that is not drawn. */
+export const HIDDEN = 255;
+const SPRITE_PX = Math.ceil(MARK_RADIUS * 2 * 1.35 + 3);
 
 /** How many points get a mark: all, or one in `every` over a ground of dots that shows them all. */
 export function drawingOf(count: number): { dots: boolean; every: number } {
   return count <= MOST_MARKS ? { dots: false, every: 1 } : { dots: true, every: Math.ceil(count / MARKS_OVER_DOTS) };
 }
 
-/** The sentence a caption owes its reader where a picture is thinned; null where it is not. */
+/** The words a caption owes its reader where a picture is thinned; null where it is not. */
 export function drawingNote(count: number): string | null {
   const { dots, every } = drawingOf(count);
-  if (!dots) return null;
-  return `every point a dot, 1 in ${every} a mark`;
+  return dots ? `every point a dot, 1 in ${every} a mark` : null;
 }
 
-/** Slot of a row, or 0 for a row with no category. */
-export type SlotOf = (row: number) => number;
-
-export interface Sprites {
-  plain: Map<number, HTMLCanvasElement>;
-  picked: Map<number, HTMLCanvasElement>;
-  ratio: number;
-  sizePx: number;
+/** Points to paint: their places, and the slot of each (0 without a category, 255 hidden). */
+export interface Painting {
+  points: ScatterPoints;
+  view: Projector;
+  slots: Uint8Array;
+  /** Only these points, by index; all when absent. */
+  only?: Int32Array;
+  /** One point in so many; 1 when absent. */
+  every?: number;
 }
 
-function sprite(slot: number, picked: boolean, ratio: number, sizePx: number): HTMLCanvasElement | null {
+/** Walks the drawn points in row order with their place in the plot area. */
+function eachPoint({ points, view, slots, only, every = 1 }: Painting, marginPx: number, draw: (x: number, y: number, slot: number) => void): void {
+  const { u, v } = points;
+  const { left, top, width, height } = view.area;
+  const count = only === undefined ? u.length : only.length;
+  const [x0, y0] = [view.x(0) - left, view.y(0) - top];
+  const [perU, perV] = [view.x(1) - left - x0, view.y(1) - top - y0];
+  for (let at = 0; at < count; at += every) {
+    const i = only === undefined ? at : (only[at] ?? 0);
+    const slot = slots[i] ?? 0;
+    if (slot === HIDDEN) continue;
+    const x = x0 + perU * (u[i] ?? 0);
+    const y = y0 + perV * (v[i] ?? 0);
+    if (x >= -marginPx && y >= -marginPx && x <= width + marginPx && y <= height + marginPx) draw(x, y, slot);
+  }
+}
+
+interface MarkLook {
+  fill: string;
+  stroke: string;
+  strokeWidth: number;
+  opacity: number;
+}
+
+function lookOf(slot: number, isPicked: boolean): MarkLook {
+  const paint = slot === 0 ? { fill: 'var(--sheet)', stroke: 'var(--ink-3)', strokeWidth: 0.8 } : markPaint(slot);
+  if (isPicked) return { fill: paint.fill, stroke: 'var(--pick)', strokeWidth: 1.2, opacity: 1 };
+  return { ...paint, strokeWidth: Math.max(0.6, paint.strokeWidth - 0.2), opacity: 0.85 };
+}
+
+function sprite(slot: number, isPicked: boolean, ratio: number): HTMLCanvasElement | null {
   const canvas = document.createElement('canvas');
-  canvas.width = sizePx * ratio;
-  canvas.height = sizePx * ratio;
+  canvas.width = SPRITE_PX * ratio;
+  canvas.height = SPRITE_PX * ratio;
   const pen = canvas.getContext('2d');
   if (pen === null) return null;
+  const { fill, stroke, strokeWidth, opacity } = lookOf(slot, isPicked);
+  const outline = new Path2D(markPath(slot === 0 ? 1 : slot, MARK_RADIUS, SPRITE_PX / 2, SPRITE_PX / 2));
   pen.scale(ratio, ratio);
-  const outline = new Path2D(markPath(slot === 0 ? 1 : slot, MARK_RADIUS, sizePx / 2, sizePx / 2));
-  const paint = slot === 0 ? { fill: 'var(--sheet)', stroke: 'var(--ink-3)', strokeWidth: 0.8 } : markPaint(slot);
-  pen.globalAlpha = picked ? 1 : 0.85;
-  pen.fillStyle = resolveTokens(paint.fill);
+  pen.globalAlpha = opacity;
+  pen.fillStyle = resolveTokens(fill);
   pen.fill(outline);
-  pen.strokeStyle = picked ? tokenValue('--pick') : resolveTokens(paint.stroke);
-  pen.lineWidth = picked ? 1.3 : Math.max(0.6, paint.strokeWidth - 0.2);
+  pen.strokeStyle = resolveTokens(stroke);
+  pen.lineWidth = strokeWidth;
   pen.stroke(outline);
   return canvas;
 }
 
-/** Marks painted once per slot and theme, then stamped. */
-export function makeSprites(slots: Iterable<number>, ratio: number): Sprites {
-  const sizePx = Math.ceil(MARK_RADIUS * 2 * 1.35 + 3);
-  const sprites: Sprites = { plain: new Map(), picked: new Map(), ratio, sizePx };
-  for (const slot of [0, ...slots]) {
-    const plain = sprite(slot, false, ratio, sizePx);
-    const picked = sprite(slot, true, ratio, sizePx);
-    if (plain !== null && picked !== null) {
-      sprites.plain.set(slot, plain);
-      sprites.picked.set(slot, picked);
-    }
-  }
-  return sprites;
+/** Stamps a mark for each point; each slot's mark is painted once and copied. */
+export function stampMarks(pen: CanvasRenderingContext2D, painting: Painting, isPicked: boolean, ratio: number): void {
+  const sprites = new Map<number, HTMLCanvasElement | null>();
+  eachPoint(painting, 4, (x, y, slot) => {
+    if (!sprites.has(slot)) sprites.set(slot, sprite(slot, isPicked, ratio));
+    const image = sprites.get(slot);
+    if (image) pen.drawImage(image, Math.round((x - SPRITE_PX / 2) * ratio), Math.round((y - SPRITE_PX / 2) * ratio));
+  });
 }
 
-interface Stamp {
-  points: ScatterPoints;
-  view: Projector;
-  slotOf: SlotOf;
-  /** Draws this row? */
-  takes: (row: number, index: number) => boolean;
-}
-
-/** Stamps marks in row order; the canvas covers exactly the plot area. */
-export function stampMarks(pen: CanvasRenderingContext2D, stamp: Stamp, sprites: Sprites, picked: boolean): void {
-  const { points, view, slotOf, takes } = stamp;
-  const { left, top, width, height } = view.area;
-  const { ratio, sizePx } = sprites;
-  const from = picked ? sprites.picked : sprites.plain;
-  for (let i = 0; i < points.rows.length; i++) {
-    const row = points.rows[i] ?? 0;
-    if (!takes(row, i)) continue;
-    const x = view.x(points.u[i] ?? 0) - left;
-    const y = view.y(points.v[i] ?? 0) - top;
-    if (x < -4 || y < -4 || x > width + 4 || y > height + 4) continue;
-    const image = from.get(slotOf(row));
-    if (image !== undefined) pen.drawImage(image, Math.round((x - sizePx / 2) * ratio), Math.round((y - sizePx / 2) * ratio));
-  }
-}
-
-type Rgb = readonly [number, number, number];
-
-function parts(colour: string): Rgb {
+/** A colour as one 32-bit number in the byte order of canvas pixels (little-endian, opaque). */
+function packed(colour: string): number {
   const { r, g, b } = rgb(resolveTokens(colour));
-  return [r || 0, g || 0, b || 0];
+  return ((255 << 24) | ((b || 0) << 16) | ((g || 0) << 8) | (r || 0)) >>> 0;
 }
 
 /** Edge colours by slot: dots are too small for the paler fills to show. */
-export function dotColours(slots: Iterable<number>): Map<number, Rgb> {
-  const found = new Map<number, Rgb>([[0, parts('var(--ink-3)')]]);
-  for (const slot of slots) found.set(slot, parts(slotColours(slot).edge));
-  return found;
+function dotColours(): Uint32Array {
+  const colours = new Uint32Array(256).fill(packed('var(--ink-3)'));
+  for (let slot = 1; slot <= 16; slot++) colours[slot] = packed(slotColours(slot).edge);
+  return colours;
 }
 
-function blend(pixels: Uint8ClampedArray, at: number, [r, g, b]: Rgb, alpha: number): void {
-  const under = (pixels[at + 3] ?? 0) / 255;
-  const over = alpha + under * (1 - alpha);
-  const keep = (under * (1 - alpha)) / over;
-  const take = alpha / over;
-  pixels[at] = (pixels[at] ?? 0) * keep + r * take;
-  pixels[at + 1] = (pixels[at + 1] ?? 0) * keep + g * take;
-  pixels[at + 2] = (pixels[at + 2] ?? 0) * keep + b * take;
-  pixels[at + 3] = over * 255;
+export interface DotStyle {
+  sizePx: number;
+  ratio: number;
+  /** A rim of this token about each dot. */
+  rim?: string;
 }
 
-/** Paints every point as a small square straight into pixels: some 20 ms for 200,000 points. */
-export function paintDots(pen: CanvasRenderingContext2D, stamp: Stamp, colourOf: (row: number) => Rgb, dot: { sizePx: number; alpha: number; ratio: number }): void {
-  const { points, view, takes } = stamp;
-  const { left, top } = view.area;
-  const { width, height } = pen.canvas;
-  const image = pen.getImageData(0, 0, width, height);
-  const side = Math.max(1, Math.round(dot.sizePx * dot.ratio));
-  for (let i = 0; i < points.rows.length; i++) {
-    const row = points.rows[i] ?? 0;
-    if (!takes(row, i)) continue;
-    const x = Math.round((view.x(points.u[i] ?? 0) - left) * dot.ratio - side / 2);
-    const y = Math.round((view.y(points.v[i] ?? 0) - top) * dot.ratio - side / 2);
-    if (x < 0 || y < 0 || x + side > width || y + side > height) continue;
-    const colour = colourOf(row);
-    for (let dy = 0; dy < side; dy++) {
-      for (let dx = 0; dx < side; dx++) blend(image.data, ((y + dy) * width + x + dx) * 4, colour, dot.alpha);
+/** The walk of `eachPoint` written out: a call for each of 200,000 points would cost more than its pixels. */
+function paintSquares(pixels: Uint32Array, width: number, height: number, painting: Painting, sidePx: number, ratio: number, colours: Uint32Array): void {
+  const { points, view, slots, only } = painting;
+  const { u, v } = points;
+  const side = Math.max(1, Math.round(sidePx * ratio));
+  const [x0, y0] = [(view.x(0) - view.area.left) * ratio - side / 2 + 0.5, (view.y(0) - view.area.top) * ratio - side / 2 + 0.5];
+  const [perU, perV] = [(view.x(1) - view.x(0)) * ratio, (view.y(1) - view.y(0)) * ratio];
+  const count = only === undefined ? u.length : only.length;
+  for (let at = 0; at < count; at++) {
+    const i = only === undefined ? at : only[at]!;
+    const slot = slots[i]!;
+    const x = Math.floor(x0 + perU * u[i]!);
+    const y = Math.floor(y0 + perV * v[i]!);
+    if (slot === HIDDEN || x < 0 || y < 0 || x + side > width || y + side > height) continue;
+    const colour = colours[slot]!;
+    const end = (y + side) * width + x;
+    for (let line = y * width + x; line < end; line += width) {
+      for (let dx = 0; dx < side; dx++) pixels[line + dx] = colour;
     }
   }
+}
+
+/** Paints every point as a small square straight into pixels, so that 200,000 can be panned. */
+export function paintDots(pen: CanvasRenderingContext2D, painting: Painting, { sizePx, ratio, rim }: DotStyle): void {
+  const { width, height } = pen.canvas;
+  const image = pen.createImageData(width, height);
+  const pixels = new Uint32Array(image.data.buffer);
+  if (rim !== undefined) paintSquares(pixels, width, height, painting, sizePx + 1.5, ratio, new Uint32Array(256).fill(packed(rim)));
+  paintSquares(pixels, width, height, painting, sizePx, ratio, dotColours());
   pen.putImageData(image, 0, 0);
 }
 
-/** The marks as SVG markup, one path a category, for the export. */
-export function marksMarkup(stamp: Stamp, picked: (row: number) => boolean): string {
-  const { points, view, slotOf, takes } = stamp;
-  const { left, top, width, height } = view.area;
-  const paths = new Map<string, string[]>();
-  for (let i = 0; i < points.rows.length; i++) {
-    const row = points.rows[i] ?? 0;
-    if (!takes(row, i)) continue;
-    const x = view.x(points.u[i] ?? 0);
-    const y = view.y(points.v[i] ?? 0);
-    if (x < left || y < top || x > left + width || y > top + height) continue;
-    const slot = slotOf(row);
-    const key = `${picked(row) ? 1 : 0}/${slot}`;
-    const list = paths.get(key) ?? [];
-    if (list.length === 0) paths.set(key, list);
-    list.push(markPath(slot === 0 ? 1 : slot, MARK_RADIUS, x, y));
-  }
-  return [...paths].sort(([a], [b]) => a.localeCompare(b)).map(([key, list]) => pathMarkup(key, list.join(''))).join('');
+/** The dots as an embedded picture, for the export. */
+function dotsMarkup(painting: Painting): string {
+  const { left, top, width, height } = painting.view.area;
+  const canvas = document.createElement('canvas');
+  canvas.width = Math.round(width * 2);
+  canvas.height = Math.round(height * 2);
+  const pen = canvas.getContext('2d');
+  if (pen === null) return '';
+  paintDots(pen, painting, { sizePx: 1.3, ratio: 2 });
+  return `<image x="${left}" y="${top}" width="${width}" height="${height}" href="${canvas.toDataURL('image/png')}"/>`;
 }
 
-function pathMarkup(key: string, d: string): string {
-  const [flag, slotText] = key.split('/');
-  const slot = Number(slotText);
-  const paint = slot === 0 ? { fill: 'var(--sheet)', stroke: 'var(--ink-3)', strokeWidth: 0.8 } : markPaint(slot);
-  const stroke = flag === '1' ? 'var(--pick)' : paint.stroke;
-  return `<path d="${d}" fill="${paint.fill}" stroke="${stroke}" stroke-width="${flag === '1' ? 1.3 : 0.6}" opacity="${flag === '1' ? 1 : 0.85}"/>`;
+function usesMarkup(painting: Painting, isPicked: boolean): string {
+  const { left, top } = painting.view.area;
+  const prefix = isPicked ? 'picked' : 'mark';
+  const uses: string[] = [];
+  const slots = new Set<number>();
+  eachPoint(painting, 0, (x, y, slot) => {
+    slots.add(slot);
+    uses.push(`<use href="#${prefix}-${slot}" x="${(x + left).toFixed(1)}" y="${(y + top).toFixed(1)}"/>`);
+  });
+  const defs = [...slots].map((slot) => {
+    const { fill, stroke, strokeWidth, opacity } = lookOf(slot, isPicked);
+    return `<path id="${prefix}-${slot}" d="${markPath(slot === 0 ? 1 : slot, MARK_RADIUS)}" fill="${fill}" stroke="${stroke}" stroke-width="${strokeWidth}" opacity="${opacity}"/>`;
+  });
+  return `<defs>${defs.join('')}</defs>${uses.join('')}`;
+}
+
+/** What the canvases show as SVG markup: a mark each, over a picture of the dots where there are many. */
+export function scatterMarkup(painting: Painting, picked: Int32Array): string {
+  const { dots, every } = drawingOf(painting.points.rows.length);
+  const ground = dots ? dotsMarkup(painting) : '';
+  const chosen = drawingOf(picked.length).every;
+  return ground + usesMarkup({ ...painting, every }, false) + usesMarkup({ ...painting, only: picked, every: chosen }, true);
+}
+
+/** Paints the chosen points: marks with an ink edge, or rimmed dots where there are many. */
+export function paintPicked(pen: CanvasRenderingContext2D, painting: Painting, picked: Int32Array, ratio: number): void {
+  const chosen = { ...painting, only: picked };
+  if (drawingOf(picked.length).dots) paintDots(pen, chosen, { sizePx: 1.5, ratio, rim: tokenValue('--pick') });
+  else stampMarks(pen, chosen, true, ratio);
 }

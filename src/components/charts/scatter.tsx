@@ -1,11 +1,10 @@
 import type { KeyboardEvent } from 'react';
 import { ChartFrame } from './chart-frame.tsx';
 import { ChartTooltip } from './chart-tooltip.tsx';
-import { isPicked } from './chart-types.ts';
 import { LegendRow } from './legend-row.tsx';
 import { ScatterCanvas } from './scatter-canvas.tsx';
 import { ScatterDrawing } from './scatter-drawing.tsx';
-import { drawingNote, drawingOf, marksMarkup } from './scatter-paint.ts';
+import { drawingNote, scatterMarkup } from './scatter-paint.ts';
 import { nearestRow, rowsByRule, rowsInPolygon } from './scatter-points.ts';
 import { ScatterRule } from './scatter-rule.tsx';
 import { useScatter } from './use-scatter.ts';
@@ -18,22 +17,15 @@ const shortName = (label: string) => label.split(',')[0] ?? label;
 /** Points of two variables, up to some 200,000: lasso, box, pan, rule; linked hover and selection. */
 export function Scatter(props: ScatterProps) {
   const state = useScatter(props);
-  const { points, view, slotOf, slots, isShown } = state;
-  const { selected } = props;
+  const { points, view, slots, picked } = state;
   const gesture = useGesture(props, state);
-  const exportUnder = () => {
-    const { every } = drawingOf(points.rows.length);
-    const picked = (row: number) => isPicked(selected, row);
-    const takes = (row: number, i: number) => (i % every === 0 || picked(row)) && isShown(row);
-    return marksMarkup({ points, view, slotOf, takes }, picked);
-  };
   return (
     <ChartFrame
       {...props}
       measured={state.measured}
       usualHeight={340}
-      under={() => <ScatterCanvas layer={{ points, view, slotOf, slots, isShown, picked: selected }} />}
-      exportUnder={exportUnder}
+      under={() => <ScatterCanvas points={points} view={view} slots={slots} picked={picked} />}
+      exportUnder={() => scatterMarkup({ points, view, slots }, picked)}
       over={() => <Pointer props={props} state={state} handlers={gesture.handlers} />}
       foot={<Foot props={props} state={state} />}
     >

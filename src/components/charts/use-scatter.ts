@@ -1,9 +1,11 @@
 import { useCallback, useMemo, useState } from 'react';
 import { plotArea } from './axes.tsx';
+import { isPicked } from './chart-types.ts';
 import type { Category, ChartBasics, PickedRows, RowTooltip, ScaleKind, SelectMode } from './chart-types.ts';
 import { densityContours } from './scatter-density.ts';
-import { CONTOURS_FROM } from './scatter-paint.ts';
+import { CONTOURS_FROM, HIDDEN } from './scatter-paint.ts';
 import { projector, scatterPoints, toShare } from './scatter-points.ts';
+import type { ScatterPoints } from './scatter-points.ts';
 import type { Ray } from './scatter-rays.tsx';
 import type { ScatterTool } from './scatter-tools.tsx';
 import { axisTicks } from './ticks.ts';
@@ -80,6 +82,22 @@ function useHovered(props: ScatterProps) {
   return { hovered, hover };
 }
 
+/** Slot of each kept point: 0 without a category, 255 where its category is hidden. */
+function slotsOfPoints(points: ScatterPoints, category: ArrayLike<number> | undefined, categories: readonly Category[], hidden: ReadonlySet<number>): Uint8Array {
+  const slots = new Uint8Array(points.rows.length);
+  for (let i = 0; i < slots.length; i++) {
+    const index = category?.[points.rows[i] ?? -1] ?? -1;
+    slots[i] = hidden.has(index) ? HIDDEN : (categories[index]?.slot ?? 0);
+  }
+  return slots;
+}
+
+/** Kept points that are chosen, by index. */
+function pickedPoints(points: ScatterPoints, selected: PickedRows | undefined): Int32Array {
+  if (selected === undefined) return new Int32Array(0);
+  return Int32Array.from(points.rows.keys()).filter((i) => isPicked(selected, points.rows[i] ?? -1));
+}
+
 /** The points of a scatter and the view on them: what is shown, where it falls, what is under the pointer. */
 export function useScatter(props: ScatterProps) {
   const { category, categories = NO_CATEGORIES, tool = 'lasso', xKind = 'linear', yKind = 'linear' } = props;
@@ -97,9 +115,10 @@ export function useScatter(props: ScatterProps) {
     () => projector({ left, top, width, height }, { k, x: shiftX, y: shiftY }),
     [left, top, width, height, k, shiftX, shiftY],
   );
-  const slotOf = useCallback((row: number) => categories[category?.[row] ?? -1]?.slot ?? 0, [category, categories]);
   const isShown = useCallback((row: number) => !hidden.has(category?.[row] ?? -1), [category, hidden]);
-  const slots = useMemo(() => categories.map(({ slot }) => slot), [categories]);
+  const slots = useMemo(() => slotsOfPoints(points, category, categories, hidden), [points, category, categories, hidden]);
+  const { selected } = props;
+  const picked = useMemo(() => pickedPoints(points, selected), [points, selected]);
   const contours = useMemo(() => (points.rows.length > CONTOURS_FROM ? densityContours(points, isShown) : []), [points, isShown]);
   const placeOf = (row: number) => {
     const x = view.x(toShare(props.x[row] ?? NaN, xKind, points.xDomain));
@@ -107,7 +126,7 @@ export function useScatter(props: ScatterProps) {
     const inPlot = x >= left && x <= left + width && y >= top && y <= top + height;
     return inPlot && isShown(row) ? { x, y } : null;
   };
-  return { measured, points, view, zoom, hidden, toggle, hovered, hover, slotOf, isShown, slots, contours, placeOf, categories, tool, xKind, yKind };
+  return { measured, points, view, zoom, hidden, toggle, hovered, hover, isShown, slots, picked, contours, placeOf, categories, tool, xKind, yKind };
 }
 
 export type ScatterState = ReturnType<typeof useScatter>;

@@ -29,6 +29,7 @@ export function TrayBody(props: Props) {
   const { holes, shown, fit, onWindow, tracks, groups, rockKey, gradeLabel } = props;
   const prefix = useId();
   const [measure, box] = useBox({ width: 1180, height: 160 });
+  const bodyRef = useRef<HTMLDivElement>(null);
   const [at, setAt] = useState<MenuPlace | null>(null);
   const layout = useMemo(() => troughLayout(tracks), [tracks]);
   const highest = useMemo(() => highestGrade(holes), [holes]);
@@ -39,6 +40,7 @@ export function TrayBody(props: Props) {
   const words = { groups, rockKey, gradeLabel };
   return (
     <div ref={attachWheel} className="relative min-h-0 flex-1 overflow-x-hidden overflow-y-auto pb-1">
+      <div ref={bodyRef} className="sticky top-0 h-0" />
       <div ref={measure} className="relative min-h-4">
         <svg width={0} height={0} aria-hidden="true" className="absolute">
           <RockPatternDefs prefix={prefix} />
@@ -61,7 +63,7 @@ export function TrayBody(props: Props) {
             selectedRows={props.selectedRows}
             hoveredRow={hoveredRow}
             onHover={(row, place) => {
-              setAt(row === null ? null : place);
+              setAt(row === null || place === null ? null : { x: place.x, y: bodyRef.current?.getBoundingClientRect().top ?? place.y });
               if (row !== hoveredRow) props.onHover?.(row);
             }}
             onSelect={props.onSelect ?? ignore}
@@ -85,14 +87,14 @@ export function TrayBody(props: Props) {
 
 const SHEET_PX = 240;
 
-/** A tooltip above the pointer, outside the tray so that its edge does not cut it. */
+/** A tooltip above the troughs, so that it hides no core, and outside the tray, so that its edge does not cut it. */
 function PointerSheet({ at, children }: { at: MenuPlace; children: ReactNode }) {
   const left = Math.max(8, Math.min(at.x + 14, window.innerWidth - SHEET_PX - 8));
   return createPortal(
     <div
       role="tooltip"
       className="pointer-events-none fixed z-40 w-max rounded-3 border border-rule bg-sheet px-2.5 py-1.5 text-caption text-ink shadow-float"
-      style={{ left, top: at.y - 14, maxWidth: SHEET_PX, transform: 'translateY(-100%)' }}
+      style={{ left, top: at.y - 2, maxWidth: SHEET_PX, transform: 'translateY(-100%)' }}
     >
       {children}
     </div>,

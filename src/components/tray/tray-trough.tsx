@@ -1,6 +1,6 @@
 import { useCallback, useMemo } from 'react';
 import { formatMetres } from '#src/lib/format.ts';
-import { tickText } from '../charts/chart-styles.ts';
+import { tickText, type } from '../charts/chart-styles.ts';
 import { isPicked } from '../charts/chart-types.ts';
 import type { PickedRows } from '../charts/chart-types.ts';
 import type { Along, CoreInterval, DepthInterval } from '../charts/core-types.ts';
@@ -77,7 +77,7 @@ export function TrayTrough(props: Props) {
 function TroughLabels({ hole, layout, gradeLabel }: { hole: TrayHole; layout: TroughLayout; gradeLabel: string }) {
   return (
     <g>
-      <text x={20} y={12} style={{ font: '500 12px var(--font-mono)', fill: 'var(--ink)' }}>
+      <text x={20} y={12} style={{ ...type('mono', 500, 12), fill: 'var(--ink)' }}>
         {fitText(hole.name, 62, 12, 'mono')}
       </text>
       <text x={20} y={26} style={tickText}>

@@ -23,7 +23,7 @@ export function WindowButton({ window, fit, onWindow }: Props) {
       <Popover.Trigger asChild>
         <Button size="tiny" icon={MoveHorizontal} className="!bg-transparent">
           <span className="sr-only">Depth window </span>
-          {depthText(window[0])} {MISSING} {depthText(window[1])}{'\u202f'}m
+          {depthText(window[0])} {MISSING} {depthText(window[1])}{'\u00a0'}m
         </Button>
       </Popover.Trigger>
       <Popover.Portal>
