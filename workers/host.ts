@@ -7,7 +7,7 @@ import { extname, join } from 'node:path';
 import { fileURLToPath, pathToFileURL } from 'node:url';
 import { createLanePools, type LanePools } from './host-lanes.ts';
 import {
-  isHostCommand, laneOf,
+  faultOf, isHostCommand, laneOf,
   type HostCommand, type HostMessage, type HostOptions, type Lane, type TaskCall, type TaskFailure, type TaskOutcome,
 } from './task-types.ts';
 
@@ -46,8 +46,7 @@ function failureOf(run: Run, error: unknown, options: HostOptions): TaskFailure 
     const message = 'The thread that did this work ended before the work did.';
     return { kind: 'compute', code: 'thread-ended', message, wasAlone: true, cause };
   }
-  const message = 'The work met a fault of ours; the service has logged it.';
-  return { kind: 'compute', code: 'unexpected', message, wasAlone: true, cause };
+  return faultOf(error);
 }
 
 /** Ends a run's thread; a run that has none yet leaves the queue. */

@@ -1,3 +1,4 @@
+import { inspect } from 'node:util';
 import type { KernelErrorDetail } from '#kernels/kernel-error.ts';
 
 /**
@@ -29,6 +30,7 @@ export type ComputeErrorCode =
   | 'thread-ended'
   | 'host-ended'
   | 'no-such-task'
+  | 'disk-full'
   | 'unexpected'
   | 'closed';
 
@@ -51,6 +53,15 @@ export type TaskFailure =
   | { kind: 'kernel'; code: string; message: string; detail: KernelErrorDetail }
   | { kind: 'cancelled' }
   | { kind: 'compute'; code: ComputeErrorCode; message: string; wasAlone: boolean; cause: string };
+
+/** A fault that no kernel named, with its inside for the log. */
+export function faultOf(error: unknown): TaskFailure {
+  const cause = error instanceof Error ? (error.stack ?? error.message) : inspect(error);
+  const isDiskFull = error instanceof Error && 'code' in error && (error.code === 'SQLITE_FULL' || error.code === 'ENOSPC');
+  return isDiskFull
+    ? { kind: 'compute', code: 'disk-full', message: 'The disk is full: nothing was kept of this work.', wasAlone: true, cause }
+    : { kind: 'compute', code: 'unexpected', message: 'The work met a fault of ours; the service has logged it.', wasAlone: true, cause };
+}
 
 export type TaskOutcome<Out> = { ok: true; output: Out } | { ok: false; failure: TaskFailure };
 

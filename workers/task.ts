@@ -2,7 +2,7 @@ import { parentPort, threadId } from 'node:worker_threads';
 import { KernelError } from '#kernels/kernel-error.ts';
 import type { ColumnStore } from '#server/db/column-store.ts';
 import { lazyStore } from './store-access.ts';
-import { Cancelled, type HostPaths, type TaskCall, type TaskOutcome, type ThreadMessage } from './task-types.ts';
+import { Cancelled, faultOf, type HostPaths, type TaskCall, type TaskOutcome, type ThreadMessage } from './task-types.ts';
 
 export interface TaskContext extends HostPaths {
   /**
@@ -37,8 +37,8 @@ function reporter(runId: number, cancelFlag: SharedArrayBuffer): TaskContext['re
 }
 
 /**
- * Makes a task of a function: the default export of `workers/tasks/<name>.ts`. A kernel's refusal and
- * a cancellation go back as data; anything else thrown is a fault and rejects.
+ * Makes a task of a function: the default export of `workers/tasks/<name>.ts`. What it throws, a
+ * kernel's refusal, a cancellation or a fault, goes back as data: not every error survives the copy.
  *
  * Cancel: `report` reads a flag in shared memory and throws `Cancelled`; a thread that never reports
  * is ended.
@@ -53,7 +53,7 @@ export function defineTask<In, Out>(body: TaskBody<In, Out>): Task<In, Out> {
       return { ok: true, output };
     } catch (error) {
       if (error instanceof Cancelled) return { ok: false, failure: { kind: 'cancelled' } };
-      if (!(error instanceof KernelError)) throw error;
+      if (!(error instanceof KernelError)) return { ok: false, failure: faultOf(error) };
       const { code, message, detail } = error;
       return { ok: false, failure: { kind: 'kernel', code, message, detail } };
     } finally {

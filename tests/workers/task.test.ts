@@ -26,7 +26,7 @@ describe('defineTask', () => {
     expect(await later(callOf(4))).toEqual({ ok: true, output: 12 });
   });
 
-  it('gives a refusal back as data, and throws a fault', async () => {
+  it('gives back as data a refusal, a fault and a full disk', async () => {
     const refuse = defineTask<null, never>(() => {
       throw new KernelError('shape', 'expected 3 values, found 2', { expected: 3, found: 2 });
     });
@@ -35,7 +35,17 @@ describe('defineTask', () => {
     const fault = defineTask<null, never>(() => {
       throw new TypeError('ours');
     });
-    await expect(fault(callOf(null))).rejects.toThrow('ours');
+    const unexpected = { kind: 'compute', code: 'unexpected', cause: expect.stringContaining('TypeError: ours') };
+    expect(await fault(callOf(null))).toMatchObject({ ok: false, failure: unexpected });
+    const full = defineTask<null, never>(() => {
+      throw Object.assign(new Error('database or disk is full'), { code: 'SQLITE_FULL' });
+    });
+    expect(await full(callOf(null))).toMatchObject({ ok: false, failure: { kind: 'compute', code: 'disk-full' } });
+  });
+
+  it('keeps the inside of a fault of the database for the log', async () => {
+    const broken = defineTask<null, unknown>((_input, { store }) => store().db.prepare('SELECT 1 FROM nowhere').get());
+    expect(await broken(callOf(null))).toMatchObject({ ok: false, failure: { cause: expect.stringContaining('no such table: nowhere') } });
   });
 
   it('stops at the first report after the flag was set', async () => {

@@ -64,7 +64,10 @@ export function createRunner({ db, compute, clock, log }: RunnerDeps): Runner {
 
   async function fail(live: LiveJob, kind: RunnableKind, job: StoredJob & { tries: number }, error: unknown): Promise<boolean> {
     const end = endingOf(error, live.stopReason, job.tries, kind.timeLimitMs);
-    if (end.isFault) log.error({ event: 'job.fault', jobId: job.id, kind: job.kind, err: error }, 'a job met a fault');
+    if (end.isFault) {
+      const cause = error instanceof Error ? error.cause : undefined;
+      log.error({ event: 'job.fault', jobId: job.id, kind: job.kind, err: error, cause }, 'a job met a fault');
+    }
     const { progress, phase } = live.view();
     const isEnded = end.state !== 'interrupted';
     await write((jobs) =>
