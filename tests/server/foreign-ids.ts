@@ -51,12 +51,6 @@ export const BODIES_FOR_FOREIGN_IDS: Readonly<Record<string, object>> = {
   },
 };
 
-/** Endpoints that ask for loaded data before they look at the id: alike for every id, with this status. */
-export const REFUSED_BEFORE_THE_ID: Readonly<Record<string, number>> = {
-  updateSuite: 409,
-  updateDomain: 409,
-};
-
 interface Column {
   name: string;
   type: string;

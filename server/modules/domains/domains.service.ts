@@ -74,6 +74,7 @@ export function createDomains({ db, clock, jobs, record, snapshots }: AnalysisDe
     },
 
     async update(depositId: number, domainId: number, body: DomainBody, expectedVersion: number, actor: Actor): Promise<Domain> {
+      await get(depositId, domainId);
       const grouping = await activeGrouping(depositId);
       await change(depositId, domainId, expectedVersion, async (trx, row) => {
         checkBody(body, grouping, await domainsRepository(trx).standing(depositId), domainId);
