@@ -6,7 +6,7 @@ import { CardPart, Facts, SelectionCard } from '#src/components/layout/selection
 import { ShareBar } from '#src/components/ui/run.tsx';
 import { columnQuery } from '#src/lib/columns.ts';
 import { useCommands } from '#src/lib/commands.ts';
-import { countOf, formatFigures, formatGrade, formatMetres, formatShare } from '#src/lib/format.ts';
+import { countOf, formatFixed, formatGrade, formatMetres, formatShare } from '#src/lib/format.ts';
 import { clearSelection, useSelection, type Selection } from '#src/lib/selection.ts';
 import { useUrlState } from '#src/lib/url-state.ts';
 import { useDeposit } from '#src/lib/use-deposit.ts';
@@ -23,7 +23,7 @@ interface Props {
   children?: ReactNode;
 }
 
-const MOST_HOLES = 4;
+const MOST_HOLES = 3;
 
 /** The selection card of an analysis page: metres, groups, length-weighted means, holes. Esc clears. */
 export function SelectionGround({ layers, snapshot, actions, children }: Props) {
@@ -94,19 +94,20 @@ function Means({ layers, snapshot, selection }: Props & { selection: Selection }
   const { assayTableId } = snapshot;
   const known = new Set(snapshot.analytes.map(({ analyte }) => analyte));
   const isAligned = snapshot.frameTableId === frame.tableId && assayTableId !== null;
-  const shown = isAligned ? deposit.payAnalytes.filter(({ analyte }) => known.has(analyte)).slice(0, 5) : [];
+  const shown = isAligned ? deposit.payAnalytes.filter(({ analyte }) => known.has(analyte)).slice(0, 4) : [];
   const values = useQueries({ queries: shown.map(({ analyte }) => columnQuery(deposit.id, assayTableId ?? 0, analyte)), combine: (results) => results.map(({ data }) => data) });
   const facts = shown.map(({ analyte, unit }, index) => {
     const column = values[index];
     return { term: analyte, value: column === undefined ? '…' : formatGrade(weightedMean(column, frame.weight, selection.rows), unit) };
   });
   const membership = columns === null ? null : weightedMean(columns.membership, frame.weight, selection.rows);
-  if (membership !== null) facts.push({ term: 'Membership', value: formatFigures(membership, 2) });
+  if (membership !== null) facts.push({ term: 'Membership', value: formatFixed(membership, 2) });
   if (facts.length === 0) return null;
   return (
     <CardPart title="Length-weighted means">
-      <Facts facts={facts} />
-      {shown.length > 0 && <p className="text-caption text-ink-3">A value below its limit counts as the limit.</p>}
+      <div title="A value below its limit counts as the limit.">
+        <Facts facts={facts} />
+      </div>
     </CardPart>
   );
 }
