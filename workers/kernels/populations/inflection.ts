@@ -15,7 +15,9 @@ export interface Inflection {
 }
 
 const GRID = 161;
+/** The curve is looked at between these scores, and inside the outermost three rows. */
 const EDGE = 2.2;
+const OUTER = 3;
 
 /**
  * Inflections of the log-probability curve, sharpest first: places where its slope, smoothed over a
@@ -33,15 +35,17 @@ export function proposeInflections(data: MixtureData): Inflection[] {
       `an inflection needs 30 different values, found ${data.y.length}`,
       { n: data.y.length },
     );
-  const step = (2 * EDGE) / (GRID - 1);
-  const scores = Array.from({ length: GRID }, (_, i) => -EDGE + i * step);
+  const edge = Math.min(EDGE, -normalQuantile(OUTER / data.n));
+  const step = (2 * edge) / (GRID - 1);
+  const half = Math.round(0.25 / step);
+  const scores = Array.from({ length: GRID }, (_, i) => -edge + i * step);
   const curve = smoothed(
     scores.map((z) => quantileAt(data, normalCdf(z))),
-    Math.round(0.25 / step),
+    half,
   );
   const slope = smoothed(
-    curve.map((_, i) => ((curve[i + 1] ?? NaN) - (curve[i - 1] ?? NaN)) / (2 * step)),
-    Math.round(0.25 / step),
+    curve.map((_, i) => slopeAt(curve, i) / step),
+    half,
   );
   const found: Inflection[] = [];
   for (let i = 2; i < GRID - 2; i++) {
@@ -69,12 +73,17 @@ function lowestBeside(values: readonly number[], i: number, direction: 1 | -1): 
   return lowest;
 }
 
-/** Running means over 2 half + 1 places; NaN at the ends is left out of the mean. */
+/** Rise per place at place i, over both neighbours where there are two. */
+function slopeAt(values: readonly number[], i: number): number {
+  const [from, to] = [Math.max(0, i - 1), Math.min(values.length - 1, i + 1)];
+  return (values[to]! - values[from]!) / (to - from);
+}
+
+/** Running means over 2 half + 1 places, fewer on both sides alike near the ends: straight lines stay. */
 function smoothed(values: readonly number[], half: number): number[] {
   return values.map((_, i) => {
-    const near = values
-      .slice(Math.max(0, i - half), i + half + 1)
-      .filter((value) => !Number.isNaN(value));
+    const reach = Math.min(half, i, values.length - 1 - i);
+    const near = values.slice(i - reach, i + reach + 1);
     return near.reduce((sum, value) => sum + value, 0) / near.length;
   });
 }

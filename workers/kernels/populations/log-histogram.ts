@@ -1,4 +1,3 @@
-import { weightedQuantiles } from '#kernels/statistics/quantile.ts';
 import type { MixtureData } from './mixture-data.ts';
 
 /** Histogram on the ln scale. */
@@ -23,8 +22,7 @@ export function logHistogram(data: MixtureData): LogHistogram {
   const high = y[y.length - 1]!;
   if (low === high)
     return { edges: Float64Array.of(low - 0.5, low + 0.5), counts: Float64Array.of(weight[0]!) };
-  const [first = low, third = high] = weightedQuantiles(y, weight, [0.25, 0.75]);
-  const width = (2 * (third - first)) / Math.cbrt(data.n);
+  const width = (2 * (valueAt(data, 0.75) - valueAt(data, 0.25))) / Math.cbrt(data.n);
   const bins = width > 0 ? Math.min(MAX_BINS, Math.max(5, Math.ceil((high - low) / width))) : 10;
   const counts = new Float64Array(bins);
   for (let i = 0; i < y.length; i++) {
@@ -34,4 +32,13 @@ export function logHistogram(data: MixtureData): LogHistogram {
     edges: Float64Array.from({ length: bins + 1 }, (_, i) => low + ((high - low) * i) / bins),
     counts,
   };
+}
+
+/** The value at which the running weight first reaches a share of the whole. */
+function valueAt({ y, weight }: MixtureData, share: number): number {
+  const target = share * weight.reduce((sum, w) => sum + w, 0);
+  let running = 0;
+  let i = 0;
+  while (i < y.length - 1 && (running += weight[i]!) < target) i += 1;
+  return y[i]!;
 }

@@ -53,6 +53,7 @@ export function fitLognormalMixtures(
     throw new KernelError('bad-parameter', `expected 1 to 4 populations, found ${maxK}`);
   const fits: LognormalMixture[] = [];
   let smaller: NormalComponent[] | null = null;
+  let accepted: NormalComponent[] | null = null;
   for (let k = 1; k <= maxK; k++) {
     if (data.y.length < Math.max(2, k)) {
       if (k === 1)
@@ -76,9 +77,11 @@ export function fitLognormalMixtures(
       minSd: MIN_LOG_SD,
       minShare: MIN_SHARE,
       smaller,
+      toBetter: accepted,
       seed,
     });
     smaller = fit.components;
+    if (k === 1 || fit.admissible) accepted = fit.components;
     fits.push(described(fit, data));
     onProgress?.(k / maxK);
   }

@@ -64,11 +64,13 @@ const COUNT_WORDS = ['No', 'One', 'Two', 'Three', 'Four'];
 
 /** Whether several populations explain the grades better than one. */
 function mixtureReason(
-  { skewed, truncated, effectiveN }: VerdictInput,
+  { fits, skewed, truncated, effectiveN }: VerdictInput,
   { mixture, gainLognormal, gainBestSingle, bestSingle, mixtureClear }: Evidence,
 ): string {
-  if (!mixture || gainLognormal === null || gainBestSingle === null)
-    return 'One lognormal population: no fit of two passed the guards on width and share.';
+  if (!mixture || gainLognormal === null || gainBestSingle === null) {
+    const why = fits.find((fit) => fit.k === 2)?.note ?? 'too few different values';
+    return `No fit of two populations passed the guards: ${why}.`;
+  }
   if (gainLognormal < VERDICT_RULES.gain) {
     return `One lognormal population is enough: two lower BIC by ${Math.max(0, gainLognormal).toFixed(0)}, less than ${VERDICT_RULES.gain}.`;
   }

@@ -15,6 +15,8 @@ export interface MixtureOptions {
   minShare?: number;
   /** The best fit with one component fewer, whose components are split for starts. */
   smaller?: readonly NormalComponent[] | null;
+  /** An admissible fit with fewer components: one that does not better its likelihood is passed over. */
+  toBetter?: readonly NormalComponent[] | null;
   seed?: number;
   /** Pairs of random starts besides the deterministic ones, default 10. */
   restarts?: number;
@@ -50,8 +52,8 @@ const POLISH = { maxSteps: 90, tolerance: 1e-9 };
 /**
  * Maximum-likelihood mixture of k normal distributions by EM from many starts: all are run briefly
  * on coarse bins, the best few for longer, the likeliest admissible one to rest and at last on all
- * points (fine bins beyond 5,000). When no start is admissible the likeliest is taken and marked.
- * Deterministic in the seed.
+ * points (fine bins beyond 5,000). When none is admissible the likeliest is taken
+ * and marked. Deterministic in the seed.
  *
  * @param data From `mixtureData`; n of BIC is its effective number of rows.
  * @param k Components, 1 to 8.
@@ -80,7 +82,11 @@ export function fitNormalMixture(
   const isAdmissible = (components: readonly NormalComponent[]) =>
     components.every((c) => c.share >= minShare && c.sd > limits.minSd * (1 + 1e-9));
   const warm = warmed(data, k, options, limits);
-  const chosen = likeliest(warm.filter((rest) => isAdmissible(rest.components))) ?? likeliest(warm);
+  const floor = options.toBetter
+    ? logLikelihood(binned(data, WARM.bins), options.toBetter) + 0.01
+    : -Infinity;
+  const admissible = warm.filter((rest) => isAdmissible(rest.components) && rest.logLik > floor);
+  const chosen = likeliest(admissible) ?? likeliest(warm);
   if (!chosen)
     throw new KernelError('not-converged', `no start of ${k} components came to rest`, { k });
   const rest = emToRest(binned(data, REST.bins), chosen.components, limits, REST);

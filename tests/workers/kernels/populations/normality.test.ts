@@ -1,0 +1,113 @@
+import { describe, expect, it } from 'vitest';
+import { readCv } from '#kernels/populations/coefficient-of-variation.ts';
+import { andersonDarling, lilliefors } from '#kernels/populations/normality.ts';
+import { shapiroWilk } from '#kernels/populations/shapiro-wilk.ts';
+import { seededRandom } from '#kernels/random.ts';
+import { expectWithin } from '#tests/support/expect-within.ts';
+import {
+  loadReference,
+  numbersOf,
+  type ReferenceCheck,
+  type ReferenceSet,
+} from '#tests/support/reference.ts';
+
+const valuesOf = (set: ReferenceSet, check: ReferenceCheck) =>
+  check.inputs.transform === 'ln' ? numbersOf(set, check).map(Math.log) : numbersOf(set, check);
+
+describe('reference data', () => {
+  for (const name of ['galaxies', 'geyser', 'jura_prediction', 'meuse'] as const) {
+    const set = loadReference(name);
+    for (const check of set.checksOf('normality')) {
+      it(check.id, () => {
+        const values = valuesOf(set, check);
+        if (check.function === 'shapiro_wilk') {
+          const { statistic, p } = shapiroWilk(values);
+          expectWithin(check, { W: statistic, p: p ?? NaN });
+        } else {
+          const { statistic, p } = andersonDarling(values);
+          expectWithin(check, { A2: statistic, p: p ?? NaN });
+        }
+      });
+    }
+  }
+});
+
+const grades = [1.2, 0.8, 2.1, 3.3, 0.5, 1.9, 2.7, 1.1, 0.9, 4.5];
+
+describe('ten grades (computed; R nortest the same)', () => {
+  it('Anderson-Darling on ln grade and on grade', () => {
+    const found = andersonDarling(grades.map(Math.log));
+    expect(found.statistic).toBeCloseTo(0.161211, 6);
+    expect(found.adjusted).toBeCloseTo(0.176929, 6);
+    expect(found.p).toBeCloseTo(0.9215, 4);
+    expect(andersonDarling(grades).statistic).toBeCloseTo(0.398006, 6);
+    expect(andersonDarling(grades).p).toBeCloseTo(0.2968, 4);
+  });
+
+  it('Lilliefors on ln grade; p .8297 lies beyond its formula', () => {
+    const found = lilliefors(grades.map(Math.log));
+    expect(found.statistic).toBeCloseTo(0.14093, 6);
+    expect(found).toMatchObject({ p: null, text: '> 0.10' });
+  });
+});
+
+it("Lilliefors rejects near 5 % at .886 / sqrt(n) (asymptotic point, D'Agostino & Stephens 1986)", () => {
+  const random = seededRandom(12);
+  let rejected = 0;
+  for (let run = 0; run < 2000; run++) {
+    const { p } = lilliefors(Array.from({ length: 60 }, () => random.normal()));
+    if (p !== null && p <= 0.05) rejected += 1;
+  }
+  expect(rejected / 2000).toBeGreaterThan(0.035);
+  expect(rejected / 2000).toBeLessThan(0.066);
+});
+
+it('says "< 1e-20" where the Anderson-Darling formula turns up again', () => {
+  const random = seededRandom(3);
+  const values = Array.from({ length: 2000 }, () => Math.exp(2 * random.normal()));
+  expect(andersonDarling(values).text).toBe('< 1e-20');
+});
+
+it('shift and scale change no test', () => {
+  const moved = grades.map((g) => 40 + 3 * g);
+  expect(andersonDarling(moved).statistic).toBeCloseTo(andersonDarling(grades).statistic, 10);
+  expect(shapiroWilk(moved).statistic).toBeCloseTo(shapiroWilk(grades).statistic, 10);
+  expect(lilliefors(moved).statistic).toBeCloseTo(lilliefors(grades).statistic, 10);
+});
+
+it('Shapiro-Wilk of three values is exact: evenly spaced W 1, p 1', () => {
+  const { statistic, p } = shapiroWilk([1, 2, 3]);
+  expect(statistic).toBeCloseTo(1, 12);
+  expect(p).toBeCloseTo(1, 6);
+});
+
+it('Shapiro-Wilk of five values lies between 0 and 1 and falls with an outlier', () => {
+  const even = shapiroWilk([1, 2, 3, 4, 5]);
+  const odd = shapiroWilk([1, 2, 3, 4, 500]);
+  expect(even.statistic).toBeGreaterThan(0.95);
+  expect(odd.statistic).toBeLessThan(0.6);
+  expect(odd.p).toBeLessThan(0.01);
+});
+
+it.each([
+  [0.3, 'low'],
+  [0.5, 'moderate'],
+  [1, 'high'],
+  [1.5, 'high'],
+  [2.2, 'very-high'],
+])('CV %d reads %s (common practice)', (cv, level) => {
+  expect(readCv(cv).level).toBe(level);
+});
+
+it.each([
+  ['too-few-rows', () => andersonDarling([1, 2, 3])],
+  ['constant', () => andersonDarling(new Float64Array(20).fill(3))],
+  ['constant', () => shapiroWilk([2, 2, 2, 2])],
+  ['too-few-rows', () => shapiroWilk([1, 2])],
+  ['too-many-rows', () => shapiroWilk(Float64Array.from({ length: 5001 }, (_, i) => i))],
+  ['not-finite', () => shapiroWilk([1, 2, NaN])],
+  ['not-finite', () => lilliefors([1, 2, 3, 4, Infinity])],
+  ['too-few-rows', () => lilliefors([1, 2])],
+])('refuses %s', (code, call) => {
+  expect(call).toThrow(expect.objectContaining({ code }));
+});
