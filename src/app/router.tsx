@@ -98,6 +98,14 @@ const depositRoutes: RouteObject[] = [
     lazy: async () => ({ Component: (await import('./routes/hole.tsx')).HolePage }),
   },
   {
+    path: 'suite',
+    lazy: async () => ({ Component: (await import('./routes/suite.tsx')).SuitePage }),
+  },
+  {
+    path: 'components',
+    lazy: async () => ({ Component: (await import('./routes/components.tsx')).ComponentsPage }),
+  },
+  {
     path: 'groups',
     lazy: async () => ({ Component: (await import('./routes/groups.tsx')).GroupsPage }),
   },

@@ -41,8 +41,8 @@ interface Props {
   stale?: string | null;
   busy?: PlateBusy | false | null;
   height: number | 'fill';
-  /** Beside the tools: what colours the points. */
-  tools?: ReactNode;
+  /** Below the axes in their panel: what colours the points. */
+  colourChoice?: ReactNode;
   className?: string;
 }
 
@@ -62,13 +62,8 @@ export function BiplotPlate(props: Props) {
       title="Biplot"
       stale={props.stale ?? null}
       busy={props.busy ?? null}
-      qualifier={<Axes run={run} view={view} onView={onView} />}
-      tools={
-        <>
-          {props.tools}
-          <ScatterTools tool={view.tool} onTool={(tool) => onView({ tool })} />
-        </>
-      }
+      qualifier={<Axes run={run} view={view} onView={onView} colourChoice={props.colourChoice} />}
+      tools={<ScatterTools tool={view.tool} onTool={(tool) => onView({ tool })} />}
       error={x.error ?? y.error}
       onRetry={() => void Promise.all([x.refetch(), y.refetch()])}
       exports={figureExports(chart.drawn, {
@@ -113,7 +108,7 @@ export function BiplotPlate(props: Props) {
 }
 
 /** Which components are drawn, behind one small button. */
-function Axes({ run, view, onView }: Pick<Props, 'run' | 'view' | 'onView'>) {
+function Axes({ run, view, onView, colourChoice }: Pick<Props, 'run' | 'view' | 'onView' | 'colourChoice'>) {
   const options = Array.from({ length: run.stored }, (_value, i) => ({ value: componentName(i + 1), label: `${componentName(i + 1)}, ${formatShare(run.shares[i] ?? NaN)}: ${shortReading(run, i + 1)}` }));
   const select = (axis: 'x' | 'y', label: string) => <Select label={label} value={view[axis]} options={options} onPick={(value) => onView({ [axis]: value })} />;
   return (
@@ -129,6 +124,7 @@ function Axes({ run, view, onView }: Pick<Props, 'run' | 'view' | 'onView'>) {
       <div className="grid gap-2">
         {select('x', 'Across')}
         {select('y', 'Upwards')}
+        {colourChoice}
       </div>
     </Panel>
   );
