@@ -35,15 +35,20 @@ function columnsFor(chosen: ReadonlySet<string>, toggle: (analyte: string) => vo
   return [
     { header: 'Analyte', rowHeader: true, isControl: true, widthRem: 6, value: ({ analyte }) => analyte, cell: ({ analyte }) => <Checkbox label={analyte} checked={chosen.has(analyte)} onChange={() => toggle(analyte)} /> },
     {
-      header: 'Below detection', widthRem: 10, value: ({ belowShare }) => belowShare,
-      cell: ({ analyte, belowShare }) => <span className="flex items-center gap-2"><span className="w-20"><Run label={`${analyte} below detection`} heightPx={8} parts={[{ share: belowShare, label: 'below detection', fill: 'var(--ink-2)' }]} /></span>{formatShare(belowShare)}</span>,
+      header: 'Below detection', widthRem: 9, value: ({ belowShare }) => belowShare,
+      cell: ({ analyte, belowShare }) => <span className="flex items-center gap-2"><span className="w-14"><Run label={`${analyte} below detection`} heightPx={8} parts={[{ share: belowShare, label: 'below detection', fill: 'var(--ink-2)' }]} /></span>{formatShare(belowShare)}</span>,
     },
     { header: 'Missing', align: 'right', widthRem: 5, value: ({ missingShare }) => missingShare, cell: ({ missingShare }) => formatShare(missingShare) },
     { header: 'Limits', unit: 'ppm', widthRem: 8, value: ({ limitsPpm }) => limitsPpm.map(({ limit }) => limit).join(' '), cell: ({ limitsPpm }) => (limitsPpm.length === 0 ? '–' : limitsPpm.slice(0, 3).map(({ limit }) => formatFigures(limit, 2)).join(', ')) },
     { header: 'Median', unit: 'ppm', align: 'right', widthRem: 6, value: ({ medianPpm }) => medianPpm, cell: ({ medianPpm }) => (medianPpm === null ? '–' : formatFigures(medianPpm, 3)) },
     { header: 'Advice', widthRem: 8, value: ({ decision }) => DECISIONS[decision].word, cell: ({ decision }) => <Chip tone={DECISIONS[decision].tone}>{DECISIONS[decision].word}</Chip> },
-    { header: 'Because', value: ({ reason, caution }) => [reason, caution].filter(Boolean).join('; '), cell: ({ reason, caution }) => <span className="text-caption text-ink-2">{reason}{caution && `; ${caution}`}</span> },
+    { header: 'Because', value: ({ reason, caution }) => [reason, caution].filter(Boolean).join('; '), widthRem: 22, cell: ({ reason, caution }) => <Because text={[reason, caution].filter(Boolean).join('; ')} /> },
   ];
+}
+
+/** The reason on two lines at most; all of it on hover and in the CSV. */
+function Because({ text }: { text: string }) {
+  return <span className="line-clamp-2 text-caption text-ink-2" title={text}>{text}</span>;
 }
 
 /** Analytes of the snapshot with what each can bear, to tick the suite from. */

@@ -59,7 +59,7 @@ function Chooser({ snapshot, suites }: { snapshot: Snapshot; suites: readonly Su
   return (
     <div className="grid gap-3 lg:grid-cols-[minmax(0,1fr)_22rem]">
       <div className="grid min-w-0 content-start gap-3">
-        {supports.length > 1 && <Segmented label="Support" segments={SUPPORTS} value={support} onPick={setSupport} />}
+        {supports.length > 1 && <div className="justify-self-start"><Segmented label="Support" segments={SUPPORTS} value={support} onPick={setSupport} /></div>}
         <AnalytePlate analytes={analytes} chosen={new Set(known)} onChosen={setChosen} snapshotNumber={snapshot.number} />
       </div>
       <div className="grid content-start gap-3">
