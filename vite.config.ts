@@ -17,8 +17,9 @@ export default defineConfig({
           environment: 'node',
           include: ['tests/**/*.test.ts'],
           exclude: ['tests/journeys/**'],
-          testTimeout: 60_000,
-          hookTimeout: 60_000,
+          testTimeout: 180_000,
+          hookTimeout: 180_000,
+          retry: 1,
         },
       },
       {
@@ -28,7 +29,8 @@ export default defineConfig({
           environment: 'jsdom',
           include: ['tests/**/*.test.tsx'],
           setupFiles: ['tests/support/dom-setup.ts'],
-          testTimeout: 30_000,
+          testTimeout: 90_000,
+          retry: 1,
         },
       },
       {
