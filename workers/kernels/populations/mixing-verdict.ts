@@ -31,8 +31,7 @@ export interface Verdict {
  *   population explains nearly as well, or with a smaller side of 3 to 5 %, or half apart.
  * - `single`: neither. `too-few`: under 30 rows.
  *
- * Rows down a hole are not independent, so the evidence is nominal. What it finds and misses on
- * generated truth: `VERDICT_POWER`.
+ * Rows down a hole are not independent, so the evidence is nominal.
  */
 export function mixingVerdict(input: VerdictInput): Verdict {
   if (input.n < VERDICT_RULES.minRows) {
