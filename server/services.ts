@@ -53,7 +53,7 @@ export function createServices(deps: AppDeps) {
   const invitations = createInvitations({ ...deps, record, publicUrl });
   const accept = createAccept({ db, clock, auth, invitations, passwords, sessions, throttle });
   const analysis = createAnalysis(deps, record);
-  const deposits = createDeposits({ db, clock, record, depositSummaries: deps.depositSummaries ?? analysis.overview.summaries });
+  const deposits = createDeposits({ db, clock, record, depositSummaries: deps.depositSummaries ?? ((ids) => analysis.overview.summaries(ids)) });
   const members = createMembers({ db, log, record, invitations });
   const tokens = createTokens({ db, clock, log, record });
   const admin = createAdmin({ db, log, record, sessions, invitations });
