@@ -8,7 +8,7 @@ const STEPS_M = [0.5, 1, 2, 5, 10, 20, 50, 100, 200, 500, 1000];
 /** The window that shows every hole whole, its end on a round number. */
 export function fitWindow(holes: readonly { lengthM: number; originM?: number }[]): DepthWindow {
   if (holes.length === 0) return [0, 100];
-  const low = Math.min(...holes.map(({ originM = 0 }) => -originM));
+  const low = Math.min(...holes.map(({ originM = 0 }) => 0 - originM));
   const high = Math.max(...holes.map(({ lengthM, originM = 0 }) => lengthM - originM));
   const round = high - low > 60 ? 10 : 1;
   return [Math.floor(low / round) * round, Math.ceil((high + (high - low) * 0.012) / round) * round];
@@ -60,7 +60,7 @@ export function labelStep([from, to]: DepthWindow, lengthPx: number): number {
 export function rulerMarks(window: DepthWindow, lengthPx: number): RulerMark[] {
   const step = labelStep(window, lengthPx);
   const marks: RulerMark[] = [];
-  const first = Math.ceil((window[0] / step) * 5 - 1e-9);
+  const first = Math.ceil((window[0] / step) * 5 - 1e-9) + 0; // no minus zero
   const last = Math.floor((window[1] / step) * 5 + 1e-9);
   for (let i = first; i <= last; i++) {
     const depthM = (i * step) / 5;

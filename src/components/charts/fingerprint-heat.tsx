@@ -25,8 +25,8 @@ const LEGEND_PX = 24;
 
 /** Step 1 to 9 of the diverging scale; 5 holds the centre, 1 and 9 lie beyond `reach`. */
 export function divergingStep(value: number, reach: number): number {
-  const step = Math.round((value / reach) * 3.5) + 5;
-  return Math.min(STEPS, Math.max(1, step));
+  const away = Math.min(4, Math.round((Math.abs(value) / reach) * 3.5));
+  return 5 + Math.sign(value) * away;
 }
 
 /** The sign written in a cell of the outer two steps at either end. */

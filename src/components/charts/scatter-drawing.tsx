@@ -1,12 +1,10 @@
 import { useId } from 'react';
 import { XAxis, YAxis, ZeroLine } from './axes.tsx';
 import { axisTitle } from './chart-styles.ts';
-import type { ScaleKind } from './chart-types.ts';
 import { contourPath } from './scatter-density.ts';
-import { fromShare, toShare } from './scatter-points.ts';
+import { toShare } from './scatter-points.ts';
 import { rayFactor, Rays } from './scatter-rays.tsx';
 import type { Ray } from './scatter-rays.tsx';
-import { axisTicks } from './ticks.ts';
 import type { ScatterState } from './use-scatter.ts';
 
 interface Props {
@@ -27,16 +25,14 @@ export function ScatterDrawing({ state, xLabel, yLabel, rays = [], outline }: Pr
     x: (value: number) => view.x(toShare(value, xKind, points.xDomain)),
     y: (value: number) => view.y(toShare(value, yKind, points.yDomain)),
   };
-  const xSpan = span(xKind, points.xDomain, view.u(area.left), view.u(area.left + area.width));
-  const ySpan = span(yKind, points.yDomain, view.v(area.top + area.height), view.v(area.top));
   const hoverAt = hovered === null ? null : state.placeOf(hovered);
   return (
     <g>
       <clipPath id={clip}>
         <rect x={area.left} y={area.top} width={area.width} height={area.height} />
       </clipPath>
-      <XAxis area={area} ticks={axisTicks(xKind, xSpan, { lengthPx: area.width })} at={at.x} label={xLabel} />
-      <YAxis area={area} ticks={axisTicks(yKind, ySpan, { lengthPx: area.height, vertical: true })} at={at.y} label={yLabel} />
+      <XAxis area={area} ticks={state.xTicks} at={at.x} grid={false} label={xLabel} />
+      <YAxis area={area} ticks={state.yTicks} at={at.y} grid={false} label={yLabel} />
       {xKind === 'linear' && <ZeroLine area={area} at={at.x(0)} along="x" />}
       {yKind === 'linear' && <ZeroLine area={area} at={at.y(0)} along="y" />}
       <g clipPath={`url(#${clip})`}>
@@ -73,8 +69,4 @@ export function ScatterDrawing({ state, xLabel, yLabel, rays = [], outline }: Pr
       )}
     </g>
   );
-}
-
-function span(kind: ScaleKind, domain: readonly [number, number], from: number, to: number): [number, number] {
-  return [fromShare(from, kind, domain), fromShare(to, kind, domain)];
 }

@@ -5,7 +5,7 @@ import { LegendRow } from './legend-row.tsx';
 import { ScatterCanvas } from './scatter-canvas.tsx';
 import { ScatterDrawing } from './scatter-drawing.tsx';
 import { drawingNote, scatterMarkup } from './scatter-paint.ts';
-import { nearestRow, rowsByRule, rowsInPolygon } from './scatter-points.ts';
+import { nearestRow, rowsByRule, rowsInPolygon, toShare } from './scatter-points.ts';
 import { ScatterRule } from './scatter-rule.tsx';
 import { useScatter } from './use-scatter.ts';
 import type { ScatterProps, ScatterState } from './use-scatter.ts';
@@ -24,14 +24,31 @@ export function Scatter(props: ScatterProps) {
       {...props}
       measured={state.measured}
       usualHeight={340}
-      under={() => <ScatterCanvas points={points} view={view} slots={slots} picked={picked} />}
-      exportUnder={() => scatterMarkup({ points, view, slots }, picked)}
+      under={(box) => (
+        <>
+          {/* the grid lies under the points, so it cannot be part of the drawing above them */}
+          <svg width={box.width} height={box.height} aria-hidden="true" className="absolute inset-0 block">
+            <path d={gridPath(state)} {...GRID} />
+          </svg>
+          <ScatterCanvas points={points} view={view} slots={slots} picked={picked} />
+        </>
+      )}
+      exportUnder={() => `<path d="${gridPath(state)}" stroke="${GRID.stroke}" stroke-width="${GRID.strokeWidth}" opacity="${GRID.opacity}"/>${scatterMarkup({ points, view, slots }, picked)}`}
       over={() => <Pointer props={props} state={state} handlers={gesture.handlers} />}
       foot={<Foot props={props} state={state} />}
     >
       {() => <ScatterDrawing state={state} xLabel={props.xLabel} yLabel={props.yLabel} rays={props.rays} outline={gesture.outline} />}
     </ChartFrame>
   );
+}
+
+const GRID = { stroke: 'var(--rule)', strokeWidth: 0.75, opacity: 0.75 };
+
+function gridPath({ view, points, xKind, yKind, xTicks, yTicks }: ScatterState): string {
+  const { left, top, width, height } = view.area;
+  const upright = xTicks.map(({ value }) => `M${view.x(toShare(value, xKind, points.xDomain))} ${top}v${height}`);
+  const level = yTicks.map(({ value }) => `M${left} ${view.y(toShare(value, yKind, points.yDomain))}h${width}`);
+  return [...upright, ...level].join('');
 }
 
 function useGesture({ onSelect }: ScatterProps, state: ScatterState) {

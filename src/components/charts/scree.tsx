@@ -21,6 +21,8 @@ export interface ScreeProps extends ChartBasics {
   keep?: number | null;
   onKeep?: (count: number) => void;
   valueLabel?: string;
+  /** What the shares written on the bars are of; the sum of the eigenvalues given when absent. */
+  total?: number;
 }
 
 const DASHES = ['6 3', '1.5 3', '8 3 1.5 3'];
@@ -45,7 +47,7 @@ function Drawing({ box, props }: { box: Box; props: ScreeProps }) {
   const pitch = area.width / Math.max(1, eigenvalues.length);
   const x = (component: number) => area.left + (component - 0.5) * pitch;
   const y = (value: number) => area.top + area.height * (1 - value / yDomain[1]);
-  const total = eigenvalues.reduce((sum, value) => sum + value, 0);
+  const total = props.total ?? eigenvalues.reduce((sum, value) => sum + value, 0);
   const shares = eigenvalues.map((value) => percent(value / total));
   const sharesFit = pitch > 4 + Math.max(...shares.map((text) => textWidth(text, TICK_PX)));
   const every = Math.max(1, Math.ceil(18 / pitch));

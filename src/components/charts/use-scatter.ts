@@ -4,7 +4,7 @@ import { isPicked } from './chart-types.ts';
 import type { Category, ChartBasics, PickedRows, RowTooltip, ScaleKind, SelectMode } from './chart-types.ts';
 import { densityContours } from './scatter-density.ts';
 import { CONTOURS_FROM, HIDDEN } from './scatter-paint.ts';
-import { projector, scatterPoints, toShare } from './scatter-points.ts';
+import { fromShare, projector, scatterPoints, toShare } from './scatter-points.ts';
 import type { ScatterPoints } from './scatter-points.ts';
 import type { Ray } from './scatter-rays.tsx';
 import type { ScatterTool } from './scatter-tools.tsx';
@@ -106,8 +106,8 @@ export function useScatter(props: ScatterProps) {
   const points = usePoints(props);
   const { hidden, toggle } = useHidden(props);
   const { hovered, hover } = useHovered(props);
-  const yTicks = axisTicks(yKind, points.yDomain, { lengthPx: box.height - 50, vertical: true });
-  const area = plotArea({ ...box, yTicks, xLabel: props.xLabel, yLabel: props.yLabel });
+  const restTicks = axisTicks(yKind, points.yDomain, { lengthPx: box.height - 50, vertical: true });
+  const area = plotArea({ ...box, yTicks: restTicks, xLabel: props.xLabel, yLabel: props.yLabel });
   const zoom = useZoom({ width: area.width, height: area.height, panning: tool === 'pan' });
   const { left, top, width, height } = area;
   const { k, x: shiftX, y: shiftY } = zoom.transform;
@@ -116,6 +116,10 @@ export function useScatter(props: ScatterProps) {
     [left, top, width, height, k, shiftX, shiftY],
   );
   const isShown = useCallback((row: number) => !hidden.has(category?.[row] ?? -1), [category, hidden]);
+  const xSpan = [view.u(left), view.u(left + width)].map((u) => fromShare(u, xKind, points.xDomain));
+  const ySpan = [view.v(top + height), view.v(top)].map((v) => fromShare(v, yKind, points.yDomain));
+  const xTicks = axisTicks(xKind, [xSpan[0] ?? 0, xSpan[1] ?? 1], { lengthPx: width });
+  const yTicks = axisTicks(yKind, [ySpan[0] ?? 0, ySpan[1] ?? 1], { lengthPx: height, vertical: true });
   const slots = useMemo(() => slotsOfPoints(points, category, categories, hidden), [points, category, categories, hidden]);
   const { selected } = props;
   const picked = useMemo(() => pickedPoints(points, selected), [points, selected]);
@@ -126,7 +130,7 @@ export function useScatter(props: ScatterProps) {
     const inPlot = x >= left && x <= left + width && y >= top && y <= top + height;
     return inPlot && isShown(row) ? { x, y } : null;
   };
-  return { measured, points, view, zoom, hidden, toggle, hovered, hover, isShown, slots, picked, contours, placeOf, categories, tool, xKind, yKind };
+  return { measured, points, view, zoom, hidden, toggle, hovered, hover, isShown, slots, picked, xTicks, yTicks, contours, placeOf, categories, tool, xKind, yKind };
 }
 
 export type ScatterState = ReturnType<typeof useScatter>;
