@@ -124,8 +124,8 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
       const input = { path: files.pathOf(stored_name), mapping, rows, collarTableId: collars?.table_id ?? null };
       const preview = await compute.run<PreviewFileInput, PreviewRow[]>('preview-file', input);
       const shown = mapping.columns.filter(({ role }) => role !== 'skip');
-      const columns = shown.map(({ index, role, analyte, unit, header }) => ({
-        index, label: analyte ?? (role === 'note' ? header : role.replaceAll('-', ' ')), unit: role === 'analyte' ? unit : unitOf(role), isNumber: role === 'analyte' || unitOf(role) !== null,
+      const columns = shown.map(({ index, role, analyte, oxide, unit, header }) => ({
+        index, label: oxide ?? analyte ?? (role === 'note' ? header : role.replaceAll('-', ' ')), unit: role === 'analyte' ? unit : unitOf(role), isNumber: role === 'analyte' || unitOf(role) !== null,
       }));
       return { columns, rows: preview };
     },

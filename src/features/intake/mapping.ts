@@ -19,10 +19,10 @@ const BARE = { analyte: null, unit: null, oxide: null, method: null } as const;
 
 /** What stands in the way of reading a file by this mapping; empty when nothing does. */
 export function mappingProblems({ kind, columns }: FileMapping): MappingProblem[] {
-  const missing = REQUIRED_ROLES[kind]
-    .filter((roles) => !columns.some(({ role }) => roles.includes(role)))
-    .map((roles) => ({ index: null, message: `${KIND_NAMES[kind]} need a column for ${roles.map((role) => ROLE_NAMES[role]).join(' or ')}` }));
-  return [...missing, ...columns.flatMap((column) => columnProblem(column, columns) ?? [])];
+  const missing = REQUIRED_ROLES[kind].filter((roles) => !columns.some(({ role }) => roles.includes(role)));
+  const lack = missing.map((roles) => roles.map((role) => role.replaceAll('-', ' ')).join(' or ')).join(', ');
+  const whole = missing.length === 0 ? [] : [{ index: null, message: `${KIND_NAMES[kind]} still need ${missing.length === 1 ? 'a column' : 'columns'} for ${lack}` }];
+  return [...whole, ...columns.flatMap((column) => columnProblem(column, columns) ?? [])];
 }
 
 function columnProblem(column: ColumnMapping, columns: readonly ColumnMapping[]): MappingProblem | null {

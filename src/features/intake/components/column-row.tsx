@@ -60,8 +60,7 @@ export const ColumnRow = memo(function ColumnRow(props: Props) {
       <td className={cell}>{role === 'analyte' ? <UnitField {...props} name={name} /> : <span className="px-1.5 text-ink-3">{unitOfRole(role) ?? '–'}</span>}</td>
       {hasAnalytes(kind) && <td className={cell}>{role === 'analyte' ? <MethodField {...props} name={name} /> : <span className="px-1.5 text-ink-3">–</span>}</td>}
       <td className={cx(cell, 'min-w-28')}>
-        <Chip tone={problem ? 'bad' : tone}>{problem ? 'cannot be read' : word}</Chip>
-        {problem && <ErrorLine message={problem} />}
+        {problem ? <ErrorLine message={problem} /> : <Chip tone={tone}>{word}</Chip>}
         {!problem && reason && <span className="block text-caption text-ink-3">{reason}</span>}
       </td>
     </tr>
@@ -74,11 +73,11 @@ function AnalyteField({ column, name, isFixed, analyteListId, onEdit }: CellProp
   return (
     <CommitField
       label={`${name}: analyte`}
-      className="w-[3.25rem]"
+      className="w-16"
       value={analyteText(column)}
       list={analyteListId}
       isFixed={isFixed}
-      problemOf={(text) => (text === '' || readAnalyteText(text) ? null : 'expected a symbol such as Cu, or an oxide such as Al2O3')}
+      problemOf={(text) => (text === '' || readAnalyteText(text) ? null : 'such as Cu or Al2O3')}
       onCommit={(text) => onEdit(column.index, text === '' ? { analyte: null, oxide: null } : (readAnalyteText(text) ?? {}))}
     />
   );

@@ -72,7 +72,7 @@ export function ColumnsPlate({ upload, draft, fixedBecause, className }: Props) 
             <thead>
               <tr>
                 {HEADERS.filter((header) => header !== METHOD || hasAnalytes(mapping.kind)).map((header) => (
-                  <th key={header} scope="col" className="sticky top-0 z-1 border-b border-rule-firm bg-sheet px-1.5 py-1 text-left text-caption font-semibold text-ink-2">{header}</th>
+                  <th key={header} scope="col" className="sticky top-0 z-1 border-b border-rule-firm bg-sheet px-1.5 py-1 text-left text-caption whitespace-nowrap font-semibold text-ink-2">{header}</th>
                 ))}
               </tr>
             </thead>

@@ -16,16 +16,17 @@ interface Props {
 export function LoadChoice({ upload, current, mode, onPick }: Props) {
   const name = KIND_NAMES[upload.mapping.kind];
   return (
-    <RadioGroup
-      label={`Revision ${current.number} of ${name} is in force: ${countOf(current.rows, 'row')} from ${current.fileName}. This file`}
-      choices={[
-        { value: 'replace', label: 'replaces it', hint: 'the earlier revision is kept and can be used again' },
-        { value: 'add', label: 'is added to it', hint: 'rows that repeat or overlap what is there are set aside on load' },
-      ]}
-      value={mode}
-      onPick={onPick}
-      isInline
-      className="mb-3 rounded-2 border border-rule bg-sheet px-3 py-1.5"
-    />
+    <div className="mb-3 rounded-2 border border-rule bg-sheet px-3 py-1.5">
+      <RadioGroup
+        label={`Revision ${current.number} of ${name} is in force: ${countOf(current.rows, 'row')} from ${current.fileName}. This file`}
+        choices={[
+          { value: 'replace', label: 'replaces it', hint: 'the earlier revision is kept and can be used again' },
+          { value: 'add', label: 'is added to it', hint: 'rows that repeat or overlap what is there are set aside on load' },
+        ]}
+        value={mode}
+        onPick={onPick}
+        isInline
+      />
+    </div>
   );
 }

@@ -1,6 +1,6 @@
 import { Check, ListChecks } from 'lucide-react';
 import { useState } from 'react';
-import { Link, useNavigate } from 'react-router-dom';
+import { useNavigate } from 'react-router-dom';
 import { checkFile, discardUpload, loadFile, saveMapping, type Revision, type Upload } from '#contract/files.ts';
 import { PageHead } from '#src/components/layout/page-head.tsx';
 import { Button, LinkButton } from '#src/components/ui/button.tsx';
@@ -42,7 +42,7 @@ export function MappingPage({ depositId, upload, revisions }: Props) {
     <div className="lg:flex lg:h-full lg:min-h-[40rem] lg:flex-col">
       <PageHead
         title={isLoaded ? `${capital(KIND_NAMES[kind])} from ${upload.fileName}` : `Bring in ${KIND_NAMES[kind]}`}
-        finding={<Finding upload={upload} draft={draft} revisions={revisions} depositId={depositId} />}
+        finding={<Finding upload={upload} draft={draft} revisions={revisions} />}
         chips={isLoaded && <Chip tone="good">loaded</Chip>}
         actions={<Actions depositId={depositId} upload={upload} draft={draft} work={work} mode={current ? mode : 'replace'} />}
       />
@@ -62,7 +62,7 @@ export function MappingPage({ depositId, upload, revisions }: Props) {
 
 const capital = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
 
-function Finding({ upload, draft, revisions, depositId }: { upload: Upload; draft: MappingDraft; revisions: readonly Revision[]; depositId: number }) {
+function Finding({ upload, draft, revisions }: { upload: Upload; draft: MappingDraft; revisions: readonly Revision[] }) {
   const { fileName, rowCount, encoding, state, check, revisionId } = upload;
   const file = <span className="font-mono text-[0.9em] break-all">{fileName}</span>;
   const revision = revisions.find(({ id }) => id === revisionId);
@@ -71,8 +71,7 @@ function Finding({ upload, draft, revisions, depositId }: { upload: Upload; draf
       <>
         {check && `${countOf(check.rowsToLoad, 'row')} of ${formatCount(check.rows)} stand`}
         {revision && ` as revision ${revision.number}, ${revision.isCurrent ? 'in force' : 'not in force now'}`}
-        {check && `; ${formatCount(check.rowsAside)} ${check.rowsAside === 1 ? 'is' : 'are'} set aside and kept. `}
-        <Link to={stagePath(depositId, 'intake')}>Back to all tables</Link>
+        {check && `; ${formatCount(check.rowsAside)} ${check.rowsAside === 1 ? 'is' : 'are'} set aside and kept.`}
       </>
     );
   }

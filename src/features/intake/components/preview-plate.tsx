@@ -1,5 +1,5 @@
 import { useQuery } from '@tanstack/react-query';
-import { memo, type ReactNode } from 'react';
+import { memo, useMemo, type ReactNode } from 'react';
 import type * as z from 'zod';
 import type { PreviewRow, Upload, previewRows } from '#contract/files.ts';
 import { CELL_LOOKS, CellLegend, LookWord, type CellLook } from '#src/components/ui/cell-mark.tsx';
@@ -9,6 +9,7 @@ import { cx } from '#src/lib/cx.ts';
 import { formatCount } from '#src/lib/format.ts';
 import { useSettled } from '#src/lib/use-settled.ts';
 import { previewQuery } from '../api/intake-queries.ts';
+import { mappingProblems } from '../mapping.ts';
 import type { MappingDraft } from '../use-mapping-draft.ts';
 
 interface Props {
@@ -26,9 +27,10 @@ const EXAMPLES = { below: '<2', above: '>1', missing: 'NS', refused: 'x', warned
 export function PreviewPlate({ depositId, upload, draft, collarRevision }: Props) {
   const { mapping, problems } = draft;
   const settled = useSettled(mapping, 350);
+  const isReadable = useMemo(() => mappingProblems(settled).length === 0, [settled]);
   const { data, error, refetch, isFetching } = useQuery({
     ...previewQuery(depositId, upload.id, settled, collarRevision),
-    enabled: problems.length === 0,
+    enabled: problems.length === 0 && isReadable,
   });
   const last = data?.rows.at(-1)?.row;
   const isPale = problems.length > 0 && data !== undefined;

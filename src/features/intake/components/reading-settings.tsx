@@ -51,7 +51,7 @@ function InlineSelect<Value extends string>({ label, ...select }: InlineProps<Va
   return (
     <div className="flex items-center gap-1.5 text-small text-ink-2">
       <span aria-hidden>{label}</span>
-      <Select label={label} isLabelHidden controlSize="tiny" className="w-32" {...select} />
+      <Select label={label} isLabelHidden controlSize="tiny" className="w-[6.25rem]" {...select} />
     </div>
   );
 }
@@ -62,11 +62,11 @@ export function ReadingSettings({ upload, mapping, isFixed, onChange }: Props) {
   const has = (...roles: string[]) => columns.some(({ role }) => roles.includes(role));
   const shared = { disabled: isFixed } as const;
   return (
-    <div className="flex flex-wrap items-center gap-x-4 gap-y-1.5 pb-1.5">
+    <div className="flex flex-wrap items-center gap-x-3 gap-y-1.5 pb-1.5">
       <InlineSelect {...shared} label="This file holds" options={KIND_OPTIONS} value={kind} onPick={(picked) => onChange(withKind(mapping, picked, upload.guess))} />
       {asksForSeparators(upload, mapping) && (
         <>
-          <InlineSelect {...shared} label="Columns are divided by" options={DELIMITERS} value={delimiter} onPick={(picked) => picked !== delimiter && onChange(withDelimiter(mapping, picked))} />
+          <InlineSelect {...shared} label="Divided by" options={DELIMITERS} value={delimiter} onPick={(picked) => picked !== delimiter && onChange(withDelimiter(mapping, picked))} />
           <InlineSelect {...shared} label="Decimal mark" options={DECIMAL_MARKS} value={decimalMark} onPick={(picked) => onChange({ ...mapping, decimalMark: picked })} />
         </>
       )}

@@ -111,7 +111,7 @@ function ProblemList({ depositId, uploadId, only, notes }: ListProps) {
   const pages = Math.max(1, Math.ceil(data.total / PROBLEMS_A_PAGE));
   return (
     <>
-      <div className="min-h-0 flex-1 overflow-auto max-lg:max-h-96">
+      <div role="group" aria-label="Row problems, scrolls" tabIndex={0} className="min-h-0 flex-1 overflow-auto max-lg:max-h-96">
         <Table caption="Row problems" columns={COLUMNS} rows={data.rows} rowKey={(problem, index) => `${problem.row} ${index}`} isDense />
         {only === null && <Notes notes={notes} />}
       </div>

@@ -29,15 +29,15 @@ const asideCell = (depositId: number, { rowsAside, uploadId }: Revision) =>
   rowsAside === 0 ? formatCount(0) : <Link to={`/deposits/${depositId}/intake/${uploadId}`}>{formatCount(rowsAside)}</Link>;
 
 const loadedCell = ({ loadedBy, loadedAt }: Revision) => (
-  <>
+  <span className="whitespace-nowrap">
     {loadedBy.name}, <time dateTime={loadedAt} title={formatInstantFully(loadedAt)}>{formatWhen(loadedAt)}</time>
-  </>
+  </span>
 );
 
 const fileCell = (depositId: number, { fileName, uploadId, mode }: Revision) => (
   <>
-    <Link to={`/deposits/${depositId}/intake/${uploadId}`} className="font-mono text-caption break-all">{fileName}</Link>
-    {mode === 'add' && <span className="text-caption text-ink-3"> added to the table before</span>}
+    <Link to={`/deposits/${depositId}/intake/${uploadId}`} title={fileName} className="inline-block max-w-64 truncate align-bottom font-mono text-caption">{fileName}</Link>
+    {mode === 'add' && <span className="text-caption whitespace-nowrap text-ink-3"> added to the table before</span>}
   </>
 );
 
@@ -58,7 +58,7 @@ const inForceColumns = (depositId: number): Column<TableRow>[] => [
 /** What a kind is for and what a file of it must hold. */
 function NotLoaded({ kind }: { kind: TableKind }) {
   return (
-    <span className="text-ink-3">
+    <span className="block min-w-56 text-ink-3">
       {KIND_PURPOSE[kind]}
       <span className="block text-caption">needs columns for {neededColumns(kind)}</span>
     </span>

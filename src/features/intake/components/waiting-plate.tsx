@@ -66,8 +66,8 @@ function columnsFor(depositId: number, refusal: string | undefined, onDiscard: (
       isSortable: false,
       cell: ({ upload }) => (
         <>
-          <Link to={`/deposits/${depositId}/intake/${upload.id}`} className="font-mono text-caption break-all">{upload.fileName}</Link>
-          <span className="block text-caption font-normal text-ink-3">{upload.uploadedBy.name}, {formatWhen(upload.uploadedAt)}</span>
+          <Link to={`/deposits/${depositId}/intake/${upload.id}`} title={upload.fileName} className="inline-block max-w-56 truncate align-bottom font-mono text-caption">{upload.fileName}</Link>
+          <span className="block text-caption font-normal whitespace-nowrap text-ink-3">{upload.uploadedBy.name}, {formatWhen(upload.uploadedAt)}</span>
         </>
       ),
       value: ({ upload }) => upload.fileName,
