@@ -30,46 +30,79 @@ export function fingerprints(
   const { labelOf, groupOf } = compactLabels(labels);
   if (labelOf.length === 0) throw new KernelError('too-few-rows', 'no row has a label');
   const nParts = clrColumns.length;
-  const values = new Float64Array(labelOf.length * nParts).fill(NaN);
-  const overall = new Float64Array(nParts).fill(NaN);
+  const { rows, ends } = rowsByGroup(labels, groupOf, labelOf.length);
+  const values = new Float64Array(labelOf.length * nParts);
+  const overall = new Float64Array(nParts);
   for (const [part, column] of clrColumns.entries()) {
-    if (column.length !== labels.length)
-      throw new KernelError(
-        'shape',
-        `${column.length} rows of part ${part}, ${labels.length} labels`,
-        { col: part },
-      );
-    const rowsOf: number[][] = labelOf.map(() => []);
-    for (let row = 0; row < column.length; row++) {
-      if (labels[row] === 0 || Number.isNaN(column[row])) continue;
-      if (!Number.isFinite(column[row]))
-        throw new KernelError(
-          'not-finite',
-          `expected a finite clr value, found ${column[row]} in row ${row}, part ${part}`,
-          { row, col: part },
-        );
-      rowsOf[groupOf[labels[row]!]!]!.push(row);
+    checkPart(column, labels, part);
+    overall[part] = medianOf(column, rows, weights);
+    for (let g = 0; g < labelOf.length; g++) {
+      const own = rows.subarray(g === 0 ? 0 : ends[g - 1], ends[g]);
+      values[g * nParts + part] = medianOf(column, own, weights) - overall[part]!;
     }
-    const whole = medianOf(column, rowsOf.flat(), weights);
-    overall[part] = whole;
-    for (const [g, rows] of rowsOf.entries())
-      values[g * nParts + part] = medianOf(column, rows, weights) - whole;
   }
   return { labels: labelOf, values, overall };
 }
 
-function medianOf(column: Float64Array, rows: number[], weights: Float64Array | undefined): number {
-  if (rows.length === 0) return NaN;
-  const picked = Float64Array.from(rows, (row) => column[row]!);
-  if (weights)
-    return (
-      weightedQuantiles(
-        picked,
-        Float64Array.from(rows, (row) => weights[row]!),
-        [0.5],
-      )[0] ?? NaN
+/** Labelled rows, group after group, and where each group ends. */
+function rowsByGroup(
+  labels: Labels,
+  groupOf: Uint16Array,
+  k: number,
+): { rows: Uint32Array; ends: Uint32Array } {
+  const ends = new Uint32Array(k);
+  for (let row = 0; row < labels.length; row++)
+    if (labels[row] !== 0) ends[groupOf[labels[row]!]!]! += 1;
+  const next = new Uint32Array(k);
+  for (let g = 1; g < k; g++) {
+    ends[g]! += ends[g - 1]!;
+    next[g] = ends[g - 1]!;
+  }
+  const rows = new Uint32Array(ends[k - 1]!);
+  for (let row = 0; row < labels.length; row++)
+    if (labels[row] !== 0) rows[next[groupOf[labels[row]!]!]!++] = row;
+  return { rows, ends };
+}
+
+function checkPart(column: Float64Array, labels: Labels, part: number): void {
+  if (column.length !== labels.length)
+    throw new KernelError(
+      'shape',
+      `${column.length} rows of part ${part}, ${labels.length} labels`,
+      { col: part },
     );
-  return middle(picked);
+  for (let row = 0; row < column.length; row++) {
+    if (Math.abs(column[row]!) === Infinity && labels[row] !== 0) {
+      throw new KernelError(
+        'not-finite',
+        `expected a finite clr value, found ${column[row]} in row ${row}, part ${part}`,
+        { row, col: part },
+      );
+    }
+  }
+}
+
+/** Median of a column over some rows, NaN left out; NaN when nothing is left. */
+function medianOf(
+  column: Float64Array,
+  rows: Uint32Array,
+  weights: Float64Array | undefined,
+): number {
+  const picked = new Float64Array(rows.length);
+  const lengths = weights ? new Float64Array(rows.length) : null;
+  let count = 0;
+  for (let i = 0; i < rows.length; i++) {
+    const value = column[rows[i]!]!;
+    if (value !== value) continue;
+    if (lengths && weights) lengths[count] = weights[rows[i]!]!;
+    picked[count++] = value;
+  }
+  if (count === 0) return NaN;
+  if (lengths)
+    return (
+      weightedQuantiles(picked.subarray(0, count), lengths.subarray(0, count), [0.5])[0] ?? NaN
+    );
+  return middle(picked.subarray(0, count));
 }
 
 /** Median by partial ordering around the middle; reorders `values`. */

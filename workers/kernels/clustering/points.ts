@@ -17,7 +17,7 @@ export type OnProgress = (share: number) => void;
 
 /**
  * Packs columns into rows. A row with a missing coordinate (NaN) is left out and counted; an
- * infinite coordinate is refused.
+ * infinite one, or one beyond 1e150, is refused.
  *
  * @param columns p arrays of one length, any one unit per column.
  * @throws {KernelError} `too-few-parts` without columns; `shape` when lengths differ; `not-finite`
@@ -66,34 +66,35 @@ function copyBlock(
   else for (let i = start; i < end; i++) points[i * p + col] = column[i]!;
 }
 
+/** Larger coordinates cannot be squared and summed. */
+const LARGEST = 1e150;
+
 /** Indices of rows without NaN, or null when that is all of them. */
 function completeRows(columns: readonly Float64Array[], nRows: number): Uint32Array | null {
-  if (columns.every(isAllFinite)) return null;
+  if (columns.every(isAllUsable)) return null;
   const rows = new Uint32Array(nRows);
   let count = 0;
   for (let row = 0; row < nRows; row++) {
     let complete = true;
     for (let col = 0; col < columns.length; col++) {
       const value = columns[col]![row]!;
-      if (Math.abs(value) === Infinity) {
+      if (Math.abs(value) > LARGEST) {
         throw new KernelError(
           'not-finite',
-          `expected a finite coordinate, found ${value} in row ${row}, column ${col}`,
+          `expected a coordinate up to ${LARGEST}, found ${value} in row ${row}, column ${col}`,
           { row, col },
         );
       }
-      complete &&= value === value;
+      complete &&= !Number.isNaN(value);
     }
     if (complete) rows[count++] = row;
   }
   return rows.slice(0, count);
 }
 
-/** x - x is 0 for finite x and NaN otherwise. */
-function isAllFinite(column: Float64Array): boolean {
-  let sum = 0;
-  for (let i = 0; i < column.length; i++) sum += column[i]! - column[i]!;
-  return sum === 0;
+function isAllUsable(column: Float64Array): boolean {
+  for (let i = 0; i < column.length; i++) if (!(Math.abs(column[i]!) <= LARGEST)) return false;
+  return true;
 }
 
 /** The packed rows' share of a per-row array (weights, labels), in packed order. */

@@ -8,12 +8,13 @@ export interface Dip {
   modeTo: number;
 }
 
-/** Distinct values with the number of values below each (`below`) and up to it (`upTo`). */
+/** Distinct values (scaled when extreme) with the number of values below each (`below`) and up to it (`upTo`). */
 interface Steps {
   x: Float64Array;
   below: Float64Array;
   upTo: Float64Array;
   n: number;
+  scale: number;
 }
 
 /** Corners of a convex or concave hull as places among the distinct values, ascending. */
@@ -62,22 +63,28 @@ export function dipOfSorted(sorted: Float64Array): Dip {
     );
     ({ from, to } = widest);
   }
-  return { dip: missed / (2 * steps.n), modeFrom: steps.x[from]!, modeTo: steps.x[to]! };
+  return {
+    dip: missed / (2 * steps.n),
+    modeFrom: steps.x[from]! * steps.scale,
+    modeTo: steps.x[to]! * steps.scale,
+  };
 }
 
 function stepsOf(sorted: Float64Array): Steps {
   const n = sorted.length;
+  const largest = Math.max(Math.abs(sorted[0]!), Math.abs(sorted[n - 1]!));
+  const scale = largest > 1e100 || (largest > 0 && largest < 1e-100) ? largest : 1; // products must neither overflow nor vanish
   const x = new Float64Array(n);
   const below = new Float64Array(n);
   const upTo = new Float64Array(n);
   let m = 0;
   for (let i = 0; i < n; m++) {
-    x[m] = sorted[i]!;
+    x[m] = sorted[i]! / scale;
     below[m] = i;
-    while (i < n && sorted[i] === x[m]) i += 1;
+    while (i < n && sorted[i]! / scale === x[m]) i += 1;
     upTo[m] = i;
   }
-  return { x: x.subarray(0, m), below: below.subarray(0, m), upTo: upTo.subarray(0, m), n };
+  return { x: x.subarray(0, m), below: below.subarray(0, m), upTo: upTo.subarray(0, m), n, scale };
 }
 
 /** Lower (`side` 1) or upper (`side` -1) hull of the points (x_j, y_j), j = from..to. */

@@ -6,7 +6,7 @@ import type { ScreenRows } from './screen-rows.ts';
 export interface GradeSummary {
   mean: number;
   median: number;
-  /** Standard deviation over mean; null with a single row. */
+  /** Standard deviation over mean; null with a single row or beyond double range. */
   cv: number | null;
   min: number;
   max: number;
@@ -41,9 +41,10 @@ function summary(values: Float64Array, weights: Float64Array | null): GradeSumma
     values,
     weights ?? new Float64Array(values.length).fill(1),
   );
+  const cv = variance === null ? NaN : Math.sqrt(variance) / mean;
   const asked = [0, 0.5, 1];
   const [min = NaN, median = NaN, max = NaN] = weights
     ? weightedQuantiles(values, weights, asked)
     : quantiles(values, asked);
-  return { mean, median, cv: variance === null ? null : Math.sqrt(variance) / mean, min, max };
+  return { mean, median, cv: Number.isFinite(cv) ? cv : null, min, max };
 }

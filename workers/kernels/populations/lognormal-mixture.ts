@@ -1,5 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
-import { fitNormalMixture, type NormalMixture } from './normal-mixture.ts';
+import { fitNormalMixture, workingData, type NormalMixture } from './normal-mixture.ts';
 import type { NormalComponent } from './mixture-em.ts';
 import type { MixtureData } from './mixture-data.ts';
 
@@ -101,7 +101,7 @@ function described(fit: NormalMixture, data: MixtureData): LognormalMixture {
     normal: components,
     logLik,
     bic,
-    icl: bic + 2 * membershipEntropy(data, components),
+    icl: bic + 2 * membershipEntropy(workingData(data), components),
     accepted,
     note: accepted
       ? converged
@@ -129,7 +129,7 @@ export function membershipEntropy(
   for (let i = 0; i < y.length; i++) {
     for (const [c, { share, mean, sd }] of components.entries())
       logDensity[c] = Math.log(share / sd) - 0.5 * ((y[i]! - mean) / sd) ** 2;
-    const top = Math.max(...logDensity);
+    const top = logDensity.reduce((most, value) => Math.max(most, value), -Infinity);
     let total = 0;
     let weighted = 0;
     for (let c = 0; c < logDensity.length; c++) {

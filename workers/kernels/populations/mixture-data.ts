@@ -90,8 +90,19 @@ function placeOf(x: Float64Array, value: number): number {
  * a few hundred bins or more differ from fits on the points by far less than their standard error.
  */
 export function binned(data: MixtureData, bins: number): MixtureData {
-  const { y, weight } = data;
-  if (y.length <= bins) return data;
+  if (data.y.length <= bins) return data;
+  const known = binnings.get(data) ?? new Map<number, MixtureData>();
+  binnings.set(data, known);
+  const found = known.get(bins) ?? inBins(data, bins);
+  known.set(bins, found);
+  return found;
+}
+
+/** Binnings already made: fits of several k ask for the same ones. */
+const binnings = new WeakMap<MixtureData, Map<number, MixtureData>>();
+
+function inBins(data: MixtureData, bins: number): MixtureData {
+  const { y, weight, binVariance } = data;
   const first = y[0]!;
   const width = (y[y.length - 1]! - first) / bins;
   const sum = new Float64Array(bins);
@@ -100,9 +111,10 @@ export function binned(data: MixtureData, bins: number): MixtureData {
   for (let i = 0; i < y.length; i++) {
     const bin = Math.min(bins - 1, Math.floor((y[i]! - first) / width));
     const offset = y[i]! - first - (bin + 0.5) * width;
+    const own = binVariance ? binVariance[i]! : 0;
     mass[bin]! += weight[i]!;
     sum[bin]! += weight[i]! * offset;
-    squares[bin]! += weight[i]! * offset * offset;
+    squares[bin]! += weight[i]! * (offset * offset + own);
   }
   const filled = [...mass.keys()].filter((bin) => mass[bin]! > 0);
   const meanOffset = (bin: number) => sum[bin]! / mass[bin]!;

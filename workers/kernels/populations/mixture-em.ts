@@ -17,6 +17,8 @@ export interface EmLimits {
   shared: boolean;
 }
 
+/** ln of a density ratio too small to change a sum of doubles. */
+const NEGLIGIBLE = -37;
 const LN_SQRT_2PI = 0.5 * Math.log(2 * Math.PI);
 
 /** Sums of one E step. */
@@ -67,14 +69,21 @@ function measuredSums(
   const logDensity = new Float64Array(k);
   const density = new Float64Array(k);
   for (let i = 0; i < y.length; i++) {
+    let nearest = 0;
     let top = -Infinity;
     for (let c = 0; c < k; c++) {
       const z = (y[i]! - mean[c]!) * precision[c]!;
       logDensity[c] = logScale[c]! - 0.5 * z * z;
-      if (logDensity[c]! > top) top = logDensity[c]!;
+      if (logDensity[c]! > top) {
+        top = logDensity[c]!;
+        nearest = c;
+      }
     }
     let total = 0;
-    for (let c = 0; c < k; c++) total += density[c] = Math.exp(logDensity[c]! - top);
+    for (let c = 0; c < k; c++) {
+      const less = logDensity[c]! - top;
+      total += density[c] = c === nearest ? 1 : less < NEGLIGIBLE ? 0 : Math.exp(less);
+    }
     const w = weight[i]!;
     sums.logLik += w * (top + Math.log(total));
     const own = binVariance ? binVariance[i]! : 0;

@@ -18,7 +18,7 @@ export interface MixtureOptions {
   /** An admissible fit with fewer components: one that does not better its likelihood is passed over. */
   toBetter?: readonly NormalComponent[] | null;
   seed?: number;
-  /** Pairs of random starts besides the deterministic ones, default 10. */
+  /** Pairs of random starts besides the deterministic ones, default 5. */
   restarts?: number;
 }
 
@@ -41,13 +41,12 @@ export interface NormalMixture {
 const BINNED_FROM = 5000;
 const FINE_BINS = 1500;
 /** Every start is tried here ... */
-const HEAT = { bins: 150, maxSteps: 30, tolerance: 1e-5 };
-/** ... the best few go on ... */
-const FINALISTS = 10;
-const WARM = { bins: 400, maxSteps: 120, tolerance: 1e-7 };
+const HEAT = { bins: 120, maxSteps: 30, tolerance: 1e-5 };
+/** ... as many of the best as there are pairs of random starts go on ... */
+const WARM = { bins: 250, maxSteps: 120, tolerance: 1e-7 };
 /** ... and the best of them comes to rest. */
-const REST = { bins: 400, maxSteps: 1500, tolerance: 3e-9 };
-const POLISH = { maxSteps: 90, tolerance: 1e-9 };
+const REST = { bins: 400, maxSteps: 600, tolerance: 3e-9 };
+const POLISH = { maxSteps: 30, tolerance: 1e-9 };
 
 /**
  * Maximum-likelihood mixture of k normal distributions by EM from many starts: all are run briefly
@@ -81,16 +80,16 @@ export function fitNormalMixture(
   const limits: EmLimits = { minSd: options.minSd ?? 1e-3 * sd, shared: variance === 'shared' };
   const isAdmissible = (components: readonly NormalComponent[]) =>
     components.every((c) => c.share >= minShare && c.sd > limits.minSd * (1 + 1e-9));
-  const warm = warmed(data, k, options, limits);
+  const fine = workingData(data);
+  const warm = warmed(fine, k, options, limits);
   const floor = options.toBetter
-    ? logLikelihood(binned(data, WARM.bins), options.toBetter) + 0.01
+    ? logLikelihood(binned(fine, WARM.bins), options.toBetter) + 0.01
     : -Infinity;
   const admissible = warm.filter((rest) => isAdmissible(rest.components) && rest.logLik > floor);
   const chosen = likeliest(admissible) ?? likeliest(warm);
   if (!chosen)
     throw new KernelError('not-converged', `no start of ${k} components came to rest`, { k });
-  const rest = emToRest(binned(data, REST.bins), chosen.components, limits, REST);
-  const fine = data.y.length > BINNED_FROM ? binned(data, FINE_BINS) : data;
+  const rest = emToRest(binned(fine, REST.bins), chosen.components, limits, REST);
   const best = emToRest(fine, rest.components, limits, POLISH);
   const components = [...best.components].sort((a, b) => a.mean - b.mean);
   const logLik = fine === data ? best.logLik : logLikelihood(data, components);
@@ -106,9 +105,14 @@ export function fitNormalMixture(
   };
 }
 
+/** What fits run on: the points themselves up to 5,000 different ones, fine bins beyond. */
+export function workingData(data: MixtureData): MixtureData {
+  return data.y.length > BINNED_FROM ? binned(data, FINE_BINS) : data;
+}
+
 /** Starts run briefly, near copies left out, the likeliest few run on. */
 function warmed(data: MixtureData, k: number, options: MixtureOptions, limits: EmLimits): EmRest[] {
-  const { smaller = null, restarts = 10, seed = 1 } = options;
+  const { smaller = null, restarts = 5, seed = 1 } = options;
   const coarse = binned(data, HEAT.bins);
   const starts = mixtureStarts(coarse, k, smaller, restarts, seededRandom(seed + k));
   const heats = starts
@@ -116,7 +120,7 @@ function warmed(data: MixtureData, k: number, options: MixtureOptions, limits: E
     .sort((a, b) => b.logLik - a.logLik);
   const kept: EmRest[] = [];
   for (const heat of heats) {
-    if (kept.length >= FINALISTS) break;
+    if (kept.length >= restarts) break;
     if (!kept.some((other) => isCopy(other, heat))) kept.push(heat);
   }
   const middle = binned(data, WARM.bins);

@@ -87,6 +87,11 @@ function standardised(values: ArrayLike<number>, atLeast: number): Float64Array 
     throw new KernelError('constant', `expected values that vary, all are ${sorted[0]}`);
   const mean = sorted.reduce((sum, value) => sum + value / n, 0);
   const sd = Math.sqrt(sorted.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (n - 1));
+  if (!(sd > 0 && sd < Infinity))
+    throw new KernelError(
+      'not-finite',
+      `expected values whose spread can be computed, found ${sorted[0]} to ${sorted[n - 1]}`,
+    );
   return sorted.map((value) => (value - mean) / sd);
 }
 

@@ -33,7 +33,12 @@ export function shapiroWilk(values: ArrayLike<number>): NormalityTest {
     along += weights[i]! * (sorted[i]! - mean);
     squares += (sorted[i]! - mean) ** 2;
   }
-  const statistic = Math.min(1, along ** 2 / squares);
+  if (!(squares > 0 && squares < Infinity))
+    throw new KernelError(
+      'not-finite',
+      `expected values whose spread can be computed, found ${sorted[0]} to ${sorted[n - 1]}`,
+    );
+  const statistic = Math.min(1, (along / squares) * along);
   const p = pValue(statistic, n);
   return { n, statistic, p, text: formatP(p) };
 }

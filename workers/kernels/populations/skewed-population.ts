@@ -1,4 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import { workingData } from './normal-mixture.ts';
 import { emToRest } from './mixture-fit.ts';
 import { binned, spreadOf, type MixtureData } from './mixture-data.ts';
 
@@ -29,7 +30,7 @@ export function fitSkewedPopulation(data: MixtureData): SkewedPopulation {
   const { mean, sd } = spreadOf(data);
   if (!(sd > 0))
     throw new KernelError('too-few-rows', 'expected grades that vary, found one value');
-  const points = binned(data, BINS);
+  const points = binned(workingData(data), BINS);
   const scaled = { y: points.y.map((y) => y - mean), below: points.below.map((y) => y - mean) };
   const at = (power: number) => logLikAt({ ...points, ...scaled }, power);
   const power = maximise(at, POWERS.from, POWERS.to);

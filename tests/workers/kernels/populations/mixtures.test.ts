@@ -33,7 +33,7 @@ function fitFor(set: ReferenceSet, check: ReferenceCheck): NormalMixture {
   const options = {
     variance: shared ? 'shared' : 'own',
     minSd: 0.05 * spreadOf(data).sd,
-    ...(hard && { restarts: 60, seed: 2 }),
+    ...(hard ? { restarts: 60, seed: 2 } : { restarts: 12 }),
   } as const;
   const known = fits.get(key) ?? [];
   for (let k = known.length + 1; k <= (check.inputs.k ?? 0); k++) {

@@ -1,5 +1,10 @@
 import { describe, expect, it } from 'vitest';
-import { readCv } from '#kernels/populations/coefficient-of-variation.ts';
+import {
+  logSdOfCv,
+  lognormalCv,
+  lognormalMean,
+  readCv,
+} from '#kernels/populations/coefficient-of-variation.ts';
 import { andersonDarling, lilliefors } from '#kernels/populations/normality.ts';
 import { shapiroWilk } from '#kernels/populations/shapiro-wilk.ts';
 import { seededRandom } from '#kernels/random.ts';
@@ -97,6 +102,19 @@ it.each([
   [2.2, 'very-high'],
 ])('CV %d reads %s (common practice)', (cv, level) => {
   expect(readCv(cv).level).toBe(level);
+});
+
+it('mean and CV of a lognormal, mu 1, sigma .8; sigma of CV 1, 1.5 and 2 (computed)', () => {
+  expect(lognormalMean(1, 0.8)).toBeCloseTo(3.743421, 6);
+  expect(lognormalCv(0.8)).toBeCloseTo(0.946827, 6);
+  [
+    [1, 0.832555],
+    [1.5, 1.085659],
+    [2, 1.268636],
+  ].forEach(([cv = NaN, sd = NaN]) => {
+    expect(logSdOfCv(cv)).toBeCloseTo(sd, 6);
+    expect(lognormalCv(sd)).toBeCloseTo(cv, 5);
+  });
 });
 
 it.each([
