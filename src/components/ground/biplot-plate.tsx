@@ -55,7 +55,7 @@ export function BiplotPlate(props: Props) {
   const selected = useSelection();
   const hovered = useHoveredRow();
   const rays = useMemo(() => biplotRays(run, componentNumber(view.x), componentNumber(view.y)), [run, view.x, view.y]);
-  const shown = rays.length < run.parts.length ? ` · longest ${rays.length} of ${run.parts.length} rays` : '';
+  const shown = rays.length < run.parts.length ? ` · ${rays.length} of ${run.parts.length} rays` : '';
   const whole = `${caption}${shown}`;
   return (
     <Plate

@@ -5,6 +5,7 @@ import { updateGroup, type Group, type Grouping } from '#contract/groupings.ts';
 import { RockRun } from '#src/components/ground/rock-run.tsx';
 import { assignPatterns, type RockPattern } from '#src/components/charts/rock-patterns.tsx';
 import { Checkbox } from '#src/components/ui/choices.tsx';
+import { EditableName } from '#src/components/ui/editable-name.tsx';
 import type { Column } from '#src/components/ui/table/column.ts';
 import { Table } from '#src/components/ui/table/table.tsx';
 import { domainListQuery } from '#src/lib/analysis-queries.ts';
@@ -13,7 +14,6 @@ import { formatCount, formatFixed, formatMetres, formatShare, MISSING } from '#s
 import { useDepositId, useRefusal } from '#src/lib/use-deposit.ts';
 import { useChangeGroup } from '../api/groups-mutations.ts';
 import { scattered } from '../model.ts';
-import { GroupName } from './group-name.tsx';
 import { SlotPicker } from './slot-picker.tsx';
 
 interface Props {
@@ -47,7 +47,7 @@ export function useGroupColumns(grouping: Grouping, ticked: readonly number[], o
         cell: (group) => (
           <span className="flex min-w-40 items-center gap-1.5">
             <SlotPicker group={group} taken={withoutOwn(taken, group)} refusal={refusal} onSlot={(slot) => mutate({ label: group.label, change: { slot } })} />
-            <GroupName group={group} refusal={refusal} onRename={(name) => mutate({ label: group.label, change: { name } })} />
+            <EditableName name={group.name} refusal={refusal} onRename={(name) => mutate({ label: group.label, change: { name } })} />
           </span>
         ),
       },
