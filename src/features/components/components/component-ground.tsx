@@ -51,7 +51,7 @@ function Plates({ run, busy, onHole, frame }: Props & { frame: Frame }) {
   const caption = [`n = ${countOf(run.nFit + run.nScoredOnly, run.support === 'drill' ? 'interval' : 'sample')}`, 'clr, classical', `snapshot ${run.snapshotNumber}`, colours.note];
   return (
     <>
-      <div className="grid gap-3 lg:min-h-[max(24.5rem,calc(100dvh-var(--tray-now,36px)-9rem))] lg:grid-cols-[minmax(0,10fr)_minmax(0,8fr)_minmax(0,6fr)] lg:grid-rows-2">
+      <div className="grid gap-3 lg:min-h-[max(27rem,calc(100dvh-var(--tray-now,36px)-9rem))] lg:grid-cols-[minmax(0,10fr)_minmax(0,8fr)_minmax(0,6fr)] lg:grid-rows-2">
         <BiplotPlate
           run={run}
           frame={frame}

@@ -3,6 +3,7 @@ import { ChevronsUpDown } from 'lucide-react';
 import { useCallback, type ReactNode } from 'react';
 import type { ComponentRun } from '#contract/components.ts';
 import type { Job } from '#contract/jobs.ts';
+import type { Suite } from '#contract/suites.ts';
 import { PageHead } from '#src/components/layout/page-head.tsx';
 import { Button, LinkButton } from '#src/components/ui/button.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
@@ -39,7 +40,7 @@ export function ComponentsPage({ onHole }: Props) {
   const problem = error ?? suites.error;
   const actions = suites.data !== undefined && (
     <>
-      {run !== null && runs.length > 1 && <RunMenu runs={runs} chosen={run} onChoose={(id) => setView({ run: id }, { push: true })} />}
+      {runs.length > (run === null ? 0 : 1) && <RunMenu runs={runs} chosen={run} onChoose={(id) => setView({ run: id, suite: null }, { push: true })} />}
       <RunPanel key={view.suite} suites={suites.data} run={run} suiteId={view.suite} isBusy={busy !== null} />
     </>
   );
@@ -57,7 +58,7 @@ export function ComponentsPage({ onHole }: Props) {
         <Loading />
       ) : run === null ? (
         <Plate title="Components" busy={busy}>
-          <NoRuns hasSuites={suites.data.length > 0} />
+          <NoRuns hasSuites={suites.data.length > 0} suite={suites.data.find(({ id }) => id === view.suite)} />
         </Plate>
       ) : (
         <ComponentGround key={run.id} run={run} busy={busy} onHole={onHole} />
@@ -66,18 +67,18 @@ export function ComponentsPage({ onHole }: Props) {
   );
 }
 
-function NoRuns({ hasSuites }: { hasSuites: boolean }): ReactNode {
+function NoRuns({ hasSuites, suite }: { hasSuites: boolean; suite: Suite | undefined }): ReactNode {
   const depositId = useDepositId();
-  if (hasSuites) return <Empty>Components show which elements go together and which oppose. Run them on a suite with the button above.</Empty>;
+  if (hasSuites) return <Empty>Components show which elements go together and which oppose. Run them on {suite === undefined ? 'a suite' : `“${suite.name}”`} with the button above.</Empty>;
   return <Empty action={<LinkButton to={stagePath(depositId, 'suite')}>Choose a suite</LinkButton>}>Components are found among the analytes of a suite, and no suite has been chosen yet.</Empty>;
 }
 
-function RunMenu({ runs, chosen, onChoose }: { runs: readonly ComponentRun[]; chosen: ComponentRun; onChoose: (id: number) => void }) {
+function RunMenu({ runs, chosen, onChoose }: { runs: readonly ComponentRun[]; chosen: ComponentRun | null; onChoose: (id: number) => void }) {
   return (
     <Menu
       trigger={
-        <Button icon={ChevronsUpDown} aria-label={`Run on ${chosen.suiteName}. Choose another`}>
-          {chosen.suiteName}
+        <Button icon={ChevronsUpDown} aria-label={chosen === null ? 'Choose a run' : `Run on ${chosen.suiteName}. Choose another`}>
+          {chosen?.suiteName ?? 'Other runs'}
         </Button>
       }
       groups={[
@@ -86,7 +87,7 @@ function RunMenu({ runs, chosen, onChoose }: { runs: readonly ComponentRun[]; ch
           items: runs.map((run) => ({
             label: run.suiteName,
             hint: `${run.parts.length} analytes · snapshot ${run.snapshotNumber}${run.isStale ? ', stale' : ''} · ${formatWhen(run.createdAt)}`,
-            isChosen: run.id === chosen.id,
+            isChosen: run.id === chosen?.id,
             run: () => onChoose(run.id),
           })),
         },

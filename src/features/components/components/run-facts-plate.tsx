@@ -30,6 +30,7 @@ export function RunFactsPlate({ run, stale }: Props) {
             { term: `Values replaced, by ${run.replacementFraction} of their limit`, value: formatShare(run.replacedShare) },
           ]}
         />
+        <p className="text-small text-ink-2">{run.suggestion}</p>
         {run.notes.length > 0 && (
           <ul className="grid list-disc gap-1 pl-4 text-small text-ink-2">
             {run.notes.map((note) => (

@@ -10,7 +10,7 @@ const STOPS = [1, 2, 3, 4, 5, 6];
 /** Six colours of the score with the limits between them. */
 export function ScoreKey({ pc, limits }: Props) {
   return (
-    <div role="img" aria-label={`Colours: six classes of ${pc}, as many rows in each, parted at ${limits.map((limit) => formatFigures(limit, 2)).join(', ')}`} className="flex items-start gap-1.5 pl-10 text-tick text-ink-3">
+    <div role="img" aria-label={`Colours: six classes of ${pc}, as many rows in each, parted at ${limits.map((limit) => formatFigures(limit, 2)).join(', ')}`} className="flex items-start gap-1.5 pb-3 pl-10 text-tick text-ink-3">
       <span className="leading-3">low</span>
       <span className="flex">
         {STOPS.map((stop, index) => (

@@ -10,6 +10,9 @@ interface Props {
   stale: string | null;
 }
 
+/** Later components carry next to nothing; the CSV has them all. */
+const MOST_BARS = 12;
+
 const HELP = {
   text: 'Share of the variance each component carries, against two answers of chance: the broken stick, and the 95th percentile when every analyte is shuffled by itself (parallel analysis). Components above chance are worth keeping.',
   caution: 'The two rules often disagree, and a small component may still carry the ore. Look at its loadings before leaving it out.',
@@ -28,9 +31,14 @@ export function ScreePlate({ run, stale }: Props) {
   return (
     <Plate
       title="Variance"
+      qualifier={run.shares.length > MOST_BARS ? `first ${MOST_BARS} of ${run.shares.length} components` : 'by component'}
       stale={stale}
       help={HELP}
-      caption={<span title={run.suggestion}>{run.suggestion}</span>}
+      caption={
+        <span className="block truncate" title={run.suggestion}>
+          {run.suggestion}
+        </span>
+      }
       exports={figureExports(figure.drawn, { fileName: `${deposit.name}-scree`, caption: `${run.suggestion} Snapshot ${run.snapshotNumber}`, table: () => table })}
       className="max-lg:h-80"
     >
@@ -39,13 +47,14 @@ export function ScreePlate({ run, stale }: Props) {
         title="Variance by component"
         description={run.suggestion}
         table={table}
-        eigenvalues={run.shares}
+        eigenvalues={run.shares.slice(0, MOST_BARS)}
+        total={1}
         thresholds={[
-          { label: 'broken stick', values: run.brokenStick },
-          { label: 'parallel, 95 %', values: run.parallel95 },
+          { label: 'broken stick', values: run.brokenStick.slice(0, MOST_BARS) },
+          { label: 'parallel, 95 %', values: run.parallel95.slice(0, MOST_BARS) },
         ]}
         keep={run.suggested}
-        valueLabel="share of variance"
+        valueLabel="share"
         height="fill"
       />
     </Plate>

@@ -8,11 +8,12 @@ import { Run } from '#src/components/ui/run.tsx';
 import type { Column } from '#src/components/ui/table/column.ts';
 import { Table } from '#src/components/ui/table/table.tsx';
 import { tableExports } from '#src/components/ui/table/table-tools.tsx';
-import { formatCount, formatFigures, formatShare } from '#src/lib/format.ts';
+import { countOf, formatCount, formatFigures, formatShare, MISSING } from '#src/lib/format.ts';
 
 interface Props {
   analytes: readonly AnalyteSummary[];
-  chosen: ReadonlySet<string>;
+  chosen: readonly string[];
+  /** Memoise it. */
   onChosen: (analytes: string[]) => void;
   snapshotNumber: number;
 }
@@ -24,50 +25,87 @@ const DECISIONS = {
 } as const;
 
 const HELP = {
-  text: 'Analytes with few values below detection carry log-ratios best. A value below its limit becomes a share of that limit before the logarithm.',
-  caution: 'Above 30 % below detection the replacement makes a spike that can pass for a group of its own.',
-  source: 'Martín-Fernández, Barceló-Vidal and Pawlowsky-Glahn 2003',
+  text: 'Every analyte of the suite counts alike in a log-ratio, so one that is mostly below detection, missing or badly dissolved adds noise to all. Up to 5 % below detection a simple replacement is adequate; over 50 % only above or below the limit is known.',
+  caution: 'The advice looks at numbers only. Keep an analyte against it where it parts two rocks, and compare with and without.',
+  source: 'Replacement: Martín-Fernández, Barceló-Vidal & Pawlowsky-Glahn 2003. The steps at 5, 30 and 50 % are this project’s own.',
 };
 
 export const recommended = (analytes: readonly AnalyteSummary[]): string[] => analytes.filter(({ decision }) => decision !== 'drop').map(({ analyte }) => analyte);
 
+const reasonsOf = ({ reason, caution }: AnalyteSummary): string => [reason, caution].filter(Boolean).join('; ');
+
 function columnsFor(chosen: ReadonlySet<string>, toggle: (analyte: string) => void): Column<AnalyteSummary>[] {
   return [
-    { header: 'Analyte', rowHeader: true, isControl: true, widthRem: 6, value: ({ analyte }) => analyte, cell: ({ analyte }) => <Checkbox label={analyte} checked={chosen.has(analyte)} onChange={() => toggle(analyte)} /> },
-    {
-      header: 'Below detection', widthRem: 9, value: ({ belowShare }) => belowShare,
-      cell: ({ analyte, belowShare }) => <span className="flex items-center gap-2"><span className="w-14"><Run label={`${analyte} below detection`} heightPx={8} parts={[{ share: belowShare, label: 'below detection', fill: 'var(--ink-2)' }]} /></span>{formatShare(belowShare)}</span>,
-    },
+    { header: 'Take', isControl: true, isSortable: false, widthRem: 3, cell: ({ analyte }) => <Checkbox label={`Take ${analyte}`} isLabelHidden checked={chosen.has(analyte)} onChange={() => toggle(analyte)} /> },
+    { header: 'Analyte', rowHeader: true, widthRem: 5, cell: ({ analyte }) => analyte },
+    { header: 'Advice', widthRem: 7, isWhole: true, value: ({ decision }) => DECISIONS[decision].word, cell: ({ decision }) => <Chip tone={DECISIONS[decision].tone}>{DECISIONS[decision].word}</Chip> },
+    { header: 'Below detection', widthRem: 9, value: ({ belowShare }) => belowShare, cell: (row) => <BelowRun {...row} /> },
     { header: 'Missing', align: 'right', widthRem: 5, value: ({ missingShare }) => missingShare, cell: ({ missingShare }) => formatShare(missingShare) },
-    { header: 'Limits', unit: 'ppm', widthRem: 8, value: ({ limitsPpm }) => limitsPpm.map(({ limit }) => limit).join(' '), cell: ({ limitsPpm }) => (limitsPpm.length === 0 ? '–' : limitsPpm.slice(0, 3).map(({ limit }) => formatFigures(limit, 2)).join(', ')) },
-    { header: 'Median', unit: 'ppm', align: 'right', widthRem: 6, value: ({ medianPpm }) => medianPpm, cell: ({ medianPpm }) => (medianPpm === null ? '–' : formatFigures(medianPpm, 3)) },
-    { header: 'Advice', widthRem: 8, value: ({ decision }) => DECISIONS[decision].word, cell: ({ decision }) => <Chip tone={DECISIONS[decision].tone}>{DECISIONS[decision].word}</Chip> },
-    { header: 'Because', value: ({ reason, caution }) => [reason, caution].filter(Boolean).join('; '), widthRem: 22, cell: ({ reason, caution }) => <Because text={[reason, caution].filter(Boolean).join('; ')} /> },
+    {
+      header: 'Limits',
+      unit: 'ppm',
+      widthRem: 7,
+      value: ({ limitsPpm }) => limitsPpm.map(({ limit }) => limit).join(' '),
+      cell: ({ limitsPpm }) => <span title={limitsPpm.map(({ limit, count }) => `${formatFigures(limit, 2)} ppm in ${countOf(count, 'row')}`).join(', ')}>{limitsPpm.length === 0 ? MISSING : limitsPpm.slice(0, 3).map(({ limit }) => formatFigures(limit, 2)).join(', ')}</span>,
+    },
+    { header: 'Median', unit: 'ppm', align: 'right', widthRem: 5, value: ({ medianPpm }) => medianPpm, cell: ({ medianPpm }) => (medianPpm === null ? MISSING : formatFigures(medianPpm, 3)) },
+    { header: 'Because', isSortable: false, value: reasonsOf, cell: (row) => <Because {...row} /> },
   ];
 }
 
-/** The reason on two lines at most; all of it on hover and in the CSV. */
-function Because({ text }: { text: string }) {
-  return <span className="line-clamp-2 text-caption text-ink-2" title={text}>{text}</span>;
+function BelowRun({ analyte, belowShare }: AnalyteSummary) {
+  return (
+    <span className="flex items-center gap-2">
+      <span className="w-14">
+        <Run label={`${analyte} below detection`} heightPx={8} parts={[{ share: belowShare, label: 'below detection', fill: 'var(--ink-2)' }]} />
+      </span>
+      {formatShare(belowShare)}
+    </span>
+  );
+}
+
+/** The reason on two lines at most, with a mark where the digestion asks for care; all of it on hover and in the CSV. */
+function Because(row: AnalyteSummary) {
+  return (
+    <span className="line-clamp-2 min-w-56 text-caption text-ink-2" title={reasonsOf(row)}>
+      {row.reason}
+      {row.caution !== null && <span className="text-warn">; {row.caution}</span>}
+    </span>
+  );
 }
 
 /** Analytes of the snapshot with what each can bear, to tick the suite from. */
 export function AnalytePlate({ analytes, chosen, onChosen, snapshotNumber }: Props) {
   const columns = useMemo(() => {
-    const toggle = (analyte: string): void => onChosen(chosen.has(analyte) ? [...chosen].filter((other) => other !== analyte) : [...chosen, analyte]);
-    return columnsFor(chosen, toggle);
-  }, [chosen, onChosen]);
+    const taken = new Set(chosen);
+    const toggle = (analyte: string): void => onChosen(analytes.map(({ analyte: name }) => name).filter((name) => (name === analyte ? !taken.has(name) : taken.has(name))));
+    return columnsFor(taken, toggle);
+  }, [analytes, chosen, onChosen]);
   const advised = recommended(analytes);
+  const sure = analytes.filter(({ decision }) => decision === 'keep').map(({ analyte }) => analyte);
+  const tools = (
+    <>
+      <Button size="tiny" onClick={() => onChosen(advised)}>
+        Take the {formatCount(advised.length)} advised
+      </Button>
+      <Button size="tiny" unavailable={sure.length === 0 && 'No analyte is measured without a caution'} onClick={() => onChosen(sure)}>
+        Only the {formatCount(sure.length)} without care
+      </Button>
+      <Button size="tiny" kind="bare" unavailable={chosen.length === 0 && 'None is ticked'} onClick={() => onChosen([])}>
+        Clear
+      </Button>
+    </>
+  );
   return (
     <Plate
       title="Analytes"
-      qualifier={`${formatCount(chosen.size)} of ${formatCount(analytes.length)} chosen`}
+      qualifier={<span aria-live="polite">{`${formatCount(chosen.length)} of ${formatCount(analytes.length)} ticked`}</span>}
       help={HELP}
-      tools={<><Button size="tiny" onClick={() => onChosen(advised)}>Take the {formatCount(advised.length)} advised</Button><Button size="tiny" kind="bare" unavailable={chosen.size === 0 && 'None is chosen'} onClick={() => onChosen([])}>Clear</Button></>}
+      tools={tools}
       exports={tableExports('analytes', columns, analytes)}
-      caption={`Shares of analysed rows · limits as stored, in ppm · snapshot ${snapshotNumber}`}
+      caption={`n = ${countOf(Math.max(0, ...analytes.map(({ n }) => n)), 'row')} at most · shares of all rows · limits and medians in ppm · snapshot ${snapshotNumber}`}
     >
-      <Table caption="Analytes of the snapshot" columns={columns} rows={analytes} rowKey={({ analyte }) => analyte} maxHeightRem={30} />
+      <Table caption="Analytes of the snapshot" columns={columns} rows={analytes} rowKey={({ analyte }) => analyte} rowClass={({ analyte }) => !chosen.includes(analyte) && 'text-ink-3'} className="lg:max-h-[max(24rem,calc(100dvh-14.5rem))]" />
     </Plate>
   );
 }
