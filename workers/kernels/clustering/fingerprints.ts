@@ -38,7 +38,7 @@ export function fingerprints(
     overall[part] = medianOf(column, rows, weights);
     for (let g = 0; g < labelOf.length; g++) {
       const own = rows.subarray(g === 0 ? 0 : ends[g - 1], ends[g]);
-      values[g * nParts + part] = medianOf(column, own, weights) - overall[part]!;
+      values[g * nParts + part] = medianOf(column, own, weights) - overall[part];
     }
   }
   return { labels: labelOf, values, overall };

@@ -53,9 +53,9 @@ export interface KMeansResult {
   notes: string[];
 }
 
-/** Starts are compared after this many iterations on the sample ... */
-const HEAT_ITERATIONS = 1;
-/** ... and at least this many of them go on to rest there, more when the sample is small. */
+/** Starts are compared after one iteration on this many rows of the sample ... */
+const HEAT_ROWS = 3000;
+/** ... and at least this many of them go on to rest on all of it, more when the sample is small. */
 const FINALISTS = 5;
 const FINALIST_ROWS = 50_000;
 /** Passes of single-row exchanges over the sample at most. */
@@ -162,13 +162,12 @@ function sampleOf(
   };
 }
 
-/** Restarts, a few iterations each on the sample, then the best few to rest there. */
+/** Restarts compared on a few rows of the sample, then the best few brought to rest on all of it. */
 function bestSampleCentres(plan: Plan): Float64Array {
   const { packed, k, seed, restarts, maxIterations, minMove, onProgress } = plan;
   const p = packed.p;
   const sample = sampleOf(plan, Math.max(plan.sampleSize, k));
-  const run = (centres: Float64Array, limit: number) =>
-    lloyd({ ...sample, p, centres, maxIterations: limit, minMove });
+  const heatRows = sampleOf(plan, Math.min(plan.sampleSize, Math.max(HEAT_ROWS, 30 * k)));
   const tried: LloydResult[] = [];
   const minMoveSquared = START_LOOSENESS * minMove * minMove;
   for (const start of kMeansStarts({
@@ -179,7 +178,7 @@ function bestSampleCentres(plan: Plan): Float64Array {
     restarts,
     minMoveSquared,
   })) {
-    tried.push(run(start, Math.min(HEAT_ITERATIONS, maxIterations)));
+    tried.push(lloyd({ ...heatRows, p, centres: start, maxIterations: 1, minMove }));
     onProgress((0.4 * tried.length) / restarts);
   }
   const nFinalists = Math.max(FINALISTS, Math.floor(FINALIST_ROWS / (sample.points.length / p)));
@@ -189,7 +188,7 @@ function bestSampleCentres(plan: Plan): Float64Array {
     centres: new Float64Array(0),
   };
   for (const [done, heat] of finalists.entries()) {
-    const rested = heat.converged ? heat : run(heat.centres, maxIterations);
+    const rested = lloyd({ ...sample, p, centres: heat.centres, maxIterations, minMove });
     const gained = exchangeRows({ ...sample, ...rested, p, maxPasses: EXCHANGE_PASSES });
     if (rested.inertia - gained < best.inertia)
       best = { inertia: rested.inertia - gained, centres: rested.centres };

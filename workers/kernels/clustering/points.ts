@@ -36,42 +36,47 @@ export function packPoints(columns: readonly Float64Array[]): PackedPoints {
       );
     }
   }
+  const whole = packAll(columns, nRows);
+  if (whole && nRows > 0) return { points: whole, n: nRows, p, rowOf: null, nDropped: 0 };
   const rowOf = completeRows(columns, nRows);
-  const n = rowOf?.length ?? nRows;
-  if (n === 0)
-    throw new KernelError('too-few-rows', `none of ${nRows} rows is complete in all ${p} columns`, {
-      nRows,
-    });
+  const n = rowOf.length;
+  if (n === 0) throw new KernelError('too-few-rows', `none of ${nRows} rows is complete in all ${p} columns`, { nRows });
   const points = new Float64Array(n * p);
-  for (let start = 0; start < n; start += BLOCK) {
-    const end = Math.min(n, start + BLOCK);
-    for (let col = 0; col < p; col++) copyBlock(columns[col]!, rowOf, points, col, p, start, end);
+  for (const [col, column] of columns.entries()) {
+    for (let i = 0; i < n; i++) points[i * p + col] = column[rowOf[i]!]!;
   }
   return { points, n, p, rowOf, nDropped: nRows - n };
 }
 
 /** Rows packed at a time, so that a block of every column stays in cache. */
 const BLOCK = 2048;
-
-function copyBlock(
-  column: Float64Array,
-  rowOf: Uint32Array | null,
-  points: Float64Array,
-  col: number,
-  p: number,
-  start: number,
-  end: number,
-): void {
-  if (rowOf) for (let i = start; i < end; i++) points[i * p + col] = column[rowOf[i]!]!;
-  else for (let i = start; i < end; i++) points[i * p + col] = column[i]!;
-}
-
 /** Larger coordinates cannot be squared and summed. */
 const LARGEST = 1e150;
 
-/** Indices of rows without NaN, or null when that is all of them. */
-function completeRows(columns: readonly Float64Array[], nRows: number): Uint32Array | null {
-  if (columns.every(isAllUsable)) return null;
+/** All rows packed; null as soon as a coordinate is missing or too large. */
+function packAll(columns: readonly Float64Array[], nRows: number): Float64Array | null {
+  const p = columns.length;
+  const points = new Float64Array(nRows * p);
+  for (let start = 0; start < nRows; start += BLOCK) {
+    const end = Math.min(nRows, start + BLOCK);
+    for (let col = 0; col < p; col++) if (!copyBlock(columns[col]!, points, col, p, start, end)) return null;
+  }
+  return points;
+}
+
+/** Copies part of a column to its places in the rows; false when it holds an unusable value. */
+function copyBlock(column: Float64Array, points: Float64Array, col: number, p: number, start: number, end: number): boolean {
+  let usable = true;
+  for (let i = start, to = start * p + col; i < end; i++, to += p) {
+    const value = column[i]!;
+    points[to] = value;
+    usable &&= Math.abs(value) <= LARGEST;
+  }
+  return usable;
+}
+
+/** Indices of rows without NaN. */
+function completeRows(columns: readonly Float64Array[], nRows: number): Uint32Array {
   const rows = new Uint32Array(nRows);
   let count = 0;
   for (let row = 0; row < nRows; row++) {
@@ -79,22 +84,14 @@ function completeRows(columns: readonly Float64Array[], nRows: number): Uint32Ar
     for (let col = 0; col < columns.length; col++) {
       const value = columns[col]![row]!;
       if (Math.abs(value) > LARGEST) {
-        throw new KernelError(
-          'not-finite',
-          `expected a coordinate up to ${LARGEST}, found ${value} in row ${row}, column ${col}`,
-          { row, col },
-        );
+        const message = `expected a coordinate up to ${LARGEST}, found ${value} in row ${row}, column ${col}`;
+        throw new KernelError('not-finite', message, { row, col });
       }
       complete &&= !Number.isNaN(value);
     }
     if (complete) rows[count++] = row;
   }
   return rows.slice(0, count);
-}
-
-function isAllUsable(column: Float64Array): boolean {
-  for (let i = 0; i < column.length; i++) if (!(Math.abs(column[i]!) <= LARGEST)) return false;
-  return true;
 }
 
 /** The packed rows' share of a per-row array (weights, labels), in packed order. */
