@@ -79,9 +79,9 @@ function CodeFilter({ byCode, only, onPick }: { byCode: FileCheck['byCode']; onl
           onClick={() => onPick(isOnly(entry) ? null : { severity: entry.severity, code: entry.code })}
           className={cx('inline-flex h-6 items-center gap-1.5 rounded-2 border px-1.5 text-caption max-md:h-9', isOnly(entry) ? 'border-ink bg-ink text-paper' : 'border-rule-firm bg-sheet text-ink hover:bg-trough')}
         >
-          {codeWords(entry.code)}
+          {codeWords(entry.code)}{' '}
           <span className={isOnly(entry) ? '' : entry.severity === 'aside' ? 'text-bad' : 'text-warn'}>{formatCount(entry.count)}</span>
-          <span className="sr-only">{SEVERITY_WORDS[entry.severity]}</span>
+          <span className="sr-only"> {SEVERITY_WORDS[entry.severity]}</span>
         </button>
       ))}
     </div>
