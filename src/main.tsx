@@ -9,12 +9,14 @@ import { App } from './app/app.tsx';
 import { makeRouter } from './app/router.tsx';
 import { signInAddress } from './app/safe-return.ts';
 import { makeQueryClient } from './lib/query-client.ts';
+import { isSigningOut } from './lib/session.ts';
 import { followTheme } from './lib/theme.ts';
 
 followTheme();
 
 /** A full load: nothing read in the session that ended stays in memory. */
 const queryClient = makeQueryClient(() => {
+  if (isSigningOut()) return;
   const { pathname, search } = window.location;
   if (pathname !== '/sign-in') window.location.assign(signInAddress(`${pathname}${search}`));
 });

@@ -32,6 +32,10 @@ export function enterSession(queryClient: QueryClient, me: Me): void {
   queryClient.setQueryData(meQuery().queryKey, me);
 }
 
+let isLeaving = false;
+/** A person is signing out: refusals that follow are no reason to ask for the sign-in back here. */
+export const isSigningOut = (): boolean => isLeaving;
+
 /**
  * Signs out. A session that had ended already counts as done.
  *
@@ -43,6 +47,8 @@ export function useSignOut(onDone: () => void) {
       call(signOut, {}).catch((error: unknown) => {
         if (!hasStatus(error, 401)) throw error;
       }),
+    onMutate: () => void (isLeaving = true),
+    onError: () => void (isLeaving = false),
     onSuccess: onDone,
   });
 }

@@ -2,7 +2,7 @@
 export type DepthWindow = readonly [fromM: number, toM: number];
 
 const LEAST_M = 2;
-const LABEL_PITCH_PX = 64;
+const LABEL_PITCH_PX = 100;
 const STEPS_M = [0.5, 1, 2, 5, 10, 20, 50, 100, 200, 500, 1000];
 
 /** The window that shows every hole whole, its end on a round number. */

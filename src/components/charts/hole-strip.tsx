@@ -112,7 +112,7 @@ function Ruler({ props, place, length }: { props: HoleStripProps; place: Laid; l
   const end = RULER_PX[orientation];
   return (
     <g>
-      {rulerMarks([fromM, toM], place.isVertical ? length * 1.6 : length).map(({ depthM, label }) => {
+      {rulerMarks([fromM, toM], place.isVertical ? length * 2.4 : length).map(({ depthM, label }) => {
         const at = place.along(depthM);
         const long = label === null ? 5 : 12;
         if (place.isVertical) {

@@ -35,7 +35,7 @@ export function RockKey({ entries }: { entries: readonly RockKeyEntry[] }) {
   const count = keyRoom(entries.map(({ label }) => label), box.width);
   const rest = entries.length - count;
   return (
-    <div ref={measure} className="flex h-6 min-w-0 flex-1 items-center justify-end gap-2.5 overflow-hidden text-caption text-ink-2">
+    <div ref={measure} className="flex h-6 min-w-16 flex-1 items-center justify-end gap-2.5 overflow-hidden text-caption text-ink-2">
       {entries.slice(0, count).map((entry) => (
         <Entry key={entry.code} entry={entry} />
       ))}
