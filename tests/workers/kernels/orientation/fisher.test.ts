@@ -90,7 +90,7 @@ describe('circle', () => {
 });
 
 describe('reference: published azimuths, summarised in R', () => {
-  const sets = (['islay_azimuths', 'crossbed_azimuths'] as const).map(loadReference);
+  const sets = (['islay_azimuths', 'crossbed_azimuths'] as const).map((name) => loadReference(name));
   const checks = sets.flatMap((set) => set.checksOf('directions').map((check) => ({ set, check })));
 
   it.each(checks)('$check.id', ({ set, check }) => {
