@@ -24,7 +24,7 @@ describe('expectWithin', () => {
     ['close', [1, 2], [1.005, 2], [1.02, 2]],
     ['close', [1, 2], Float64Array.of(1, 2), [1, 2, 3]],
     ['close', { a: 1, b: null }, { a: 1, b: NaN }, { a: 1, b: 0 }],
-    ['close', { a: 1 }, { a: 1 }, { a: 1, b: 2 }],
+    ['close', { a: 1 }, { a: 1, b: 2 }, { b: 1 }],
     [
       'close_up_to_column_sign',
       [

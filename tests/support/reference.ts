@@ -1,4 +1,6 @@
-import { readFileSync } from 'node:fs';
+import { readdirSync, readFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { fileURLToPath } from 'node:url';
 import { parse } from 'csv-parse/sync';
 import * as z from 'zod';
 
@@ -18,6 +20,8 @@ const Filter = z.object({
 const Inputs = z.looseObject({
   column: z.string().optional(),
   columns: z.array(z.string()).optional(),
+  /** Rows are chosen by `filter` only. */
+  rows: z.literal('all').optional(),
   filter: z.array(Filter).optional(),
   transform: z.string().optional(),
   components: z.number().optional(),
@@ -40,8 +44,8 @@ const Tolerance = z.object({
     'partition_ari_at_least',
     'partition_core_points',
   ]),
-  abs: z.number(),
-  rel: z.number(),
+  abs: z.number().default(0),
+  rel: z.number().default(0),
   min_ari: z.number().optional(),
 });
 
@@ -54,7 +58,7 @@ const Check = z.object({
   software: z.string(),
   value: Value,
   tolerance: Tolerance,
-  labels: z.record(z.string(), z.array(z.string())).optional(),
+  labels: z.record(z.string(), z.array(z.union([z.string(), z.number()]))).optional(),
   note: z.string().optional(),
   best_known: z.number().nullish(),
   fragile: z.boolean().optional(),
@@ -62,6 +66,7 @@ const Check = z.object({
 });
 
 const SetFile = z.object({
+  layout: z.literal('reference-values/1'),
   dataset: z.string(),
   data_file: z.string().nullable(),
   source: z.string(),
@@ -74,6 +79,8 @@ export type ReferenceCheck = z.infer<typeof Check>;
 /** A published data set and the values established libraries computed from it. */
 export interface ReferenceSet {
   name: string;
+  /** Path of the JSON file. */
+  file: string;
   source: string;
   /** Rows of the CSV as text, in file order; empty when the set has no data file. */
   rows: Record<string, string>[];
@@ -84,56 +91,65 @@ export interface ReferenceSet {
   checksOf(group: string, functionName?: string): ReferenceCheck[];
 }
 
+/** The sets that come with the project; their sources and layout are in the README there. */
+export const REFERENCE_FOLDER = fileURLToPath(new URL('../fixtures/reference', import.meta.url));
+
 const loaded = new Map<string, ReferenceSet>();
-const folder = new URL('../fixtures/reference/', import.meta.url);
 
-/** Names of all reference sets. */
-export const REFERENCE_SETS = [
-  'jura_prediction',
-  'meuse',
-  'skye_afm',
-  'galaxies',
-  'geyser',
-  'magnetic_remanence',
-  'islay_azimuths',
-  'crossbed_azimuths',
-  'desurvey',
-  'structure_geometry',
-] as const;
+/** Names of all reference sets of a folder: its JSON files. */
+export function referenceNames(folder = REFERENCE_FOLDER): string[] {
+  return readdirSync(folder)
+    .filter((file) => file.endsWith('.json'))
+    .map((file) => file.slice(0, -'.json'.length))
+    .sort();
+}
 
-/** Reads a data set and its checks from tests/fixtures/reference, once per process. */
-export function loadReference(name: (typeof REFERENCE_SETS)[number]): ReferenceSet {
-  const known = loaded.get(name);
+/** Reads a data set of the project and its checks, once per process. */
+export function loadReference(name: string): ReferenceSet {
+  return readReference(REFERENCE_FOLDER, name);
+}
+
+/** Reads a data set of any folder and its checks, once per process. */
+export function readReference(folder: string, name: string): ReferenceSet {
+  const file = join(folder, `${name}.json`);
+  const known = loaded.get(file);
   if (known) return known;
-  const file = SetFile.parse(JSON.parse(readFileSync(new URL(`${name}.json`, folder), 'utf8')));
-  const rows = file.data_file === null ? [] : readRows(file.data_file);
+  const { dataset, source, data_file, checks } = SetFile.parse(
+    JSON.parse(readFileSync(file, 'utf8')),
+  );
   const set: ReferenceSet = {
-    name,
-    source: file.source,
-    rows,
-    checks: file.checks,
+    name: dataset,
+    file,
+    source,
+    rows: data_file === null ? [] : readRows(join(folder, data_file)),
+    checks,
     check: (id) => {
-      const found = file.checks.find((check) => check.id === id);
-      if (!found) throw new Error(`${name} has no check ${id}`);
+      const found = checks.find((check) => check.id === id);
+      if (!found) throw new Error(`${dataset} has no check ${id}`);
       return found;
     },
     checksOf: (group, functionName) => {
-      const found = file.checks.filter(
+      const found = checks.filter(
         (check) => check.group === group && (functionName ?? check.function) === check.function,
       );
       if (found.length === 0)
-        throw new Error(`${name} has no check of ${group} ${functionName ?? ''}`);
+        throw new Error(`${dataset} has no check of ${group} ${functionName ?? ''}`);
       return found;
     },
   };
-  loaded.set(name, set);
+  loaded.set(file, set);
   return set;
+}
+
+/** The set a check was read with; undefined for a check made up by a test. */
+export function ownerOf(check: ReferenceCheck): ReferenceSet | undefined {
+  return [...loaded.values()].find((set) => set.checks.includes(check));
 }
 
 function readRows(file: string): Record<string, string>[] {
   return z
     .array(z.record(z.string(), z.string()))
-    .parse(parse(readFileSync(new URL(file, folder), 'utf8'), { columns: true }));
+    .parse(parse(readFileSync(file, 'utf8'), { columns: true, bom: true }));
 }
 
 /** Every column a check names: `column`, `columns` and keys such as `group_column`. */
@@ -144,9 +160,11 @@ function columnsOf(check: ReferenceCheck): string[] {
   return z.array(z.string()).parse(named);
 }
 
+const isMissing = (cell: string | undefined): boolean => cell === '' || cell === 'NA';
+
 /** Text is compared as text, a number as a number; a missing cell meets no condition. */
 function holds(cell: string | undefined, { op, value }: z.infer<typeof Filter>): boolean {
-  if (cell === undefined || cell === '') return false;
+  if (cell === undefined || isMissing(cell)) return false;
   const found = typeof value === 'number' ? Number(cell) : cell;
   switch (op) {
     case '==':
@@ -170,7 +188,7 @@ export function rowsOf(set: ReferenceSet, check: ReferenceCheck): Record<string,
   return set.rows.filter(
     (row) =>
       (check.inputs.filter ?? []).every((condition) => holds(row[condition.column], condition)) &&
-      needed.every((column) => row[column] !== '' && row[column] !== 'NA'),
+      needed.every((column) => !isMissing(row[column])),
   );
 }
 
@@ -199,4 +217,22 @@ export function textsOf(set: ReferenceSet, check: ReferenceCheck, column: string
 /** The labels a check takes as given, from the check its `labels_from` names. */
 export function givenLabels(set: ReferenceSet, check: ReferenceCheck): number[] {
   return z.array(z.number()).parse(set.check(check.inputs.labels_from ?? '').value);
+}
+
+/** Given labels beside a text column of the same rows; rows without the text are left out. */
+export function labelsBesideTexts(
+  set: ReferenceSet,
+  check: ReferenceCheck,
+  column: string,
+): { labels: number[]; texts: string[] } {
+  const given = givenLabels(set, check);
+  const rows = rowsOf(set, set.check(check.inputs.labels_from ?? ''));
+  if (rows.length !== given.length)
+    throw new Error(`${check.id}: expected ${rows.length} labels, found ${given.length}`);
+  const kept = given.flatMap((label, row) => {
+    const text = rows[row]?.[column];
+    if (text === undefined) throw new Error(`${check.id}: no column ${column}`);
+    return isMissing(text) ? [] : [{ label, text }];
+  });
+  return { labels: kept.map(({ label }) => label), texts: kept.map(({ text }) => text) };
 }
