@@ -1,4 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import { requireFinite } from '#kernels/statistics/require-finite.ts';
 
 /** Fewest and most components a grouping stands on unless a person says otherwise. */
 const FEWEST = 2;
@@ -41,6 +42,22 @@ export function countForShare(shares: ArrayLike<number>, wanted = 0.8): number {
   let [k, sum] = [0, 0];
   while (k < shares.length && sum < wanted - 1e-12) sum += shares[k++]!;
   return k;
+}
+
+/**
+ * Kaiser's count: components that take more than the mean share. For information beside the other
+ * readings; it keeps too many where parts are many, and was meant for correlations.
+ *
+ * @param shares Of the total variance, or eigenvalues, of every component there is.
+ * @throws {KernelError} `not-finite`; `too-few-rows` without shares.
+ * @see Kaiser (1960), The application of electronic computers to factor analysis.
+ */
+export function countAboveMean(shares: ArrayLike<number>): number {
+  requireFinite(shares, 'shares');
+  const all = Array.from(shares);
+  const mean = all.reduce((sum, share) => sum + share, 0) / all.length;
+  // Equal shares are all the mean, to rounding: none stands above it.
+  return all.filter((share) => share > mean * (1 + 1e-12)).length;
 }
 
 /** Three readings of how many components to keep, and the one proposed. */

@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import {
   brokenStick,
   countAbove,
+  countAboveMean,
   countForShare,
   suggestCount,
 } from '#kernels/components/component-count.ts';
@@ -66,6 +67,22 @@ describe('suggestCount', () => {
     const found = suggestCount(new Array<number>(p).fill(1 / p), parallel);
     expect(found.suggested).toBe(suggested);
     expect(found.sentence).toContain(`${suggested} proposed`);
+  });
+});
+
+describe('countAboveMean', () => {
+  it.each([
+    [[2.5, 1.2, 0.8, 0.5], 2],
+    [[0.7, 0.2, 0.1], 1],
+    [[0.1, 0.1, 0.1], 0],
+    [[1], 0],
+  ])('%j: %i above the mean (by hand)', (shares, count) => {
+    expect(countAboveMean(shares)).toBe(count);
+  });
+
+  it('refuses no shares and shares that are none', () => {
+    expect(() => countAboveMean([])).toThrow(expect.objectContaining({ code: 'too-few-rows' }));
+    expect(() => countAboveMean([1, NaN])).toThrow(expect.objectContaining({ code: 'not-finite' }));
   });
 });
 

@@ -310,4 +310,23 @@ describe('biplot', () => {
     };
     expect(product('covariance')).toBeCloseTo(product('form'), 12);
   });
+
+  it('covariance form: rays are as long as the sd of clr, rows have unit variance (identity)', () => {
+    const columns = madeUpColumns(60, 4, 3);
+    const components = fitComponents(columns);
+    const { parts, rowFactors } = biplot(components, 'covariance', 3);
+    const table = Float64Array.from({ length: 240 }, (_, i) => columns[i % 4]![Math.floor(i / 4)]!);
+    const clr = centredLogRatio(table, 4);
+    const varianceOf = (values: readonly number[]) => {
+      const mean = values.reduce((a, b) => a + b, 0) / values.length;
+      return values.reduce((sum, value) => sum + (value - mean) ** 2, 0) / (values.length - 1);
+    };
+    for (let part = 0; part < 4; part++) {
+      const ray = parts.subarray(3 * part, 3 * part + 3).reduce((sum, end) => sum + end * end, 0);
+      expect(ray).toBeCloseTo(varianceOf([...clr].filter((_, i) => i % 4 === part)), 12);
+    }
+    scoreComponents(columns, components, 3).forEach((score, k) =>
+      expect(varianceOf(Array.from(score, (value) => value * rowFactors[k]!))).toBeCloseTo(1, 12),
+    );
+  });
 });
