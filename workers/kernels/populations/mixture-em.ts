@@ -1,3 +1,4 @@
+import { expOfNegative } from '#kernels/exp.ts';
 import { logNormalCdf, normalCdf, normalDensity } from '#kernels/normal.ts';
 import type { MixtureData } from './mixture-data.ts';
 
@@ -17,7 +18,7 @@ export interface EmLimits {
   shared: boolean;
 }
 
-/** ln of a density ratio too small to change a sum of doubles. */
+/** ln of a density ratio too small to change a sum of doubles; kept, it would slow the sums by denormal numbers. */
 const NEGLIGIBLE = -37;
 const LN_SQRT_2PI = 0.5 * Math.log(2 * Math.PI);
 
@@ -52,50 +53,102 @@ export function logLikelihood(data: MixtureData, components: readonly NormalComp
   return sums.logLik;
 }
 
-function measuredSums(
-  { y, weight, binVariance }: MixtureData,
-  components: readonly NormalComponent[],
-): Sums {
+/** Points taken at a time, so that what is known of them stays in cache. */
+const BLOCK = 256;
+/** Room for a block: densities, component after component; per point the largest, then the factor of responsibility. */
+const room = { density: new Float64Array(BLOCK * 8), top: new Float64Array(BLOCK), factor: new Float64Array(BLOCK) };
+
+function measuredSums(data: MixtureData, components: readonly NormalComponent[]): Sums {
   const k = components.length;
-  const mean = Float64Array.from(components, (c) => c.mean);
-  const precision = Float64Array.from(components, (c) => 1 / c.sd);
-  const logScale = Float64Array.from(components, (c) => Math.log(c.share / c.sd) - LN_SQRT_2PI);
+  const { density, top, factor } = room;
   const sums: Sums = {
     mass: new Float64Array(k),
     first: new Float64Array(k),
     second: new Float64Array(k),
     logLik: 0,
   };
-  const logDensity = new Float64Array(k);
-  const density = new Float64Array(k);
-  for (let i = 0; i < y.length; i++) {
-    let nearest = 0;
-    let top = -Infinity;
-    for (let c = 0; c < k; c++) {
-      const z = (y[i]! - mean[c]!) * precision[c]!;
-      logDensity[c] = logScale[c]! - 0.5 * z * z;
-      if (logDensity[c]! > top) {
-        top = logDensity[c]!;
-        nearest = c;
-      }
-    }
-    let total = 0;
-    for (let c = 0; c < k; c++) {
-      const less = logDensity[c]! - top;
-      total += density[c] = c === nearest ? 1 : less < NEGLIGIBLE ? 0 : Math.exp(less);
-    }
-    const w = weight[i]!;
-    sums.logLik += w * (top + Math.log(total));
-    const own = binVariance ? binVariance[i]! : 0;
-    for (let c = 0; c < k; c++) {
-      const share = (w * density[c]!) / total;
-      const d = y[i]! - mean[c]!;
-      sums.mass[c]! += share;
-      sums.first[c]! += share * d;
-      sums.second[c]! += share * (d * d + own);
-    }
+  for (let start = 0; start < data.y.length; start += BLOCK) {
+    const y = data.y.subarray(start, start + BLOCK);
+    const weight = data.weight.subarray(start, start + BLOCK);
+    const own = data.binVariance?.subarray(start, start + BLOCK) ?? null;
+    top.fill(-Infinity);
+    for (let c = 0; c < k; c++) logDensities(y, components[c]!, density.subarray(c * BLOCK), top);
+    factor.fill(0);
+    for (let c = 0; c < k; c++) addDensities(y.length, density.subarray(c * BLOCK), top, factor);
+    sums.logLik += toFactors(weight, top, factor);
+    for (let c = 0; c < k; c++)
+      addMoments(y, own, components[c]!.mean, density.subarray(c * BLOCK), factor, c, sums);
   }
   return sums;
+}
+
+/** ln of share times density of one component, and the largest so far of each point. */
+function logDensities(
+  y: Float64Array,
+  { share, mean, sd }: NormalComponent,
+  density: Float64Array,
+  top: Float64Array,
+): void {
+  const precision = 1 / sd;
+  const scale = Math.log(share / sd) - LN_SQRT_2PI;
+  for (let i = 0; i < y.length; i++) {
+    const z = (y[i]! - mean) * precision;
+    const value = scale - 0.5 * z * z;
+    density[i] = value;
+    if (value > top[i]!) top[i] = value;
+  }
+}
+
+/** Densities of one component relative to the largest, added up in `factor`. */
+function addDensities(
+  count: number,
+  density: Float64Array,
+  top: Float64Array,
+  factor: Float64Array,
+): void {
+  for (let i = 0; i < count; i++) {
+    const less = density[i]! - top[i]!;
+    const relative = less === 0 ? 1 : less < NEGLIGIBLE ? 0 : expOfNegative(less);
+    density[i] = relative;
+    factor[i]! += relative;
+  }
+}
+
+/** Turns sums of densities into factors of responsibility; the log-likelihood of the points. */
+function toFactors(weight: Float64Array, top: Float64Array, factor: Float64Array): number {
+  let logLik = 0;
+  for (let i = 0; i < weight.length; i++) {
+    const w = weight[i]!;
+    logLik += w * (top[i]! + Math.log(factor[i]!));
+    factor[i] = w / factor[i]!;
+  }
+  return logLik;
+}
+
+/** Adds the mass and the moments about the old mean of one component. */
+function addMoments(
+  y: Float64Array,
+  own: Float64Array | null,
+  mean: number,
+  density: Float64Array,
+  factor: Float64Array,
+  c: number,
+  sums: Sums,
+): void {
+  let mass = 0;
+  let first = 0;
+  let second = 0;
+  for (let i = 0; i < y.length; i++) {
+    const share = density[i]! * factor[i]!;
+    const d = y[i]! - mean;
+    mass += share;
+    first += share * d;
+    second += share * d * d;
+  }
+  if (own) for (let i = 0; i < y.length; i++) second += density[i]! * factor[i]! * own[i]!;
+  sums.mass[c]! += mass;
+  sums.first[c]! += first;
+  sums.second[c]! += second;
 }
 
 /** Adds the rows below their limits: moments about each old mean. */

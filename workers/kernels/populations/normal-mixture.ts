@@ -41,9 +41,9 @@ export interface NormalMixture {
 const BINNED_FROM = 5000;
 const FINE_BINS = 1500;
 /** Every start is tried here ... */
-const HEAT = { bins: 120, maxSteps: 30, tolerance: 1e-5 };
+const HEAT = { bins: 80, maxSteps: 15, tolerance: 1e-5 };
 /** ... as many of the best as there are pairs of random starts go on ... */
-const WARM = { bins: 250, maxSteps: 120, tolerance: 1e-7 };
+const WARM = { bins: 200, maxSteps: 90, tolerance: 1e-7 };
 /** ... and the best of them comes to rest. */
 const REST = { bins: 400, maxSteps: 600, tolerance: 3e-9 };
 const POLISH = { maxSteps: 30, tolerance: 1e-9 };
