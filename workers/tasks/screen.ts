@@ -14,7 +14,7 @@ export interface ScreenInput {
   groups: { label: number; name: string; slot: number }[];
 }
 
-export interface ScreenOutput extends Pick<Screen, 'variables' | 'subsets' | 'finding'> {
+export interface ScreenOutput extends Pick<Screen, 'variables' | 'subsets'> {
   cells: CellDetail[];
 }
 
@@ -59,19 +59,5 @@ export default defineTask<ScreenInput, ScreenOutput>((input, { report, store }) 
       cells.push(populationCell({ subsetKey: key, subsetLabel: label, variable, assay, weightsM, mask }));
     });
   });
-  return { variables, subsets: subsets.map(({ key, kind, label, slot, n, metres }) => ({ key, kind, label, slot, n, metres })), cells, finding: findingOf(cells, subsets) };
+  return { variables, subsets: subsets.map(({ key, kind, label, slot, n, metres }) => ({ key, kind, label, slot, n, metres })), cells };
 });
-
-/** Leads with a grade that is mixed in a group, since that is what decides on domains. */
-function findingOf(cells: readonly CellDetail[], subsets: readonly Subset[]): string {
-  const kinds = new Map(subsets.map(({ key, kind }) => [key, kind]));
-  const inGroups = cells.filter(({ subsetKey }) => kinds.get(subsetKey) === 'group');
-  const looked = inGroups.length > 0 ? inGroups : cells;
-  const judged = looked.filter(({ verdict }) => verdict !== 'too-few');
-  if (judged.length === 0) return 'Too few values to judge any population here.';
-  const mixed = judged.filter(({ verdict }) => verdict === 'mixed').sort((a, b) => (b.deltaBic ?? 0) - (a.deltaBic ?? 0));
-  const where = inGroups.length > 0 ? 'groups' : 'subsets';
-  const [first] = mixed;
-  if (!first) return `No grade is mixed in the ${where}: ${judged.filter(({ verdict }) => verdict === 'single').length} of ${judged.length} cells hold one population, the others are suspect.`;
-  return `${first.variable} in ${first.subsetLabel} is more than one population; ${mixed.length} of ${judged.length} cells of the ${where} are mixed.`;
-}

@@ -3,6 +3,7 @@ import { Id } from '#contract/common.ts';
 import { orNotFound } from '#server/lib/errors.ts';
 import type { AnalysisDeps } from '#server/modules/components/components.service.ts';
 import { depositById, storedParts } from '#server/modules/deposits/deposits.repository.ts';
+import { chunksOf } from '#server/modules/jobs/run-parts.ts';
 import type { GroupingsService } from '#server/modules/groupings/groupings.service.ts';
 import { tablesOf } from '#server/modules/snapshots/snapshot-tables.ts';
 import type { EvidenceInput, EvidenceOutput } from '#workers/tasks/evidence.ts';
@@ -28,6 +29,11 @@ export function registerEvidence({ db, clock, jobs, snapshots }: AnalysisDeps, g
         payAnalytes: pay.map(({ analyte }) => analyte).filter((analyte) => known.has(analyte)),
         domains: standing.map(({ id, code, name, groupLabels, version }) => ({ id, code, name, groupLabels, version })), domainIds, snapshotId: snapshot.id,
       };
+    },
+    // A thread per run of domains: what speaks for one does not depend on the evidence of another.
+    parts: {
+      split: (input, count) => chunksOf(input.domainIds, count).map((domainIds) => ({ ...input, domainIds })),
+      join: (outputs) => ({ snapshotId: outputs[0].snapshotId, evidence: outputs.flatMap(({ evidence }) => evidence) }),
     },
     async finish(trx, _job, { snapshotId, evidence }) {
       const repository = evidenceRepository(trx);

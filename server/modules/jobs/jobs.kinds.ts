@@ -2,6 +2,7 @@ import type { Knex } from 'knex';
 import type { Job, JobKind } from '#contract/jobs.ts';
 import type { Compute, RunOptions } from '#workers/client.ts';
 import type { StoredJob } from './jobs.repository.ts';
+import { runParts, type Parts } from './run-parts.ts';
 
 export type JobResult = NonNullable<Job['result']>;
 
@@ -19,6 +20,8 @@ export interface JobKindSpec<In, Out> {
   finish(this: void, trx: Knex.Transaction, job: StoredJob, output: Out): JobResult | Promise<JobResult>;
   /** Asks for work that follows. Runs once the job is done, again after a crash: must bear repeating. */
   after?(this: void, job: StoredJob): Promise<void>;
+  /** Divides the work among the threads; the answer must not depend on how many there are. */
+  parts?: Parts<In, Out>;
   /** Longest the work may take; an hour if left out. */
   timeLimitMs?: number;
 }
@@ -31,6 +34,8 @@ export interface RunnableKind {
 }
 
 const DEFAULT_TIME_LIMIT_MS = 3_600_000;
+/** As many as there are threads for jobs: more would keep other deposits waiting longer. */
+const PARTS_AT_MOST = 2;
 
 export interface JobKinds {
   register<In, Out>(kind: JobKind, spec: JobKindSpec<In, Out>): void;
@@ -39,6 +44,15 @@ export interface JobKinds {
 
 export function createJobKinds(compute: Compute): JobKinds {
   const kinds = new Map<JobKind, RunnableKind>();
+
+  async function outputOf<In, Out>({ task, parts }: JobKindSpec<In, Out>, input: In, options: RunOptions): Promise<Out> {
+    const inputs = parts?.split(input, PARTS_AT_MOST) ?? [];
+    if (!parts || inputs.length < 2) return compute.run<In, Out>(task, input, options);
+    const [first, ...others] = await runParts(inputs, (part, own) => compute.run<In, Out>(task, part, own), options);
+    if (first === undefined) throw new Error(`task ${task} was divided into nothing`);
+    return parts.join([first, ...others]);
+  }
+
   return {
     register<In, Out>(kind: JobKind, spec: JobKindSpec<In, Out>): void {
       if (kinds.has(kind)) throw new Error(`jobs of kind ${kind} are registered twice`);
@@ -46,7 +60,7 @@ export function createJobKinds(compute: Compute): JobKinds {
         timeLimitMs: spec.timeLimitMs ?? DEFAULT_TIME_LIMIT_MS,
         after: spec.after ?? null,
         async run(job, options) {
-          const output = await compute.run<In, Out>(spec.task, await spec.prepare(job), options);
+          const output = await outputOf(spec, await spec.prepare(job), options);
           return async (trx) => spec.finish(trx, job, output);
         },
       });

@@ -6,8 +6,10 @@ import type { Actor } from '#server/lib/actor.ts';
 import { AppError, orNotFound } from '#server/lib/errors.ts';
 import type { AnalysisDeps } from '#server/modules/components/components.service.ts';
 import type { GroupingsService } from '#server/modules/groupings/groupings.service.ts';
+import { chunksOf } from '#server/modules/jobs/run-parts.ts';
 import { tablesOf } from '#server/modules/snapshots/snapshot-tables.ts';
 import type { ScreenInput, ScreenOutput } from '#workers/tasks/screen.ts';
+import { findingOf } from './finding.ts';
 import { screensRepository } from './screens.repository.ts';
 
 const Params = z.strictObject({
@@ -27,7 +29,13 @@ export function createScreens({ db, clock, jobs, record, snapshots }: AnalysisDe
       const groups = grouping?.groups.map(({ label, name, slot }) => ({ label, name, slot })) ?? [];
       return { tables: tablesOf(snapshot), support, variables, subsets, groupingTableId: grouping?.tableId ?? null, groups };
     },
-    async finish(trx, { depositId, params, startedBy }, { cells, ...result }) {
+    // A thread per run of variables: every cell is judged by itself.
+    parts: {
+      split: (input, count) => chunksOf(input.variables, count).map((variables) => ({ ...input, variables })),
+      join: (outputs) => ({ variables: outputs.flatMap(({ variables }) => variables), subsets: outputs[0].subsets, cells: outputs.flatMap(({ cells }) => cells) }),
+    },
+    async finish(trx, { depositId, params, startedBy }, { cells, ...matrix }) {
+      const result = { ...matrix, finding: findingOf(cells, matrix.subsets) };
       const { support, groupingId, snapshotId } = Params.parse(params);
       const id = await screensRepository(trx).insert(
         { deposit_id: depositId, created_by: startedBy.id, created_at: clock().toISOString(), grouping_id: groupingId, snapshot_id: snapshotId, support, result: JSON.stringify({ ...result, cells }) },
