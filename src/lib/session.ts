@@ -23,9 +23,12 @@ export const instanceQuery = () =>
 /** Who is signed in; undefined before it is known and on the pages before sign-in. */
 export const useMe = (): Me | undefined => useQuery({ ...meQuery(), enabled: false }).data;
 
+/** Read before the sign-in and of no person's session; the page of an accepted invitation still shows it. */
+const READ_BY_ANYBODY: readonly unknown[] = ['instance', 'invitations'];
+
 /** Begins a session in the page: nothing of a person before is left. */
 export function enterSession(queryClient: QueryClient, me: Me): void {
-  queryClient.removeQueries({ predicate: ({ queryKey }) => queryKey[0] !== 'instance' });
+  queryClient.removeQueries({ predicate: ({ queryKey }) => !READ_BY_ANYBODY.includes(queryKey[0]) });
   clearSelection();
   forgetEdits();
   setPreferencePerson(me.id);

@@ -14,6 +14,8 @@ export function AcceptPage() {
   const { data: invitation, error } = useQuery({
     queryKey: ['invitations', token],
     queryFn: ({ signal }) => call(getInvitation, { params: { token } }, signal),
+    // Once accepted it can no longer be read, and need not be.
+    staleTime: Infinity,
   });
   return (
     <Door title={invitation?.depositName ? `Join ${invitation.depositName}` : 'An invitation'}>

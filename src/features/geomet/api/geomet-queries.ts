@@ -2,6 +2,7 @@ import { keepPreviousData, queryOptions, useMutation, useQueryClient } from '@ta
 import { getZoneRules, listZoneRuns, listZones, saveZoneRules, startZones, type ZoneRules } from '#contract/geomet.ts';
 import { call } from '#src/lib/api-client.ts';
 import { rememberJob } from '#src/lib/jobs.ts';
+import { notify } from '#src/lib/toasts.ts';
 
 export const ZONE_PAGE = 200;
 
@@ -26,7 +27,7 @@ export const zonesQuery = (depositId: number, runId: number, analyte: string, pa
     staleTime: Infinity,
   });
 
-/** Saves limits on top of the version last read; the runs on older limits turn stale. */
+/** Saves limits on top of the version last read; the runs on older limits turn stale, and the form begins anew on what was saved. */
 export function useSaveRules(depositId: number) {
   const queryClient = useQueryClient();
   return useMutation({
@@ -34,6 +35,7 @@ export function useSaveRules(depositId: number) {
       call(saveZoneRules, { params: { depositId }, body: rules, ifMatch: version }),
     onSuccess: async (saved) => {
       queryClient.setQueryData(rulesQuery(depositId).queryKey, saved);
+      notify('Limits saved');
       await queryClient.invalidateQueries({ queryKey: zoneRunsQuery(depositId).queryKey });
     },
   });

@@ -9,7 +9,6 @@ import { Plate } from '#src/components/ui/plate.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
 import { Select } from '#src/components/ui/select.tsx';
 import { formatWhen } from '#src/lib/format-dates.ts';
-import { notify } from '#src/lib/toasts.ts';
 import { useDeposit, useRefusal } from '#src/lib/use-deposit.ts';
 import { useSaveRules } from '../api/geomet-queries.ts';
 
@@ -39,7 +38,7 @@ export function RulesPlate({ rules, snapshot }: Props) {
   const analytes = (snapshot?.analytes.map(({ analyte }) => analyte) ?? deleteriousAnalytes).map((analyte) => ({ value: analyte, label: analyte }));
   const used = new Set(fields.map(({ analyte }) => analyte));
   const next = [...deleteriousAnalytes, ...analytes.map(({ value }) => value)].find((analyte) => !used.has(analyte));
-  const submit = handleSubmit((body) => save.mutate({ rules: body, version: rules.version }, { onSuccess: () => notify('Limits saved') }));
+  const submit = handleSubmit((body) => save.mutate({ rules: body, version: rules.version }));
   return (
     <Plate title="Limits and run rules" help={HELP} caption={rules.updatedAt ? `set by ${rules.updatedBy ?? 'somebody'}, ${formatWhen(rules.updatedAt)}` : 'no limits set yet'}>
       <form noValidate onSubmit={(event) => void submit(event)} className="grid gap-3">

@@ -2,7 +2,7 @@ import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { createSuite, deleteSuite, updateSuite, type Suite, type SuiteBody } from '#contract/suites.ts';
 import { suitesQuery } from '#src/lib/analysis-queries.ts';
 import { call } from '#src/lib/api-client.ts';
-import { notifyEdit, notifyProblem } from '#src/lib/toasts.ts';
+import { notify, notifyEdit, notifyProblem } from '#src/lib/toasts.ts';
 
 export function useCreateSuite(depositId: number) {
   const queryClient = useQueryClient();
@@ -12,13 +12,17 @@ export function useCreateSuite(depositId: number) {
   });
 }
 
-/** Deletes a suite nothing stands on. */
+/** Deletes a suite nothing stands on. Its row is gone by then, so the notice is given here. */
 export function useDeleteSuite(depositId: number) {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: ({ id, version }: Suite) =>
       call(deleteSuite, { params: { depositId, suiteId: id }, ifMatch: version }),
-    onSuccess: () => queryClient.invalidateQueries({ queryKey: suitesQuery(depositId).queryKey }),
+    onSuccess: (_, { name }) => {
+      notify(`“${name}” deleted`);
+      return queryClient.invalidateQueries({ queryKey: suitesQuery(depositId).queryKey });
+    },
+    onError: notifyProblem,
   });
 }
 

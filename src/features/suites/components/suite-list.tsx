@@ -6,7 +6,6 @@ import { Empty } from '#src/components/ui/empty.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { countOf, formatFigures } from '#src/lib/format.ts';
 import { stagePath } from '#src/lib/stages.ts';
-import { notify, notifyProblem } from '#src/lib/toasts.ts';
 import { useDepositId, useRefusal } from '#src/lib/use-deposit.ts';
 import { useDeleteSuite, useRenameSuite } from '../api/suites-mutations.ts';
 
@@ -47,7 +46,7 @@ function SuiteEntry({ suite }: { suite: Suite }) {
           icon={Trash2}
           unavailable={deleteRefusal ?? standing}
           isBusy={remove.isPending}
-          onClick={() => remove.mutate(suite, { onSuccess: () => notify(`“${suite.name}” deleted`), onError: notifyProblem })}
+          onClick={() => remove.mutate(suite)}
         >
           Delete
         </Button>
