@@ -12,6 +12,7 @@ import { MIXTURE_1D } from './functions/mixture-1d.ts';
 import { NORMALITY } from './functions/normality.ts';
 import { PCA } from './functions/pca.ts';
 import { PROBABILITY_PLOT } from './functions/probability-plot.ts';
+import { ROBUST } from './functions/robust.ts';
 import { STRUCTURE } from './functions/structure.ts';
 import { UNIVARIATE } from './functions/univariate.ts';
 
@@ -29,6 +30,7 @@ const GROUPS: readonly Adapters[] = [
   NORMALITY,
   PCA,
   PROBABILITY_PLOT,
+  ROBUST,
   STRUCTURE,
   UNIVARIATE,
 ];

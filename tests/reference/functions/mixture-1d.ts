@@ -5,7 +5,7 @@ import { dataKey, inputNumber, inputText, remembered, type Adapters } from '../a
 import { transformedValues } from '../transform.ts';
 
 /** Random starts besides the deterministic ones; rare optima need this many. */
-const RESTARTS = 60;
+const RESTARTS = 120;
 
 /** Narrower than this share of the total sd a component sits on tied values: no fit, a collapse. */
 const LEAST_SD_SHARE = 0.05;
@@ -22,7 +22,7 @@ function fit(set: ReferenceSet, check: ReferenceCheck, k = inputNumber(check, 'k
       variance: model === 'E' ? 'shared' : 'own',
       minSd: LEAST_SD_SHARE * spreadOf(data).sd,
       restarts: RESTARTS,
-      seed: 2,
+      seed: 1,
       smaller: k > 1 ? fit(set, check, k - 1).components : null,
     });
   });

@@ -1,10 +1,7 @@
-import { describe, expect, it } from 'vitest';
+import { expect, it } from 'vitest';
 import { kMeans, type KMeansInput } from '#kernels/clustering/k-means.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { toColumns, transformedTable } from '#tests/support/reference-transform.ts';
-import { loadReference } from '#tests/support/reference.ts';
 
 /** (0,0) (0,1) (1,0) (5,5) (5,6) (6,5): optima computed over all partitions. */
 const X = Float64Array.from([0, 0, 1, 5, 5, 6]);
@@ -33,22 +30,6 @@ const codeOf = (input: KMeansInput): string => {
   }
   return 'accepted';
 };
-
-describe('reference data', () => {
-  for (const name of ['jura_prediction', 'meuse', 'skye_afm'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('kmeans')) {
-      if (check.fragile) continue;
-      it(check.id, () => {
-        const columns = toColumns(transformedTable(set, check));
-        const result = kMeans({ columns, k: check.inputs.k ?? 0, seed: 1, restarts: 60 });
-        if (check.function === 'kmeans_best_inertia') expectWithin(check, result.inertia);
-        else if (check.function === 'kmeans_labels') expectWithin(check, result.labels);
-        else expectWithin(check, result.sizes);
-      });
-    }
-  }
-});
 
 it.each([
   [1, 77.666667],

@@ -3,53 +3,9 @@ import { adjustedRandIndex, crosstabLabels } from '#kernels/clustering/agreement
 import { silhouette } from '#kernels/clustering/silhouette.ts';
 import { groupValidity } from '#kernels/clustering/validity.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { toColumns, transformedTable } from '#tests/support/reference-transform.ts';
-import {
-  givenLabels,
-  loadReference,
-  rowsOf,
-  type ReferenceCheck,
-  type ReferenceSet,
-} from '#tests/support/reference.ts';
 
 const six = [Float64Array.from([0, 0, 1, 5, 5, 6]), Float64Array.from([0, 1, 0, 5, 6, 5])];
 const halves = [1, 1, 1, 2, 2, 2];
-
-describe('reference data', () => {
-  for (const name of ['jura_prediction', 'meuse', 'skye_afm'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('cluster_quality')) {
-      it(check.id, () => expectWithin(check, quality(set, check)));
-    }
-  }
-  for (const name of ['jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('agreement')) {
-      it(check.id, () =>
-        expectWithin(check, adjustedRandIndex(givenLabels(set, check), classes(set, check))),
-      );
-    }
-  }
-});
-
-function quality(set: ReferenceSet, check: ReferenceCheck): number | number[] {
-  const columns = toColumns(transformedTable(set, check));
-  const labels = givenLabels(set, check);
-  if (check.function === 'calinski_harabasz')
-    return groupValidity(columns, labels).calinskiHarabasz ?? NaN;
-  const { mean, byLabel } = silhouette(columns, labels);
-  return check.function === 'silhouette_average_width'
-    ? (mean ?? NaN)
-    : byLabel.map((group) => group.mean ?? NaN);
-}
-
-/** The class column as labels 1.. in order of first appearance. */
-function classes(set: ReferenceSet, check: ReferenceCheck): number[] {
-  const texts = rowsOf(set, check).map((row) => row[String(check.inputs['class_column'])] ?? '');
-  const levels = [...new Set(texts)];
-  return texts.map((text) => levels.indexOf(text) + 1);
-}
 
 describe('six points in two halves (computed from the definitions)', () => {
   it('has its silhouette widths', () => {

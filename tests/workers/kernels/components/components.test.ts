@@ -1,11 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { biplot } from '#kernels/components/biplot.ts';
-import {
-  componentsOfMoments,
-  fitComponents,
-  type ComponentBasis,
-} from '#kernels/components/components.ts';
+import { componentsOfMoments, fitComponents } from '#kernels/components/components.ts';
 import {
   combineLogMoments,
   logMoments,
@@ -17,14 +13,6 @@ import { centredLogRatio } from '#kernels/compositions/centred-log-ratio.ts';
 import { columnsOfTable } from '#kernels/compositions/require-parts.ts';
 import { variation } from '#kernels/compositions/variation.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { loadReference } from '#tests/support/reference.ts';
-import { rawTable, toColumns } from '#tests/support/reference-transform.ts';
-
-const checks = (['jura_prediction', 'meuse', 'skye_afm'] as const).flatMap((name) => {
-  const set = loadReference(name);
-  return set.checksOf('pca').map((check) => ({ id: check.id, set, check }));
-});
 
 const FOUR_ROWS = Float64Array.of(10, 30, 60, 12, 28, 60, 20, 20, 60, 8, 40, 52);
 
@@ -47,26 +35,6 @@ function madeUpColumns(nRows: number, nParts: number, seed: number): Float64Arra
   }
   return columns;
 }
-
-describe('fitComponents and scoreComponents agree with R 4.2.2', () => {
-  it.each(checks)('$id', ({ set, check }) => {
-    const columns = toColumns(rawTable(set, check));
-    const basis: ComponentBasis =
-      check.inputs.transform === 'ln_cor' ? 'log-correlation' : 'clr-covariance';
-    const components = fitComponents(columns, { basis });
-    const k = check.inputs.components ?? 0;
-    expect(components.eigenvalues).toHaveLength(k);
-    if (check.function === 'pca_eigenvalues') return expectWithin(check, components.eigenvalues);
-    if (check.function === 'pca_explained_ratio') return expectWithin(check, components.shares);
-    if (check.function === 'pca_loadings')
-      return expectWithin(check, rowsOf(components.loadings, k));
-    const scores = scoreComponents(columns, components, k);
-    return expectWithin(
-      check,
-      (check.inputs.report_rows ?? []).map((row) => scores.map((score) => score[row - 1]!)),
-    );
-  });
-});
 
 describe('components', () => {
   it('of four rows: .225840, .004294, loadings and signs (computed: python)', () => {

@@ -2,21 +2,10 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { chiSquareQuantile } from '#kernels/components/chi-square-quantile.ts';
 import { consistencyFactor, smallSampleFactor } from '#kernels/components/mcd-factors.ts';
-import {
-  fastMcd,
-  mahalanobis,
-  mcdSubsetSize,
-  type RobustScatter,
-} from '#kernels/components/mcd.ts';
+import { fastMcd, mahalanobis, mcdSubsetSize } from '#kernels/components/mcd.ts';
 import { subsetMoments } from '#kernels/components/mcd-steps.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { chiSquareTail } from '#kernels/tables/special-functions.ts';
-import { expectWithin, type ReferenceResult } from '#tests/support/expect-within.ts';
-import { loadReference, type ReferenceCheck } from '#tests/support/reference.ts';
-import { transformedTable } from '#tests/support/reference-transform.ts';
-
-const rowsOf = (matrix: Float64Array, p: number) =>
-  Array.from({ length: p }, (_, i) => matrix.subarray(i * p, (i + 1) * p));
 
 /** Two-dimensional points whose smallest subset of five is known by trying all of them. */
 const SEVEN = Float64Array.of(0, 0, 1, 0.2, 0.2, 1, 1, 1, 0.5, 0.6, 8, -8, 9, -9);
@@ -29,45 +18,6 @@ function contaminated(n: number, p: number, seed: number): Float64Array {
     return random.normal() + (isMoved ? 12 : 0);
   });
 }
-
-describe.each(['meuse', 'jura_prediction'] as const)(
-  'fastMcd of %s agrees with robustbase 0.95-0 in R 4.2.2',
-  (name) => {
-    const set = loadReference(name);
-    const table = transformedTable(set, set.check(`${name}.mcd.h`));
-    const p = table.nCols;
-    const found = fastMcd(table.values, p, { seed: 7 });
-    const everyRow = Uint32Array.from({ length: table.nRows }, (_, row) => row);
-    const classical = subsetMoments({ points: table.values, p }, everyRow);
-    const results: Record<
-      string,
-      (scatter: RobustScatter, check: ReferenceCheck) => ReferenceResult
-    > = {
-      mcd_h: ({ subset }) => subset.length,
-      mcd_logdet: ({ raw }) => raw.logDeterminant,
-      mcd_subset: ({ subset }) => Array.from(subset, (row) => row + 1),
-      mcd_raw_center: ({ raw }) => raw.centre,
-      mcd_raw_cov_uncorrected: ({ raw }) => rowsOf(raw.covariance, p),
-      mcd_raw_factors: ({ raw, consistency, smallSample }) => ({
-        raw: [raw.consistency, raw.smallSample],
-        reweighted: [consistency, smallSample],
-      }),
-      mcd_center: ({ centre }) => centre,
-      mcd_cov: ({ covariance }) => rowsOf(covariance, p),
-      mcd_outlier_count: ({ nOutliers }) => nOutliers,
-      mahalanobis_classical: (_, check) => {
-        const all = mahalanobis(table.values, p, classical.centre, classical.covariance);
-        return (check.inputs.report_rows ?? []).map((row) => all[row - 1]!);
-      },
-    };
-
-    it.each(set.checksOf('robust'))('$id', (check) => {
-      const result = results[check.function];
-      if (!result) throw new Error(`no result for ${check.function}`);
-      expectWithin(check, result(found, check));
-    });
-  },
-);
 
 describe('factors', () => {
   it.each([

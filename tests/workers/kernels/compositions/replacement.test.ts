@@ -1,54 +1,13 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { centredLogRatio } from '#kernels/compositions/centred-log-ratio.ts';
-import { close } from '#kernels/compositions/closure.ts';
 import {
   harmoniseLimit,
   replaceBelowLimit,
   replaceInClosed,
   VALUE_STATE,
 } from '#kernels/compositions/replacement.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { loadReference } from '#tests/support/reference.ts';
-import { rawTable, toColumns } from '#tests/support/reference-transform.ts';
 
 const { measured, below, above, missing, notAnalysed } = VALUE_STATE;
-const jura = loadReference('jura_prediction');
-
-describe('replacement agrees with R 4.2.2', () => {
-  it('substitutes .65 of the limit, then clr', () => {
-    const check = jura.check('jura_prediction.censor_substitution');
-    const table = rawTable(jura, check);
-    const limit = Number(check.inputs['censor_below']);
-    const [cd = new Float64Array(0), ...others] = toColumns(table);
-    const censored = harmoniseLimit(cd, new Uint8Array(cd.length), limit);
-    const { values, nReplaced } = replaceBelowLimit(censored.values, censored.states);
-    expect(nReplaced).toBe(check.inputs.report_rows?.length);
-    const columns = [values, ...others];
-    const parts = Float64Array.from(
-      { length: table.values.length },
-      (_, i) => columns[i % 7]![Math.floor(i / 7)]!,
-    );
-    const clr = centredLogRatio(parts, 7);
-    expectWithin(
-      check,
-      (check.inputs.report_rows ?? []).map((row) => clr.subarray(7 * (row - 1), 7 * row)),
-    );
-  });
-
-  it('replaces multiplicatively in closed rows', () => {
-    const check = jura.check('jura_prediction.multiplicative_replacement');
-    const { values } = rawTable(jura, check);
-    const rows = (check.inputs.report_rows ?? []).map((row) => {
-      const others = values.slice(7 * (row - 1) + 1, 7 * row);
-      const sum = others.reduce((a, b) => a + b, 0);
-      const parts = Float64Array.of(0, ...close(others, 6));
-      const replacements = new Float64Array(7).fill((0.65 * 0.4) / sum);
-      return replaceInClosed(parts, 7, replacements);
-    });
-    expectWithin(check, rows);
-  });
-});
 
 describe('replaceInClosed', () => {
   it('turns (0, .4, .6) with limit .01 into (.0065, .3974, .5961) (computed; identity)', () => {

@@ -3,55 +3,10 @@ import { describe, expect, it } from 'vitest';
 import { toDegrees } from '#kernels/geometry/directions.ts';
 import { desurvey, type Station } from '#kernels/geometry/minimum-curvature.ts';
 import { positionAtDepth, positionsAtDepths } from '#kernels/geometry/position-at-depth.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { loadReference, numbersOf, type ReferenceCheck } from '#tests/support/reference.ts';
 
-const set = loadReference('desurvey');
 const COLLAR = [0, 0, 0] as const;
 
-function rowsOfThree(values: Float64Array): number[][] {
-  return Array.from({ length: values.length / 3 }, (_, i) => [
-    ...values.subarray(3 * i, 3 * i + 3),
-  ]);
-}
-
-function stationsOf(check: ReferenceCheck): Station[] {
-  const [depths, azimuths, dips] = ['md', 'azimuth', 'dip'].map((column) =>
-    numbersOf(set, check, column),
-  );
-  return Array.from(depths ?? [], (depthM, i) => ({
-    depthM,
-    azimuth: azimuths?.[i] ?? NaN,
-    dip: dips?.[i] ?? NaN,
-  }));
-}
-
-function pathOf(check: ReferenceCheck) {
-  const stations = stationsOf(check);
-  return desurvey(COLLAR, stations, { startDepthM: stations[0]?.depthM ?? 0 });
-}
-
-const checks = (name: string) =>
-  set.checksOf('desurvey', name).map((check) => ({ id: check.id, check }));
-
 describe('desurvey by minimum curvature', () => {
-  it.each(checks('minimum_curvature'))('$id agrees with numpy 1.24.2', ({ check }) => {
-    expectWithin(check, rowsOfThree(pathOf(check).positions));
-  });
-
-  it.each(checks('dogleg'))('$id agrees with numpy 1.24.2', ({ check }) => {
-    expectWithin(check, pathOf(check).doglegsRad.map(toDegrees));
-  });
-
-  it.each(checks('ratio_factor'))('$id agrees with numpy 1.24.2', ({ check }) => {
-    expectWithin(check, pathOf(check).ratioFactors);
-  });
-
-  it.each(checks('position_at_depth'))('$id agrees with numpy 1.24.2', ({ check }) => {
-    const depths = Float64Array.from([check.inputs['depths']].flat().map(Number));
-    expectWithin(check, rowsOfThree(positionsAtDepths(pathOf(check), depths).positions));
-  });
-
   it('gives N 27.22, E 19.45, V 94.01, 12.95° for 15°/020° to 25°/045° over 100 (published: reprinted drilling example)', () => {
     const stations = [
       { depthM: 3500, azimuth: 20, dip: -75 },
@@ -59,12 +14,8 @@ describe('desurvey by minimum curvature', () => {
     ];
     const path = desurvey(COLLAR, stations, { startDepthM: 3500 });
     const [, , , east = NaN, north = NaN, up = NaN] = path.positions;
-    expectWithin(set.check('desurvey.worked_example'), {
-      dogleg_rad: path.doglegsRad,
-      north,
-      east,
-      tvd: -up,
-    });
+    expect([north, east, -up].map((x) => Number(x.toFixed(2)))).toEqual([27.22, 19.45, 94.01]);
+    expect(toDegrees(path.doglegsRad[0] ?? NaN)).toBeCloseTo(12.95, 2);
     expect(path.ratioFactors[0]).toBeCloseTo(1.00428, 6);
   });
 

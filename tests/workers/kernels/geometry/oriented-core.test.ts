@@ -1,23 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { coreFromPlane, lineFromCore, planeFromCore } from '#kernels/geometry/oriented-core.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { loadReference } from '#tests/support/reference.ts';
-
-const set = loadReference('structure_geometry');
 
 describe('planeFromCore', () => {
-  it.each(
-    set.checksOf('structure', 'alpha_beta_to_plane').map((check) => ({ id: check.id, check })),
-  )('$id agrees with numpy 1.24.2', ({ check }) => {
-    const { azimuth, dip, alpha, beta } = check.inputs;
-    const plane = planeFromCore(
-      { azimuth: Number(azimuth), dip: Number(dip) },
-      { alpha: Number(alpha), beta: Number(beta) },
-    );
-    expectWithin(check, { dip_direction: plane.dipDirection, dip: plane.dip });
-  });
-
   // Computed from vectors, bottom line.
   it.each([
     [90, -60, 30, 0, 90, 90],

@@ -5,29 +5,7 @@ import { dipPValue, dipTest, spreadTies } from '#kernels/populations/dip-test.ts
 import { SCALED_DIPS, TAIL_PROBABILITIES } from '#kernels/populations/dip-table.ts';
 import { dipStatistic } from '#kernels/populations/dip.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import {
-  loadReference,
-  numbersOf,
-  type ReferenceCheck,
-  type ReferenceSet,
-} from '#tests/support/reference.ts';
 import { quantilesOf, simulate } from './fixtures/make-dip-table.ts';
-
-const valuesOf = (set: ReferenceSet, check: ReferenceCheck) =>
-  check.inputs.transform === 'ln' ? numbersOf(set, check).map(Math.log) : numbersOf(set, check);
-
-describe('reference data', () => {
-  for (const name of ['galaxies', 'geyser', 'jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('dip')) {
-      it(check.id, () => {
-        const { dip, pValue } = dipTest(valuesOf(set, check));
-        expectWithin(check, check.function === 'dip_statistic' ? dip : (pValue?.p ?? NaN));
-      });
-    }
-  }
-});
 
 /** 63 values of Hartigan & Hartigan (1985), quoted there as dip .059. */
 const STATISTICS_63 = [

@@ -1,5 +1,4 @@
 import { describe, expect, it } from 'vitest';
-import * as z from 'zod';
 import { logNormalCdf, normalCdf, normalQuantile } from '#kernels/normal.ts';
 import { evenOddsPoint } from '#kernels/populations/even-odds.ts';
 import { choosePopulations, fitLognormalMixtures } from '#kernels/populations/lognormal-mixture.ts';
@@ -10,69 +9,10 @@ import {
   type MixtureData,
 } from '#kernels/populations/mixture-data.ts';
 import { emStep, logLikelihood, type NormalComponent } from '#kernels/populations/mixture-em.ts';
-import { fitNormalMixture, type NormalMixture } from '#kernels/populations/normal-mixture.ts';
+import { fitNormalMixture } from '#kernels/populations/normal-mixture.ts';
 import { fitSkewedPopulation } from '#kernels/populations/skewed-population.ts';
 import { fitTruncatedPopulation } from '#kernels/populations/truncated-population.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import {
-  loadReference,
-  numbersOf,
-  type ReferenceCheck,
-  type ReferenceSet,
-} from '#tests/support/reference.ts';
-
-/** Fits of 1..k, each started from the one before; one cache entry per column and model. */
-const fits = new Map<string, NormalMixture[]>();
-function fitFor(set: ReferenceSet, check: ReferenceCheck): NormalMixture {
-  const shared = check.inputs['model'] === 'E';
-  const hard = check.id === 'jura_prediction.Zn.mix_ln.normalmixEM.k4'; // its optimum needs more random starts
-  const key = [set.name, check.inputs.column, check.inputs.transform, shared, hard].join();
-  const values = numbersOf(set, check);
-  const data = mixtureData(check.inputs.transform === 'ln' ? values.map(Math.log) : values);
-  const options = {
-    variance: shared ? 'shared' : 'own',
-    minSd: 0.05 * spreadOf(data).sd,
-    ...(hard ? { restarts: 60, seed: 2 } : { restarts: 12 }),
-  } as const;
-  const known = fits.get(key) ?? [];
-  for (let k = known.length + 1; k <= (check.inputs.k ?? 0); k++) {
-    known.push(
-      fitNormalMixture(data, k, { ...options, smaller: known.at(-1)?.components ?? null }),
-    );
-  }
-  fits.set(key, known);
-  const fit = known[(check.inputs.k ?? 0) - 1];
-  if (!fit) throw new Error(`${check.id}: no fit`);
-  return fit;
-}
-
-describe('reference data', () => {
-  for (const name of ['galaxies', 'geyser', 'jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('mixture_1d')) {
-      if (check.collapsed || check.fragile) continue; // sits on tied values, or no second tool reached it
-      it(check.id, () => {
-        const { components, logLik, bic, parameters } = fitFor(set, check);
-        if (check.tolerance.compare === 'mixture_loglik') return expectWithin(check, logLik);
-        const list = (pick: (c: NormalComponent) => number) => components.map(pick);
-        const all = {
-          loglik: logLik,
-          bic,
-          parameters,
-          proportion: list((c) => c.share),
-          mean: list((c) => c.mean),
-          sd: list((c) => c.sd),
-        };
-        const asked = Object.keys(z.record(z.string(), z.unknown()).parse(check.value));
-        expectWithin(
-          check,
-          Object.fromEntries(Object.entries(all).filter(([field]) => asked.includes(field))),
-        );
-      });
-    }
-  }
-});
 
 /** 700 quantiles of B (median .5, sd .6) and 300 of A (median 8, sd .4) at Hazen positions. */
 const quantilesOf = (n: number, median: number, sd: number) =>

@@ -8,34 +8,6 @@ import {
 import { andersonDarling, lilliefors } from '#kernels/populations/normality.ts';
 import { shapiroWilk } from '#kernels/populations/shapiro-wilk.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import {
-  loadReference,
-  numbersOf,
-  type ReferenceCheck,
-  type ReferenceSet,
-} from '#tests/support/reference.ts';
-
-const valuesOf = (set: ReferenceSet, check: ReferenceCheck) =>
-  check.inputs.transform === 'ln' ? numbersOf(set, check).map(Math.log) : numbersOf(set, check);
-
-describe('reference data', () => {
-  for (const name of ['galaxies', 'geyser', 'jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('normality')) {
-      it(check.id, () => {
-        const values = valuesOf(set, check);
-        if (check.function === 'shapiro_wilk') {
-          const { statistic, p } = shapiroWilk(values);
-          expectWithin(check, { W: statistic, p: p ?? NaN });
-        } else {
-          const { statistic, p } = andersonDarling(values);
-          expectWithin(check, { A2: statistic, p: p ?? NaN });
-        }
-      });
-    }
-  }
-});
 
 const grades = [1.2, 0.8, 2.1, 3.3, 0.5, 1.9, 2.7, 1.1, 0.9, 4.5];
 

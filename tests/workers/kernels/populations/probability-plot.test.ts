@@ -9,35 +9,6 @@ import {
 } from '#kernels/populations/plotting-positions.ts';
 import { probabilityPlot } from '#kernels/populations/probability-plot.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { loadReference, numbersOf } from '#tests/support/reference.ts';
-
-describe('reference data', () => {
-  for (const name of ['galaxies', 'geyser', 'jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('probability_plot')) {
-      it(check.id, () => {
-        const raw = numbersOf(set, check);
-        const sample = (check.inputs.transform === 'ln' ? raw.map(Math.log) : raw).sort();
-        const scores = normalScores(sample.length, sample.length > 10 ? 'hazen' : 'blom');
-        const at = check.inputs.report_positions ?? [];
-        expectWithin(check, {
-          theoretical: at.map((i) => scores[i - 1] ?? NaN),
-          sample: at.map((i) => sample[i - 1] ?? NaN),
-          r: correlation(scores, sample),
-        });
-      });
-    }
-  }
-});
-
-function correlation(a: Float64Array, b: Float64Array): number {
-  const mean = (x: Float64Array) => x.reduce((sum, v) => sum + v, 0) / x.length;
-  const [ma, mb] = [mean(a), mean(b)];
-  const cross = (x: Float64Array, mx: number, y: Float64Array, my: number) =>
-    x.reduce((sum, v, i) => sum + (v - mx) * ((y[i] ?? NaN) - my), 0);
-  return cross(a, ma, b, mb) / Math.sqrt(cross(a, ma, a, ma) * cross(b, mb, b, mb));
-}
 
 describe('plotting positions of five values (computed)', () => {
   it.each([

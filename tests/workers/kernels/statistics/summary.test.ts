@@ -1,46 +1,8 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { summarise } from '#kernels/statistics/summary.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { loadReference, numbersOf } from '#tests/support/reference.ts';
-
-const univariate = (['galaxies', 'geyser', 'jura_prediction', 'meuse'] as const).flatMap((name) => {
-  const set = loadReference(name);
-  return set.checksOf('univariate').map((check) => ({ id: check.id, set, check }));
-});
 
 describe('summarise', () => {
-  it.each(univariate)('agrees with R 4.2.2: $id', ({ set, check }) => {
-    const values = numbersOf(set, check);
-    const probabilities = check.inputs.probabilities ?? [];
-    const found = summarise(values, { probabilities });
-    if (check.function === 'percentiles_type7') {
-      expectWithin(
-        check,
-        found.percentiles.map(({ value }) => value),
-      );
-      return;
-    }
-    const { n, skewness } = found;
-    expectWithin(check, {
-      n,
-      mean: found.mean,
-      sd: found.sd,
-      cv: found.cv,
-      min: found.min,
-      max: found.max,
-      median: found.median,
-      'mad_1.4826': 1.4826 * found.mad,
-      skew_g1: skewness,
-      skew_G1: ((skewness ?? NaN) * Math.sqrt(n * (n - 1))) / (n - 2),
-      excess_kurtosis_g2: found.excessKurtosis,
-      geometric_mean: found.log?.geometricMean ?? null,
-      ln_mean: found.log?.logMean ?? null,
-      ln_sd: found.log?.logSd ?? null,
-      lognormal_cv: found.log?.lognormalCv ?? null,
-    });
-  });
-
   it('answers null, not zero, for what one row cannot give', () => {
     const found = summarise(Float64Array.of(5));
     expect(found).toMatchObject({

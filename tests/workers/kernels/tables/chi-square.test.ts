@@ -1,12 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { association, entropy, millerMadow, strengthInWords } from '#kernels/tables/association.ts';
-import { categoryFrom } from '#kernels/tables/category.ts';
 import { chiSquareTest, residualSignificance } from '#kernels/tables/chi-square.ts';
-import { crossTabulate } from '#kernels/tables/cross-tabulation.ts';
-import { chiSquareTail } from '#kernels/tables/special-functions.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { givenLabels, loadReference, textsOf } from '#tests/support/reference.ts';
 
 /** Gender by party, Agresti (2007), An Introduction to Categorical Data Analysis (counts from memory). */
 const agresti = Float64Array.from([762, 327, 468, 484, 239, 477]);
@@ -131,40 +126,5 @@ describe('association', () => {
         expect(tested(transposed, 3).chiSquare).toBeCloseTo(tested(counts, 4).chiSquare, 7);
       }),
     );
-  });
-});
-
-describe('reference: published soil data, cross-tabulated in R', () => {
-  const sets = (['jura_prediction', 'meuse'] as const).map(loadReference);
-  const checks = sets.flatMap((set) => set.checksOf('crosstab').map((check) => ({ set, check })));
-
-  it.each(checks)('$check.id', ({ set, check }) => {
-    const column = (key: string) => String(check.inputs[key]);
-    const rows = check.inputs.labels_from
-      ? givenLabels(set, check).map(String)
-      : textsOf(set, check, column('row_column'));
-    const cols = textsOf(set, check, column('col_column'));
-    const lengths = new Float64Array(rows.length).fill(1);
-    const table = crossTabulate(categoryFrom(rows), categoryFrom(cols), lengths);
-    expect([table.rowLevels, table.colLevels]).toEqual([
-      check.labels?.['rows'],
-      check.labels?.['cols'],
-    ]);
-    const nCols = table.colLevels.length;
-    const test = tested(table.counts, nCols);
-    const strength = associated(table.counts, nCols);
-    const grid = (cells: Float64Array) =>
-      table.rowLevels.map((_, r) => cells.slice(r * nCols, (r + 1) * nCols));
-    expectWithin(check, {
-      counts: grid(table.counts),
-      expected: grid(test.expected),
-      chi2: test.chiSquare,
-      df: test.df,
-      p: chiSquareTail(test.chiSquare, test.df),
-      cramers_v: strength.cramersV,
-      cramers_v_bias_corrected: strength.cramersVCorrected,
-      pearson_residual: grid(test.pearsonResiduals),
-      adjusted_residual: grid(test.adjustedResiduals),
-    });
   });
 });

@@ -1,75 +1,10 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { quantiles } from '#kernels/statistics/quantile.ts';
-import { summarise } from '#kernels/statistics/summary.ts';
-import { categoryFrom } from '#kernels/tables/category.ts';
 import { groupValues } from '#kernels/tables/grouped-values.ts';
 import { kolmogorovSmirnovPairs } from '#kernels/tables/kolmogorov-smirnov.ts';
 import { dunnZ, kruskalWallis, mannWhitneyPairs } from '#kernels/tables/rank-tests.ts';
 import { midranks } from '#kernels/tables/ranks.ts';
 import { anovaOfLogs } from '#kernels/tables/variance-between.ts';
-import { expectWithin, type ReferenceResult } from '#tests/support/expect-within.ts';
-import {
-  loadReference,
-  numbersOf,
-  textsOf,
-  type ReferenceCheck,
-} from '#tests/support/reference.ts';
-
-const calculations: Record<
-  string,
-  (groups: Float64Array[], check: ReferenceCheck) => ReferenceResult
-> = {
-  kruskal_wallis: (groups) => {
-    const { h, df, nominalP, epsilonSquared } = kruskalWallis(groups);
-    return { H: h, df, p: nominalP, epsilon2: epsilonSquared };
-  },
-  mann_whitney_pairwise: (groups) => {
-    const tests = mannWhitneyPairs(groups);
-    return {
-      U: tests.map(({ u }) => u),
-      p: tests.map(({ nominalP }) => nominalP),
-      p_holm: tests.map(({ pHolm }) => pHolm),
-      p_bh: tests.map(({ pBenjaminiHochberg }) => pBenjaminiHochberg),
-      cliffs_delta: tests.map(({ cliffsDelta }) => cliffsDelta),
-    };
-  },
-  dunn_z: (groups) => dunnZ(groups),
-  ks_two_sample_pairwise: (groups) => {
-    const tests = kolmogorovSmirnovPairs(groups);
-    return { D: tests.map(({ d }) => d), p_asymptotic: tests.map(({ nominalP }) => nominalP) };
-  },
-  anova_ln: (groups) => {
-    const { f, nominalP, betweenShare } = anovaOfLogs(groups);
-    return { F: f, p: nominalP, between_share: betweenShare };
-  },
-  percentiles_by_group: (groups, check) =>
-    groups.map((values) => quantiles(values, check.inputs.probabilities ?? [])),
-  cv_by_group: (groups) => {
-    const summaries = groups.map((values) => summarise(values));
-    return {
-      n: summaries.map(({ n }) => n),
-      mean: summaries.map(({ mean }) => mean),
-      sd: summaries.map(({ sd }) => sd),
-      cv: summaries.map(({ cv }) => cv),
-    };
-  },
-};
-
-describe('reference: published soil data, tested by class in R', () => {
-  const sets = (['jura_prediction', 'meuse'] as const).map(loadReference);
-  const checks = sets.flatMap((set) => set.checksOf('group_test').map((check) => ({ set, check })));
-
-  it.each(checks)('$check.id', ({ set, check }) => {
-    const calculate = calculations[check.function];
-    if (!calculate) throw new Error(`no kernel for ${check.function}`);
-    const labels = textsOf(set, check, String(check.inputs['group_column']));
-    const { levels, groups } = groupValues(numbersOf(set, check), categoryFrom(labels));
-    const names = levels.flatMap((a, i) => levels.slice(i + 1).map((b) => `${a}|${b}`));
-    if (check.labels?.['pairs']) expect(names).toEqual(check.labels['pairs']);
-    expectWithin(check, calculate(groups, check));
-  });
-});
 
 const small = [Float64Array.of(1, 2, 3), Float64Array.of(4, 5, 6, 7)];
 
