@@ -1,0 +1,88 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+import { BLOCK_ROWS, blockResponsibilities, fillBlock, mixtureBlock } from './mixture-block.ts';
+import { mixtureDensity, type MixtureModel } from './mixture-model.ts';
+import { packPoints } from './points.ts';
+
+/** Membership of rows in the groups of a mixture. */
+export interface MixtureMembership {
+  /** Row-major, shape (n, K): probability of each group, rows sum to 1; NaN where a coordinate is missing. */
+  responsibilities: Float64Array;
+  /** 1..K per row, the likeliest group; 0 = a coordinate is missing. */
+  labels: Uint8Array;
+  /** Probability of that group, [1/K, 1]; NaN where a coordinate is missing. */
+  own: Float64Array;
+  /** -Σ w Σ r ln r over the rows, >= 0. */
+  entropy: number;
+}
+
+/**
+ * Membership of rows in a frozen mixture; nothing is fitted.
+ *
+ * @param columns p columns of n rows in the space of the model; NaN = missing.
+ * @param weights Optional weight per row, only for the entropy.
+ * @throws {KernelError} `shape` when p differs; `singular`; those of `packPoints`.
+ */
+export function mixtureMembership(
+  model: MixtureModel,
+  columns: readonly Float64Array[],
+  weights?: Float64Array,
+): MixtureMembership {
+  if (columns.length !== model.p)
+    throw new KernelError('shape', `expected ${model.p} columns, found ${columns.length}`);
+  const { points, n, rowOf } = packPoints(columns);
+  const nRows = columns[0]?.length ?? 0;
+  const density = mixtureDensity(model);
+  const { k, p } = model;
+  const out = {
+    responsibilities: new Float64Array(nRows * k).fill(NaN),
+    labels: new Uint8Array(nRows),
+    own: new Float64Array(nRows).fill(NaN),
+    entropy: 0,
+  };
+  const block = mixtureBlock(k, p);
+  for (let from = 0; from < n; from += BLOCK_ROWS) {
+    const count = Math.min(BLOCK_ROWS, n - from);
+    fillBlock(block, points, p, from, count);
+    blockResponsibilities(block, density, count);
+    for (let r = 0; r < count; r++) {
+      const row = rowOf ? rowOf[from + r]! : from + r;
+      takeRow(out, block.shares, r, row, k, weights ? weights[row]! : 1);
+    }
+  }
+  return out;
+}
+
+function takeRow(
+  out: MixtureMembership,
+  shares: Float64Array,
+  r: number,
+  row: number,
+  k: number,
+  weight: number,
+): void {
+  let best = 0;
+  for (let c = 0; c < k; c++) {
+    const share = shares[c * BLOCK_ROWS + r]!;
+    out.responsibilities[row * k + c] = share;
+    if (share > 0) out.entropy -= weight * share * Math.log(share);
+    if (share > shares[best * BLOCK_ROWS + r]!) best = c;
+  }
+  out.labels[row] = best + 1;
+  out.own[row] = shares[best * BLOCK_ROWS + r]!;
+}
+
+/** The model with its groups in a new order: `order[new] = old`. */
+export function reorderMixture(model: MixtureModel, order: readonly number[]): MixtureModel {
+  const take = (values: Float64Array): Float64Array => {
+    const width = values.length / model.k;
+    return Float64Array.from(
+      order.flatMap((c) => Array.from(values.subarray(c * width, (c + 1) * width))),
+    );
+  };
+  return {
+    ...model,
+    shares: take(model.shares),
+    means: take(model.means),
+    covariances: take(model.covariances),
+  };
+}
