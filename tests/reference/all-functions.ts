@@ -5,6 +5,7 @@ import { CROSSTAB } from './functions/crosstab.ts';
 import { DESURVEY } from './functions/desurvey.ts';
 import { DIP } from './functions/dip.ts';
 import { DIRECTIONS } from './functions/directions.ts';
+import { GMM } from './functions/gmm.ts';
 import { GROUP_TEST } from './functions/group-test.ts';
 import { KMEANS } from './functions/kmeans.ts';
 import { LOGRATIO } from './functions/logratio.ts';
@@ -23,6 +24,7 @@ const GROUPS: readonly Adapters[] = [
   DESURVEY,
   DIP,
   DIRECTIONS,
+  GMM,
   GROUP_TEST,
   KMEANS,
   LOGRATIO,
