@@ -35,7 +35,7 @@ function pick({ assay, weightsM, mask }: PopulationInput): SubsetRows {
 /** A grade that cannot be judged, such as one with many values over range, is told so and fails no other cell. */
 function judged({ values, qualifiers, weights }: SubsetRows): PopulationScreen | KernelError {
   try {
-    return screenPopulation(values, weights, qualifiers);
+    return screenPopulation(values, weights, qualifiers, { unit: 'ppm' });
   } catch (error) {
     if (error instanceof KernelError) return error;
     throw error;

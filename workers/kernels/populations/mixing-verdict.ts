@@ -52,7 +52,7 @@ export function mixingVerdict(input: VerdictInput): Verdict {
       : 'single';
   return {
     verdict,
-    reasons: [mixtureReason(input, evidence), ...sidesReason(evidence), dipReason(input, evidence)],
+    reasons: [mixtureReason(input, evidence), ...sidesReason(input, evidence), dipReason(input, evidence)],
     deltaBic: evidence.gainLognormal,
     deltaBicBestSingle: evidence.gainBestSingle,
     separation: evidence.cut,
@@ -63,7 +63,7 @@ const COUNT_WORDS = ['No', 'One', 'Two', 'Three', 'Four'];
 
 /** Whether several populations explain the grades better than one. */
 function mixtureReason(
-  { fits, skewed, truncated, effectiveN }: VerdictInput,
+  { fits, skewed, truncated, effectiveN, unit }: VerdictInput,
   { mixture, gainLognormal, gainBestSingle, bestSingle, mixtureClear }: Evidence,
 ): string {
   if (!mixture || gainLognormal === null || gainBestSingle === null) {
@@ -84,7 +84,7 @@ function mixtureReason(
   const form =
     bestSingle.kind === 'skewed'
       ? `one skewed population (power ${skewed.power.toFixed(2)} in place of the logarithm)`
-      : `one population cut off at ${grade(Math.exp(truncated?.from ?? NaN))} and ${grade(Math.exp(truncated?.to ?? NaN))}`;
+      : `one population cut off at ${grade(Math.exp(truncated?.from ?? NaN), unit)} and ${grade(Math.exp(truncated?.to ?? NaN), unit)}`;
   if (gainBestSingle <= 0)
     return `${several}, but ${form} explains the grades at least as well (BIC lower by ${(-gainBestSingle).toFixed(0)}).`;
   const small =
@@ -95,13 +95,13 @@ function mixtureReason(
 }
 
 /** How far the sides stand apart; nothing when no mixture is preferred. */
-function sidesReason({ cut, gainLognormal }: Evidence): string[] {
+function sidesReason({ unit }: VerdictInput, { cut, gainLognormal }: Evidence): string[] {
   if ((gainLognormal ?? -Infinity) < VERDICT_RULES.gain) return [];
   if (!cut) return [`No cut leaves both sides ${100 * VERDICT_RULES.someShare} % or more.`];
   const { ashmanD, lowerMedian, upperMedian, lowerShare, upperShare } = cut;
   const distance = ashmanD >= VERDICT_RULES.separation ? 'stand apart' : 'overlap';
   const smaller = 100 * Math.min(lowerShare, upperShare);
-  const sides = `The sides at ${grade(lowerMedian)} and ${grade(upperMedian)} ${distance} (Ashman D ${ashmanD.toFixed(1)}; 2 is clear)`;
+  const sides = `The sides at ${grade(lowerMedian, unit)} and ${grade(upperMedian, unit)} ${distance} (Ashman D ${ashmanD.toFixed(1)}; 2 is clear)`;
   const small = smaller < 100 * VERDICT_RULES.share ? `, under ${100 * VERDICT_RULES.share} %` : '';
   return [`${sides}; the smaller holds ${smaller.toFixed(smaller < 10 ? 1 : 0)} %${small}.`];
 }
@@ -115,11 +115,11 @@ function dipReason({ dip }: VerdictInput, { dipClear }: Evidence): string {
     : `No second mode is shown (${found}).`;
 }
 
-/** A grade with three significant digits, never in exponents. */
-function grade(value: number): string {
-  if (!(value > 0)) return String(value);
-  return Number(value.toPrecision(3)).toLocaleString('en', {
-    maximumFractionDigits: 12,
-    useGrouping: false,
-  });
+/** A grade with three significant digits, never in exponents, and its unit. */
+function grade(value: number, unit?: string): string {
+  const text =
+    value > 0
+      ? Number(value.toPrecision(3)).toLocaleString('en', { maximumFractionDigits: 12 })
+      : String(value);
+  return unit ? `${text} ${unit}` : text;
 }

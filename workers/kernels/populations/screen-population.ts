@@ -24,6 +24,8 @@ export interface ScreenOptions {
   /** Points of the probability plot at most, default 400. */
   plotPoints?: number;
   seed?: number;
+  /** Unit of the grades, said in the reasons. */
+  unit?: string;
   /** Share done; may throw to cancel. */
   onProgress?: (share: number) => void;
 }
@@ -124,7 +126,7 @@ const isConstant = (values: Float64Array): boolean => values.every((value) => va
 function judged(
   rows: ScreenRows,
   n: number,
-  { maxPopulations = 4, plotPoints = 400, seed = 1, onProgress }: ScreenOptions,
+  { maxPopulations = 4, plotPoints = 400, seed = 1, unit, onProgress }: ScreenOptions,
 ) {
   const data = mixtureData(
     rows.measured.map(Math.log),
@@ -148,6 +150,7 @@ function judged(
     skewed,
     truncated,
     dip,
+    unit,
   });
   onProgress?.(1);
   return {

@@ -18,6 +18,8 @@ export interface VerdictInput {
   /** Null where values below detection hide the lower edge. */
   truncated: TruncatedPopulation | null;
   dip: DipTest;
+  /** Unit of the grades, for the reasons; left out when they have none. */
+  unit?: string | undefined;
 }
 
 /** Thresholds of the mixing verdict: this project's own choice, tuned on generated truth. */

@@ -2,6 +2,7 @@ import { useQuery } from '@tanstack/react-query';
 import { useCallback, useState } from 'react';
 import type { Grouping } from '#contract/groupings.ts';
 import type { Screen } from '#contract/screens.ts';
+import { VERDICT_HELP } from '#kernels/populations/verdict-power.ts';
 import { PageHead } from '#src/components/layout/page-head.tsx';
 import { LinkButton } from '#src/components/ui/button.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
@@ -22,15 +23,12 @@ import { screensQuery } from '../api/populations-queries.ts';
 import { useSubsetValues } from '../subset-values.ts';
 import { CellPlate } from './cell-plate.tsx';
 import { ScreenPanel } from './screen-panel.tsx';
+import { VerdictHelp } from './verdict-help.tsx';
 import { VerdictMatrix } from './verdict-matrix.tsx';
 
 const VIEW = { subset: urlText(), variable: urlText(), plot: urlOneOf(['probability', 'histogram'], 'probability') };
 
-const MATRIX_HELP = {
-  text: 'A cell is mixed when two lognormal populations fit clearly better than one and lie apart; suspect when only part of that holds; few under 30 values.',
-  caution: 'Neighbouring intervals are alike, so p values are nominal. A verdict is a question to the rock, not an answer.',
-  source: 'Hartigan and Hartigan 1985 (dip); Kass and Raftery 1995 (BIC gain of 10)',
-};
+const MATRIX_HELP = { text: <VerdictHelp />, caution: VERDICT_HELP.caution, source: VERDICT_HELP.source };
 
 const EXPORTED: Column<CellSummary>[] = [
   { header: 'Subset', cell: ({ subsetKey }) => subsetKey, value: ({ subsetKey }) => subsetKey, rowHeader: true },
