@@ -1,0 +1,180 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+import { seededRandom, type Random } from '#kernels/random.ts';
+import { meansOf } from './code-space.ts';
+
+/** Spread of chemistry over two levels of a code hierarchy. */
+export interface NestedVariance {
+  /** Sums of squares over all coordinates; the first three add up to the total. */
+  parents: number;
+  codes: number;
+  within: number;
+  total: number;
+  /** Codes inside their parents against rows inside codes; null without freedom or spread. */
+  fCodes: number | null;
+  /** Permuting rows inside parents: nominal, since rows of a hole are dependent. */
+  nominalPCodes: number | null;
+  /** Parents against codes inside them; null without freedom or spread. */
+  fParents: number | null;
+  /** Permuting whole codes between parents. */
+  pParents: number | null;
+}
+
+export interface NestedInput {
+  /** n finite values each. */
+  coordinates: readonly Float64Array[];
+  /** Code of each row, 0..C-1, or -1. */
+  codeOf: Int32Array;
+  /** Parent of each code, 0..P-1. */
+  parentOf: Int32Array;
+}
+
+/**
+ * Nested sums of squares with permutation p: does the hierarchy of codes follow chemistry, and at which
+ * level.
+ *
+ * @param options.draws Permutations, 999 unless told.
+ * @throws {KernelError} `too-few-groups` under two codes; `too-few-rows` at a code without rows;
+ *   `shape`.
+ * @see Anderson (2001), Austral Ecology 26, 32-46 (from memory).
+ */
+export function nestedVariance(
+  { coordinates, codeOf, parentOf }: NestedInput,
+  options: { seed: number; draws?: number; onProgress?: (share: number) => void },
+): NestedVariance {
+  const { seed, draws = 999, onProgress } = options;
+  const sizes = sizesOf(codeOf, parentOf.length);
+  if (parentOf.length < 2)
+    throw new KernelError('too-few-groups', `expected 2 or more codes, found ${parentOf.length}`);
+  const empty = sizes.indexOf(0);
+  if (empty >= 0)
+    throw new KernelError('too-few-rows', `expected rows of every code, found none of ${empty}`, {
+      code: empty,
+    });
+  const n = sizes.reduce((sum, size) => sum + size, 0);
+  const nParents = new Set(parentOf).size;
+  const sums = { codeOf, parentOf, coordinates, sizes };
+  const parts = partsOf(sums);
+  const codeFreedom = parentOf.length - nParents;
+  const rowFreedom = n - parentOf.length;
+  const fCodes = ratio(parts.codes, codeFreedom, parts.within, rowFreedom, parts.total);
+  const fParents = ratio(parts.parents, nParents - 1, parts.codes, codeFreedom, parts.total);
+  const random = seededRandom(seed);
+  let [reachedCodes, reachedParents] = [0, 0];
+  for (let draw = 0; draw < draws; draw++) {
+    if (fCodes !== null) {
+      const moved = partsOf({ ...sums, codeOf: rowsShuffled(codeOf, parentOf, random) });
+      const f = ratio(moved.codes, codeFreedom, moved.within, rowFreedom, parts.total) ?? Infinity;
+      if (f >= fCodes * (1 - 1e-12)) reachedCodes += 1;
+    }
+    if (fParents !== null) {
+      const moved = betweenLevels({ ...sums, parentOf: shuffled(parentOf, random) }, parts.means);
+      const f =
+        ratio(moved.parents, nParents - 1, moved.codes, codeFreedom, parts.total) ?? Infinity;
+      if (f >= fParents * (1 - 1e-12)) reachedParents += 1;
+    }
+    onProgress?.((draw + 1) / draws);
+  }
+  const { parents, codes, within, total } = parts;
+  const pOf = (f: number | null, reached: number) =>
+    f === null ? null : (1 + reached) / (draws + 1);
+  return {
+    parents,
+    codes,
+    within,
+    total,
+    fCodes,
+    nominalPCodes: pOf(fCodes, reachedCodes),
+    fParents,
+    pParents: pOf(fParents, reachedParents),
+  };
+}
+
+interface Sums extends NestedInput {
+  sizes: number[];
+}
+
+function sizesOf(groupOf: Int32Array, groups: number): number[] {
+  const sizes = new Array<number>(groups).fill(0);
+  groupOf.forEach((group, row) => {
+    if (group >= groups)
+      throw new KernelError(
+        'shape',
+        `expected a code below ${groups}, found ${group} in row ${row}`,
+        { row },
+      );
+    if (group >= 0) sizes[group]! += 1;
+  });
+  return sizes;
+}
+
+/** Mean squares over each other; null without freedom, or when the lower one is rounding noise. */
+function ratio(
+  above: number,
+  df1: number,
+  below: number,
+  df2: number,
+  total: number,
+): number | null {
+  if (df1 < 1 || df2 < 1 || !(below > 1e-14 * total)) return null;
+  return above / df1 / (below / df2);
+}
+
+function partsOf(sums: Sums) {
+  const { coordinates, codeOf, sizes } = sums;
+  const p = coordinates.length;
+  const means = meansOf(coordinates, codeOf, sizes);
+  let within = 0;
+  coordinates.forEach((column, k) => {
+    codeOf.forEach((code, row) => {
+      if (code >= 0) within += (column[row]! - means[code * p + k]!) ** 2;
+    });
+  });
+  const { parents, codes } = betweenLevels(sums, means);
+  return { parents, codes, within, total: parents + codes + within, means };
+}
+
+/** Sums of squares of code means about their parents, and of parents about the whole. */
+function betweenLevels({ parentOf, sizes, coordinates }: Sums, means: Float64Array) {
+  const p = coordinates.length;
+  let [parents, codes] = [0, 0];
+  const rowsOf = new Float64Array(Math.max(...parentOf) + 1);
+  parentOf.forEach((parent, code) => (rowsOf[parent]! += sizes[code]!));
+  const n = rowsOf.reduce((sum, rows) => sum + rows, 0);
+  for (let k = 0; k < p; k++) {
+    const centre = new Float64Array(rowsOf.length);
+    parentOf.forEach((parent, code) => {
+      centre[parent]! += (sizes[code]! / rowsOf[parent]!) * means[code * p + k]!;
+    });
+    const whole = centre.reduce((sum, value, parent) => sum + (rowsOf[parent]! / n) * value, 0);
+    centre.forEach((value, parent) => (parents += rowsOf[parent]! * (value - whole) ** 2));
+    parentOf.forEach((parent, code) => {
+      codes += sizes[code]! * (means[code * p + k]! - centre[parent]!) ** 2;
+    });
+  }
+  return { parents, codes };
+}
+
+function shuffled(values: Int32Array, random: Random): Int32Array {
+  const out = values.slice();
+  for (let i = out.length - 1; i > 0; i--) {
+    const j = random.below(i + 1);
+    [out[i], out[j]] = [out[j]!, out[i]!];
+  }
+  return out;
+}
+
+/** Codes of rows shuffled among the rows of each parent. */
+function rowsShuffled(codeOf: Int32Array, parentOf: Int32Array, random: Random): Int32Array {
+  const out = codeOf.slice();
+  for (const parent of new Set(parentOf)) {
+    const rows = [...codeOf.keys()].filter(
+      (row) => codeOf[row]! >= 0 && parentOf[codeOf[row]!] === parent,
+    );
+    const codes = shuffled(
+      Int32Array.from(rows, (row) => codeOf[row]!),
+      random,
+    );
+    rows.forEach((row, i) => (out[row] = codes[i]!));
+  }
+  return out;
+}
