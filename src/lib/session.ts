@@ -1,4 +1,4 @@
-import { queryOptions, useMutation, useQuery, type QueryClient } from '@tanstack/react-query';
+import { queryOptions, useMutation, useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
 import { getInstance, getMe, signOut, type Me } from '#contract/auth.ts';
 import { call } from './api-client.ts';
 import { hasStatus } from './api-problem.ts';
@@ -45,12 +45,16 @@ export const isSigningOut = (): boolean => isLeaving;
  * @param onDone Leaves by a full load, so that nothing read stays in memory.
  */
 export function useSignOut(onDone: () => void) {
+  const queryClient = useQueryClient();
   return useMutation({
     mutationFn: () =>
       call(signOut, {}).catch((error: unknown) => {
         if (!hasStatus(error, 401)) throw error;
       }),
-    onMutate: () => void (isLeaving = true),
+    onMutate: () => {
+      isLeaving = true;
+      return queryClient.cancelQueries();
+    },
     onError: () => void (isLeaving = false),
     onSuccess: onDone,
   });

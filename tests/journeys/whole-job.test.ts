@@ -69,6 +69,7 @@ describe('a new geologist does the whole job by hand', () => {
     await page.getByLabel('New password').fill(NEWCOMER.password);
     await page.getByRole('button', { name: 'Join' }).click();
     await page.waitForURL(/\/deposits\/\d+$/);
+    await untilSettled(page);
     await page.getByRole('button', { name: `Your account: ${NEWCOMER.name}` }).click();
     await page.getByRole('menuitem', { name: 'Sign out' }).click();
     await page.waitForURL('**/sign-in');
