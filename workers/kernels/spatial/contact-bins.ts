@@ -1,4 +1,5 @@
 import type { CodeRun } from '#kernels/tables/code-runs.ts';
+import type { IntervalsByHole } from '#kernels/tables/intervals-by-hole.ts';
 
 /** Grades at one distance from the contacts of a pair of domains. */
 export interface ContactBin {
@@ -24,6 +25,27 @@ export interface PairContact {
   second: CodeRun;
   /** True when the first domain lies above. */
   isFirstAbove: boolean;
+}
+
+/** Contacts keyed by lower code x levels + higher code. */
+export function contactsByPair(
+  runs: readonly CodeRun[],
+  { fromM, toM }: IntervalsByHole,
+  nLevels: number,
+): Map<number, PairContact[]> {
+  const pairs = new Map<number, PairContact[]>();
+  runs.forEach((below, i) => {
+    const above = runs[i - 1];
+    if (!below.touchesAbove || !above || above.code === below.code) return;
+    const isFirstAbove = above.code < below.code;
+    const [first, second] = isFirstAbove ? [above, below] : [below, above];
+    const key = first.code * nLevels + second.code;
+    const depthM = (toM[above.last]! + fromM[below.first]!) / 2;
+    const own = pairs.get(key) ?? [];
+    own.push({ depthM, first, second, isFirstAbove });
+    pairs.set(key, own);
+  });
+  return pairs;
 }
 
 /**

@@ -7,6 +7,7 @@ import type { IntervalsByHole } from '#kernels/tables/intervals-by-hole.ts';
 import {
   binIndex,
   binsOf,
+  contactsByPair,
   rowsNearContacts,
   type ContactBin,
   type PairContact,
@@ -115,25 +116,6 @@ function requireInput(
         row,
       },
     );
-}
-
-/** Contacts keyed by lower code x levels + higher code. */
-function contactsByPair(
-  runs: readonly CodeRun[],
-  { fromM, toM }: IntervalsByHole,
-  nLevels: number,
-): Map<number, PairContact[]> {
-  const pairs = new Map<number, PairContact[]>();
-  runs.forEach((below, i) => {
-    const above = runs[i - 1];
-    if (!below.touchesAbove || !above || above.code === below.code) return;
-    const isFirstAbove = above.code < below.code;
-    const [first, second] = isFirstAbove ? [above, below] : [below, above];
-    const key = first.code * nLevels + second.code;
-    const depthM = (toM[above.last]! + fromM[below.first]!) / 2;
-    pairs.set(key, [...(pairs.get(key) ?? []), { depthM, first, second, isFirstAbove }]);
-  });
-  return pairs;
 }
 
 function profileOf(

@@ -1,8 +1,9 @@
-import { expect, it } from 'vitest';
+import { describe, expect, it } from 'vitest';
 import { normalCdf, normalQuantile } from '#kernels/normal.ts';
 import { partitionAt } from '#kernels/populations/inflection.ts';
 import { mixtureData } from '#kernels/populations/mixture-data.ts';
 import { partitionPlot, zoneOf } from '#kernels/populations/partition-plot.ts';
+import { proposePartitions } from '#kernels/populations/partition-proposals.ts';
 
 const quantilesOf = (n: number, median: number, sd: number) =>
   Array.from({ length: n }, (_, i) => Math.log(median) + sd * normalQuantile((i + 0.5) / n));
@@ -65,4 +66,36 @@ it.each([
   ['not-finite', () => zoneOf(partition, NaN)],
 ])('refuses %s', (code, call) => {
   expect(call).toThrow(expect.objectContaining({ code }));
+});
+
+describe('proposed partitions', () => {
+  it('find the two populations of the mixture', () => {
+    const [best] = proposePartitions(data);
+    expect(best?.partition.accepted).toBe(true);
+    expect(best?.partition.upper.share).toBeCloseTo(0.3, 1);
+    expect(Math.exp(best?.partition.upper.mean ?? NaN)).toBeCloseTo(8, 0);
+    expect(Math.exp(best?.partition.lower.mean ?? NaN)).toBeCloseTo(0.5, 1);
+  });
+
+  it('come by misfit, upper above lower', () => {
+    const three = mixtureData([
+      ...quantilesOf(400, 0.1, 0.3),
+      ...quantilesOf(400, 1, 0.3),
+      ...quantilesOf(200, 10, 0.3),
+    ]);
+    const found = proposePartitions(three);
+    const misfits = found.map(({ partition: { misfit } }) => misfit);
+    expect(found.length).toBeGreaterThan(0);
+    expect(misfits).toEqual([...misfits].sort((a, b) => a - b));
+    for (const { partition: p } of found) expect(p.upper.mean).toBeGreaterThan(p.lower.mean);
+  });
+
+  it('refuse a limit of 0 and too few values', () => {
+    expect(() => proposePartitions(data, 0)).toThrow(
+      expect.objectContaining({ code: 'bad-parameter' }),
+    );
+    expect(() => proposePartitions(mixtureData([1, 2, 3]))).toThrow(
+      expect.objectContaining({ code: 'too-few-rows' }),
+    );
+  });
 });

@@ -1,9 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { contactProfiles } from '#kernels/spatial/contact-profile.ts';
 import { readContact } from '#kernels/spatial/contact-reading.ts';
-import { signFlipTest } from '#kernels/statistics/sign-flip.ts';
 import { categoryFrom } from '#kernels/tables/category.ts';
-import { codeRuns, contactCounts } from '#kernels/tables/code-runs.ts';
 import { mannWhitneyPairs } from '#kernels/tables/rank-tests.ts';
 
 const A = [2.1, 1.8, 2.4, 2.0, 1.9, 2.2, 1.7, 2.5, 2.0, 1.6];
@@ -90,28 +88,6 @@ it('six a side: U 36 (computed; the exact p is 2 / C(12, 6))', () => {
 });
 
 describe('contacts', () => {
-  it('are found neither across gaps, faults and unlogged rows nor between holes', () => {
-    const { intervals, domains } = holes([
-      [
-        ['A', 1],
-        ['B', 1],
-        ['B', 1],
-        ['A', 1],
-        [null, 1],
-        ['B', 1],
-      ],
-      [['A', 1]],
-    ]);
-    const counts = contactCounts(codeRuns(intervals, domains), 2);
-    expect([...counts]).toEqual([0, 2, 2, 0]);
-    const isBreakBefore = Uint8Array.of(0, 1, 0, 0, 0, 0, 0);
-    expect(contactCounts(codeRuns({ ...intervals, isBreakBefore }, domains), 2)[1]).toBe(1);
-    const toM = intervals.toM.map((to, i) => (i === 2 ? to - 0.5 : to));
-    expect(contactCounts(codeRuns({ ...intervals, toM }, domains), 2)[1]).toBe(1);
-    const justOff = intervals.toM.map((to, i) => (i === 2 ? to - 0.004 : to));
-    expect(contactCounts(codeRuns({ ...intervals, toM: justOff }, domains), 2)[1]).toBe(2);
-  });
-
   it('a row between two contacts counts at the nearer one, once', () => {
     const rows = ['A', 'B', 'B', 'B', 'B', 'A'].map((code, i) => [code, i + 1] as const);
     const [profile] = profilesOf(holes([rows]));
@@ -185,31 +161,6 @@ describe('reading', () => {
   });
 });
 
-describe('sign flips', () => {
-  it('of one difference say nothing; of equal ones 2 of 2^m', () => {
-    expect(signFlipTest(Float64Array.of(3), { seed: 1 }).p).toBe(1);
-    expect(signFlipTest(new Float64Array(8).fill(-2), { seed: 1 })).toMatchObject({
-      reached: 2,
-      p: 2 / 256,
-    });
-    expect(signFlipTest(Float64Array.of(0, -0), { seed: 1 }).p).toBe(1);
-  });
-
-  it('drawn at random come near the share of all flips', () => {
-    const random = Float64Array.from({ length: 40 }, (_, i) => ((i * 7) % 11) - 4.2);
-    const mean = random.reduce((a, b) => a + b, 0) / 40;
-    const sd = Math.sqrt(random.reduce((a, b) => a + b * b, 0)) / 40;
-    const { p, enumerated, flips } = signFlipTest(random, { seed: 5 });
-    expect(enumerated).toBe(false);
-    expect(flips).toBe(999);
-    // Central limit: two-sided normal p of mean / sd under flips, within 4 standard errors.
-    const z = Math.abs(mean) / sd;
-    const normal = Math.exp(-0.717 * z - 0.416 * z * z);
-    expect(Math.abs(p - normal)).toBeLessThan(0.08);
-    expect(signFlipTest(random, { seed: 5 }).p).toBe(p);
-  });
-});
-
 const { intervals, domains, values } = ten;
 const options = { compositeM: 1, seed: 1 };
 it.each([
@@ -244,9 +195,6 @@ it.each([
     () =>
       contactProfiles(intervals, domains, values, { ...options, obliquity: new Float64Array(40) }),
   ],
-  ['too-few-rows', () => signFlipTest(new Float64Array(0), { seed: 1 })],
-  ['not-finite', () => signFlipTest(Float64Array.of(NaN), { seed: 1 })],
-  ['bad-parameter', () => signFlipTest(Float64Array.of(1), { seed: 1, draws: 0 })],
 ])('refuses %s', (code, call) => {
   expect(call).toThrow(expect.objectContaining({ code }));
 });

@@ -7,8 +7,6 @@ import {
 } from '#kernels/spatial/cell-declustering.ts';
 import { coordinateAlong, lineDirection } from '#kernels/spatial/positions.ts';
 import { swathProfile } from '#kernels/spatial/swath.ts';
-import { rankCorrelation } from '#kernels/statistics/rank-correlation.ts';
-import { theilSen } from '#kernels/statistics/theil-sen.ts';
 import computed from './fixtures/spatial.json' with { type: 'json' };
 
 const positionsOf = (points: readonly (readonly number[])[]) => ({
@@ -174,25 +172,6 @@ describe('directions', () => {
   });
 });
 
-describe('rank correlation and Theil-Sen line', () => {
-  it('agree with scipy, ties too', () => {
-    const tied = rankCorrelation(
-      field.x.map((x) => roundHalfEven(x / 20)),
-      grades.map(roundHalfEven),
-    );
-    expect(tied).toBeCloseTo(computed.tiedSpearman, 12);
-    const line = theilSen(field.x, grades);
-    expect(line.slope).toBeCloseTo(computed.theilSen[0] ?? NaN, 12);
-    expect(line.intercept).toBeCloseTo(computed.theilSen[1] ?? NaN, 12);
-  });
-
-  it('say null of constants', () => {
-    expect(rankCorrelation(Float64Array.of(1, 1, 1), Float64Array.of(1, 2, 3))).toBeNull();
-  });
-});
-
-const roundHalfEven = (x: number) =>
-  Math.abs(x % 1) === 0.5 ? 2 * Math.round(x / 2) : Math.round(x);
 const two = Float64Array.of(1, 2);
 
 it.each([
@@ -223,12 +202,6 @@ it.each([
   ['not-finite', () => swathProfile(two, Float64Array.of(1, -Infinity), { widthM: 1 })],
   ['too-few-rows', () => swathProfile(new Float64Array(0), new Float64Array(0), { widthM: 1 })],
   ['bad-parameter', () => lineDirection(400, 0)],
-  ['too-few-rows', () => rankCorrelation(two, two)],
-  ['shape', () => rankCorrelation(two, sixGrades)],
-  ['constant', () => theilSen([1, 1], [1, 2])],
-  ['too-few-rows', () => theilSen([1], [1])],
-  ['shape', () => theilSen([1, 2], [1])],
-  ['too-many-rows', () => theilSen(new Float64Array(2001), new Float64Array(2001))],
 ])('refuses %s', (code, call) => {
   expect(call).toThrow(expect.objectContaining({ code }));
 });

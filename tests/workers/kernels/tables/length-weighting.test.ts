@@ -4,6 +4,7 @@ import { association, entropy, millerMadow } from '#kernels/tables/association.t
 import { campaignCheck } from '#kernels/tables/campaign-check.ts';
 import { categoryFrom, type Category } from '#kernels/tables/category.ts';
 import { chiSquareTest } from '#kernels/tables/chi-square.ts';
+import { correctedInformation } from '#kernels/tables/corrected-information.ts';
 import { crossTabulate } from '#kernels/tables/cross-tabulation.ts';
 import { lengthWeightedCounts } from '#kernels/tables/length-weighted-counts.ts';
 
@@ -117,6 +118,26 @@ describe('association (computed)', () => {
   it('entropy of a half and two quarters is 1.5 bits; Miller-Madow adds (cells - 1) / 2n', () => {
     expect(entropy(Float64Array.of(2, 1, 1)) / Math.LN2).toBeCloseTo(1.5, 12);
     expect(millerMadow(3, 20)).toBeCloseTo(0.05, 15);
+  });
+});
+
+describe('information with its bias taken off', () => {
+  it('[[40,5],[10,45]]: each entropy gains (cells - 1) / 200 (by hand)', () => {
+    const found = correctedInformation(Float64Array.of(40, 5, 10, 45), 2);
+    // .275396 (computed) + (1 + 1 - 3) / 200
+    expect(found?.mutualInformation).toBeCloseTo(0.275396 - 0.005, 6);
+    expect(found?.entropyRows).toBeCloseTo(
+      -0.45 * Math.log(0.45) - 0.55 * Math.log(0.55) + 1 / 200,
+      12,
+    );
+  });
+
+  it('is not below 0 for unrelated labels, and nothing for an empty table', () => {
+    expect(correctedInformation(Float64Array.of(2, 2, 2, 2), 2)?.mutualInformation).toBe(0);
+    expect(correctedInformation(new Float64Array(4), 2)).toBeNull();
+    expect(() => correctedInformation(Float64Array.of(1, -1), 2)).toThrow(
+      expect.objectContaining({ code: 'bad-parameter' }),
+    );
   });
 });
 
