@@ -36,7 +36,8 @@ const TEXTS: readonly ColumnRole[] = ['sample', 'date', 'note'];
 /**
  * Turns a mapping into a plan.
  *
- * @throws {KernelError} `bad-mapping` naming the missing role, the doubled role or the column without a unit.
+ * @throws {KernelError} `bad-mapping` naming the missing role, the doubled role or column, or the column
+ *   without a unit.
  */
 export function planColumns(mapping: FileMapping): ColumnPlan {
   for (const alternatives of REQUIRED_ROLES[mapping.kind]) {
@@ -46,10 +47,22 @@ export function planColumns(mapping: FileMapping): ColumnPlan {
   const pick = (roles: readonly ColumnRole[]): PlainColumn[] =>
     mapping.columns.filter(({ role }) => roles.includes(role)).map(({ index, header, role }) => ({ index, header, role }));
   const plan = { numbers: pick(NUMBERS), categories: pick(CATEGORIES), texts: pick(TEXTS) };
+  refuseSharedColumns(mapping.columns);
   refuseDoubles([...plan.numbers, ...plan.categories, ...plan.texts]);
   const analytes = mapping.columns.filter(({ role }) => role === 'analyte').map(toAnalyteColumn);
   const width = Math.max(...mapping.columns.map(({ index }) => index)) + 1;
   return { ...plan, analytes, width };
+}
+
+function refuseSharedColumns(columns: readonly ColumnMapping[]): void {
+  const seen = new Map<number, string>();
+  for (const { index, header } of columns) {
+    const other = seen.get(index);
+    if (other !== undefined) {
+      throw new KernelError('bad-mapping', `expected each column once, found column ${index + 1} as “${other}” and “${header}”`);
+    }
+    seen.set(index, header);
+  }
 }
 
 function refuseDoubles(columns: PlainColumn[]): void {

@@ -18,6 +18,8 @@ export const csvOptions = (delimiter: string): Options => ({
   delimiter,
   bom: true,
   columns: false,
+  // Told, not found out from the first line: files put together from several have both.
+  record_delimiter: ['\r\n', '\n', '\r'],
   relax_column_count: true,
   relax_quotes: true,
   skip_empty_lines: false,
@@ -26,7 +28,8 @@ export const csvOptions = (delimiter: string): Options => ({
 
 function toKernelError(error: unknown): unknown {
   if (!(error instanceof CsvError)) return error;
-  const row = typeof error['lines'] === 'number' ? error['lines'] : null;
+  // Records read before it; the one that fails is the next.
+  const row = typeof error['records'] === 'number' ? error['records'] + 1 : null;
   const where = row === null ? '' : `row ${row}: `;
   const found = error.code === 'CSV_MAX_RECORD_SIZE' || error.code === 'CSV_QUOTE_NOT_CLOSED'
     ? 'a quotation mark opens and is not closed'

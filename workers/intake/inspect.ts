@@ -1,4 +1,4 @@
-import { parse } from 'csv-parse/sync';
+import { CsvError, parse } from 'csv-parse/sync';
 import type { ColumnGuess, FileMapping, TableKind } from '#contract/files.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { csvOptions } from './csv-rows.ts';
@@ -28,12 +28,19 @@ function detectDelimiter(text: string): Delimiter {
   return scores.reduce((best, next) => (next.score > best.score ? next : best)).delimiter;
 }
 
+/** Records up to the first that does not parse: reading the whole file tells what is wrong there. */
 function headRecords(text: string, delimiter: string): string[][] {
+  const records: string[][] = [];
+  const keep = (cells: string[]): null => {
+    records.push(cells);
+    return null;
+  };
   try {
-    return parse(text, { ...csvOptions(delimiter), columns: false, to: SAMPLE_ROWS + 1 });
-  } catch {
-    return [];
+    parse(text, { ...csvOptions(delimiter), to: SAMPLE_ROWS + 1, on_record: keep });
+  } catch (error) {
+    if (!(error instanceof CsvError)) throw error;
   }
+  return records;
 }
 
 const COMMA_DECIMAL = /^-?\d+,\d+$/;
@@ -52,18 +59,23 @@ const wholeLines = (text: string, isCut: boolean): string => (isCut ? text.slice
 /**
  * Looks at the first part of a file and guesses separator, table kind and what each column is.
  *
- * @throws {KernelError} `not-text`, `no-header`, `no-rows`.
+ * @throws {KernelError} `not-text`, `no-header`, `no-rows`; `bad-csv` when row 2 does not end in the
+ *   part looked at.
  */
 export async function inspectFile(path: string, fileName: string, sizeBytes: number): Promise<Inspection> {
   const head = await readHead(path);
   const encoding = detectEncoding(head);
-  const text = wholeLines(new TextDecoder(encoding).decode(head), head.length < sizeBytes);
+  const isCut = head.length < sizeBytes;
+  const text = wholeLines(new TextDecoder(encoding).decode(head), isCut);
   const delimiter = detectDelimiter(text);
   const [header, ...rows] = headRecords(text, delimiter);
   if (!header || header.every((cell) => cell.trim() === '')) {
     throw new KernelError('no-header', 'row 1: expected column names, found an empty line');
   }
   const filled = rows.filter((cells) => cells.some((cell) => cell.trim() !== ''));
+  if (filled.length === 0 && isCut) {
+    throw new KernelError('bad-csv', `row 2: expected one CSV record, found no end of it in ${Math.round(head.length / 1024)} KiB; is a quotation mark not closed?`, { row: 2 });
+  }
   if (filled.length === 0) throw new KernelError('no-rows', 'expected rows below the column names, found none');
   const kind: TableKind = guessKind(header, fileName, filled);
   const guess = guessColumns(header, filled, kind);

@@ -35,7 +35,8 @@ export async function previewFile({ path, mapping, rows, collarNames, collarLeng
   const preview: PreviewRow[] = [];
   try {
     await eachRow({ path, delimiter: mapping.delimiter }, (row, cells) => {
-      if (row === 1 || (cells.length === 1 && cells[0]?.trim() === '')) return;
+      if (row === 1) return reader.readHeader(cells);
+      if (cells.length === 1 && cells[0]?.trim() === '') return;
       if (preview.length >= rows) throw new Cancelled();
       const before = problems.listed.length;
       const kept = reader.read(row, cells);

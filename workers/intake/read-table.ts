@@ -1,9 +1,9 @@
 import type { FileCheck, FileMapping } from '#contract/files.ts';
 import type { ColumnStore } from '#server/db/column-store.ts';
-import { eachRow } from './csv-rows.ts';
+import { eachRow, type RowSource } from './csv-rows.ts';
 import { draftOfTable, joinDrafts } from './draft-tables.ts';
 import { knownHoles } from './hole-names.ts';
-import { ProblemList } from './problem-list.ts';
+import { type FoundProblem, ProblemList } from './problem-list.ts';
 import { sortedRows } from './row-order.ts';
 import { resolveDeterminations, settleConflicts, settlePending } from './settle.ts';
 import { TableDraft } from './table-draft.ts';
@@ -55,7 +55,7 @@ export async function readTable(
   let rows = 0;
   let blank = 0;
   await eachRow({ path, delimiter: mapping.delimiter }, (row, cells) => {
-    if (row === 1) return;
+    if (row === 1) return reader.readHeader(cells);
     if (cells.length === 1 && cells[0]?.trim() === '') blank += 1;
     else rows += 1;
     reader.read(row, cells);
@@ -68,6 +68,7 @@ export async function readTable(
   const leftOut = new Uint8Array(draft.rows);
   leftOut.set(fileLeftOut, base?.rows ?? 0);
   settleConflicts(mapping.kind, draft, problems, leftOut);
+  await giveOriginals({ path, delimiter: mapping.delimiter }, problems);
 
   const order = sortedRows(draft).filter((i) => leftOut[i] === 0);
   const rowsAdded = order.reduce((sum, i) => sum + (draft.sourceRow.at(i) > 0 ? 1 : 0), 0);
@@ -79,6 +80,18 @@ export async function readTable(
     byCode: problems.byCode(), marks: problems.marks(), notes,
   };
   return { draft, order, rowsAdded, check, problems };
+}
+
+/** Problems that showed only once all rows were read get their record from a second look at the file. */
+async function giveOriginals(source: RowSource, problems: ProblemList): Promise<void> {
+  const without = new Map<number, FoundProblem[]>();
+  for (const problem of problems.listed) {
+    if (problem.original === '') without.set(problem.row, [...(without.get(problem.row) ?? []), problem]);
+  }
+  if (without.size === 0) return;
+  await eachRow(source, (row, cells) => {
+    for (const problem of without.get(row) ?? []) problem.original = cells.join(source.delimiter);
+  });
 }
 
 function notesOf({ mapping }: ReadTableInput, isWithoutCollars: boolean, blank: number, reader: TableReader): string[] {

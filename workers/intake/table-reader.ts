@@ -1,5 +1,6 @@
 import type { ColumnRole, FileMapping, TableKind } from '#contract/files.ts';
 import { QUALIFIER } from '#contract/tables.ts';
+import { KernelError } from '#kernels/kernel-error.ts';
 import { readNumber } from '#kernels/units/number-text.ts';
 import { ColumnLimits, readAssayCell, type AssayCell } from './assay-cells.ts';
 import { planColumns, type AnalyteColumn, type ColumnPlan } from './column-plan.ts';
@@ -36,6 +37,10 @@ export class TableReader implements RowValues {
   readonly #texts = new Map<ColumnRole, string>();
   readonly #assays: AssayCell[] = [];
   readonly #headers = new Map<ColumnRole, string>();
+  /** Columns in which a line end is text: in the others it is no number anyway. */
+  readonly #wordy: { index: number; header: string }[];
+  /** Cells of the file's own header. */
+  #headerWidth = Number.POSITIVE_INFINITY;
 
   constructor(mapping: FileMapping, context: CheckContext, draft: TableDraft, problems: ProblemList) {
     this.plan = planColumns(mapping);
@@ -46,6 +51,23 @@ export class TableReader implements RowValues {
     this.#draft = draft;
     this.#problems = problems;
     for (const { role, header } of mapping.columns) if (!this.#headers.has(role)) this.#headers.set(role, header);
+    const parsed = new Set([...this.plan.numbers, ...this.plan.analytes].map(({ index }) => index));
+    this.#wordy = mapping.columns.filter(({ index }) => !parsed.has(index));
+  }
+
+  /**
+   * Takes row 1, which names the columns.
+   *
+   * @throws {KernelError} `bad-mapping` at the first column the mapping reads under another name.
+   */
+  readHeader(cells: readonly string[]): void {
+    this.#headerWidth = cells.length;
+    for (const { index, header, role } of this.#mapping.columns) {
+      if (role === 'skip' || cells[index]?.trim() === header.trim()) continue;
+      const cell = cells[index];
+      const found = cell === undefined ? `${cells.length} ${cells.length === 1 ? 'column' : 'columns'} only` : `“${cell.trim()}”`;
+      throw new KernelError('bad-mapping', `row 1: expected “${header.trim()}” as column ${index + 1}, found ${found}`, { index });
+    }
   }
 
   number(role: ColumnRole): number {
@@ -68,6 +90,11 @@ export class TableReader implements RowValues {
       tell('', 'row-short', `expected at least ${this.plan.width} cells, found ${cells.length}`, 'aside', '');
       return false;
     }
+    if (cells.slice(this.#headerWidth).some((cell) => cell.trim() !== '')) {
+      tell('', 'row-long', `expected at most ${this.#headerWidth} cells, found ${cells.length}`, 'aside', '');
+      return false;
+    }
+    for (const { index, header } of this.#wordy) this.#tellLines(cells[index] ?? '', header, tell);
     const isReadable = [this.#readPlain(cells, tell), this.#readAssays(cells, tell)].every(Boolean);
     const findings = isReadable ? checkRow(this.#kind, this, this.#context) : [];
     for (const { role, code, message, severity } of findings) {
@@ -76,6 +103,13 @@ export class TableReader implements RowValues {
     if (!isReadable || findings.some(({ severity }) => severity === 'aside')) return false;
     this.#keep(row, cells);
     return true;
+  }
+
+  /** A quotation mark left open takes in the rows up to the next one: that is told, never passed over. */
+  #tellLines(cell: string, header: string, tell: Teller): void {
+    if (!cell.includes('\n')) return;
+    const lines = cell.split('\n').length;
+    tell(header, 'cell-spans-lines', `expected a cell on one line, found ${lines} lines; is a quotation mark not closed?`, 'warning', cell.slice(0, 200));
   }
 
   #written(role: ColumnRole): string {

@@ -42,6 +42,11 @@ export interface IntakeDeps {
 const QUOTA_BYTES = 20 * 1024 ** 3;
 const PROBLEM_CSV_ROWS = 50_000;
 
+/** A remembered mapping for a file with the same header that is divided otherwise. */
+function asWritten(remembered: FileMapping, { delimiter, decimalMark }: FileMapping): FileMapping {
+  return remembered.delimiter === delimiter ? remembered : { ...remembered, delimiter, decimalMark };
+}
+
 export function createIntake({ db, clock, compute, jobs, record, files, uploads, revisions }: IntakeDeps) {
   const rowOf = async (depositId: number, uploadId: number): Promise<UploadRow> => orNotFound(await uploads.row(depositId, uploadId), 'upload');
   const get = async (depositId: number, uploadId: number): Promise<Upload> => orNotFound(await uploads.find(depositId, uploadId), 'upload');
@@ -52,7 +57,7 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
     const storedName = randomBytes(16).toString('hex');
     const { sha256 } = await files.keep(file.path, storedName);
     const earlier = await uploads.remembered(depositId, inspected.headerSignature);
-    const mapping = earlier ? mappingOf(earlier) : inspected.mapping;
+    const mapping = earlier ? asWritten(mappingOf(earlier), inspected.mapping) : inspected.mapping;
     return transact(db, async (trx) => {
       const id = await uploads.insert(trx, {
         deposit_id: depositId, file_name: fileName, stored_name: storedName, size_bytes: file.size, sha256, uploaded_by: actor.id, uploaded_at: clock().toISOString(),

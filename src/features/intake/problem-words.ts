@@ -3,6 +3,8 @@ import type { Tone } from '#src/components/ui/chip.tsx';
 
 const CODE_WORDS = new Map([
   ['row-short', 'row too short'],
+  ['row-long', 'row too long'],
+  ['cell-spans-lines', 'cell of several lines'],
   ['not-a-number', 'text in a number'],
   ['number-missing', 'number missing'],
   ['text-missing', 'text missing'],
