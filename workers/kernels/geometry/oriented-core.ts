@@ -18,6 +18,8 @@ export interface CoreConvention {
   referenceLine: 'bottom' | 'top';
   /** End of the ellipse's long axis that beta goes to. */
   ellipseEnd: 'down-hole' | 'up-hole';
+  /** Turn in which gamma grows about the normal that points down the hole; right-handed unless said. */
+  gammaSense?: 'right-handed' | 'left-handed';
 }
 
 /** Alpha and beta of a plane on core, degrees. */
@@ -121,8 +123,8 @@ export function coreFromPlane(
 /**
  * Trend and plunge of a line within a plane on core.
  *
- * @param gamma Angle in the plane from the down-hole end of the ellipse's long axis, degrees,
- *   right-handed about the down-hole normal (practice differs; this sense is ours).
+ * @param gamma Angle in the plane from the down-hole end of the ellipse's long axis, degrees, in the
+ *   turn the convention says (practice differs; right-handed about the down-hole normal is ours).
  * @throws {KernelError} `bad-parameter` for angles out of range.
  */
 export function lineFromCore(
@@ -135,6 +137,36 @@ export function lineFromCore(
     throw new KernelError('bad-parameter', `expected gamma in [-360, 360], found ${gamma}`);
   }
   const { axis, normal } = ellipseAxes(hole, angles, convention);
-  const g = toRadians(gamma);
+  const g = toRadians(gamma) * gammaSign(convention);
   return lineOf(combine(Math.cos(g), axis, Math.sin(g), cross(normal, axis)));
+}
+
+/**
+ * Gamma at which a line of a plane would be met on core: the inverse of {@link lineFromCore}.
+ *
+ * @param line Unit vector of the line, either way; its part across the plane is left out.
+ * @returns Degrees in [0, 180): a line has no sense.
+ * @throws {KernelError} `bad-parameter` for angles out of range or a line square to the plane.
+ */
+export function gammaFromLine(
+  hole: HoleDirection,
+  angles: CoreAngles,
+  line: Vector,
+  convention: CoreConvention = DEFAULT_CONVENTION,
+): number {
+  const { axis, normal } = ellipseAxes(hole, angles, convention);
+  const [along, across] = [dot(line, axis), dot(line, cross(normal, axis))];
+  if (!(Math.hypot(along, across) > 1e-9)) {
+    throw new KernelError(
+      'bad-parameter',
+      `expected a line in the plane, found (${line.join(', ')})`,
+    );
+  }
+  const gamma = toDegrees(Math.atan2(across, along)) * gammaSign(convention);
+  const half = wrapAzimuth(2 * gamma) / 2;
+  return half >= 180 ? 0 : half;
+}
+
+function gammaSign({ gammaSense = 'right-handed' }: CoreConvention): 1 | -1 {
+  return gammaSense === 'right-handed' ? 1 : -1;
 }

@@ -55,3 +55,20 @@ function reasonToLeaveOut(
   if (Math.abs(holeDip) > steepestHoleDeg) return 'steep-hole';
   return confidences.includes(confidence) ? null : 'low-confidence';
 }
+
+/** How far an orientation line is to be trusted. */
+export type LineConfidence = 'good' | 'moderate' | 'poor' | 'none';
+
+/**
+ * Confidence of an orientation line from the angle by which it misses the line of the next run: up to
+ * 10 degrees good, up to 20 moderate (common practice, from memory).
+ *
+ * @param lockAngleDeg Any turn; null or NaN where the core is not oriented or does not lock.
+ */
+export function lineConfidence(lockAngleDeg: number | null): LineConfidence {
+  if (lockAngleDeg === null || !Number.isFinite(lockAngleDeg)) return 'none';
+  const turned = Math.abs(lockAngleDeg) % 360;
+  const angle = Math.min(turned, 360 - turned);
+  if (angle <= 10) return 'good';
+  return angle <= 20 ? 'moderate' : 'poor';
+}

@@ -1,6 +1,13 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { coreFromPlane, lineFromCore, planeFromCore } from '#kernels/geometry/oriented-core.ts';
+import { tangentOf } from '#kernels/geometry/directions.ts';
+import {
+  coreFromPlane,
+  gammaFromLine,
+  lineFromCore,
+  planeFromCore,
+} from '#kernels/geometry/oriented-core.ts';
+import { lineVector } from '#kernels/geometry/planes.ts';
 
 describe('planeFromCore', () => {
   // Computed from vectors, bottom line.
@@ -111,6 +118,66 @@ describe('lineFromCore', () => {
     const line = lineFromCore({ azimuth: 315, dip: -55 }, { alpha: 45, beta: 40 }, gamma);
     expect(line.plunge).toBeCloseTo(plunge, 3);
     expect(line.trend).toBeCloseTo(trend, 3);
+  });
+
+  it('has the worked plane of that hole: t, normal and dip 74.422842→163.154496 (computed)', () => {
+    const hole = { azimuth: 315, dip: -55 };
+    [-0.40558, 0.40558, -0.819152].forEach((value, k) =>
+      expect(tangentOf(hole)[k]).toBeCloseTo(value, 6),
+    );
+    const { normal, dip, dipDirection } = planeFromCore(hole, { alpha: 45, beta: 40 });
+    [0.279148, -0.921935, 0.268536].forEach((value, k) => expect(normal[k]).toBeCloseTo(value, 6));
+    expect(dip).toBeCloseTo(74.422842, 6);
+    expect(dipDirection).toBeCloseTo(163.154496, 6);
+  });
+
+  it('counts beta 90 to the north in a hole plunging east, seen looking down the hole', () => {
+    // alpha 0: the plane holds the core axis, its normal is the radial line at beta
+    const { normal } = planeFromCore({ azimuth: 90, dip: -60 }, { alpha: 0, beta: 90 });
+    [0, 1, 0].forEach((value, k) => expect(normal[k]).toBeCloseTo(value, 9));
+  });
+
+  it('turns gamma the other way where the convention says so', () => {
+    const hole = { azimuth: 315, dip: -55 };
+    const leftHanded = {
+      referenceLine: 'bottom',
+      ellipseEnd: 'down-hole',
+      gammaSense: 'left-handed',
+    } as const;
+    const line = lineFromCore(hole, { alpha: 45, beta: 40 }, -30, leftHanded);
+    expect(line.plunge).toBeCloseTo(35.898, 3);
+    expect(line.trend).toBeCloseTo(241.513, 3);
+  });
+
+  it('returns to its gamma through the line', () => {
+    fc.assert(
+      fc.property(
+        fc.integer({ min: 0, max: 359 }),
+        fc.integer({ min: -89, max: 60 }),
+        fc.integer({ min: 1, max: 89 }),
+        fc.integer({ min: 0, max: 359 }),
+        fc.integer({ min: 0, max: 179 }),
+        fc.constantFrom('right-handed', 'left-handed'),
+        (azimuth, dip, alpha, beta, gamma, gammaSense) => {
+          const convention = { referenceLine: 'top', ellipseEnd: 'up-hole', gammaSense } as const;
+          const [hole, angles] = [
+            { azimuth, dip },
+            { alpha, beta },
+          ];
+          const line = lineVector(lineFromCore(hole, angles, gamma, convention));
+          const difference = Math.abs(gammaFromLine(hole, angles, line, convention) - gamma);
+          expect(Math.min(difference, 180 - difference)).toBeLessThan(1e-6);
+        },
+      ),
+    );
+  });
+
+  it('has no gamma for a line square to the plane', () => {
+    const hole = { azimuth: 315, dip: -55 };
+    const angles = { alpha: 45, beta: 40 };
+    const { normal } = planeFromCore(hole, angles);
+    expect(() => gammaFromLine(hole, angles, normal)).toThrow(/a line in the plane/);
+    expect(() => gammaFromLine(hole, angles, [NaN, 0, 0])).toThrow(/a line in the plane/);
   });
 
   it('refuses a gamma that is no angle', () => {

@@ -4,6 +4,7 @@ import { blindGrid, blindZone } from '#kernels/orientation/blind-zone.ts';
 import {
   DEFAULT_LIMITS,
   filterMeasurements,
+  lineConfidence,
   type CoreMeasurement,
 } from '#kernels/orientation/measurement-filter.ts';
 
@@ -71,5 +72,22 @@ describe('filter of measurements', () => {
     const limits = { ...DEFAULT_LIMITS, confidences: ['good'] };
     expect(filterMeasurements([good], limits).kept).toHaveLength(0);
     expect(filterMeasurements([]).leftOut).toEqual([]);
+  });
+});
+
+describe('confidence of an orientation line', () => {
+  it.each([
+    [0, 'good'],
+    [10, 'good'],
+    [-10, 'good'],
+    [355, 'good'],
+    [10.1, 'moderate'],
+    [-20, 'moderate'],
+    [20.1, 'poor'],
+    [180, 'poor'],
+    [null, 'none'],
+    [NaN, 'none'],
+  ] as const)('lock angle %s is %s', (angle, confidence) => {
+    expect(lineConfidence(angle)).toBe(confidence);
   });
 });
