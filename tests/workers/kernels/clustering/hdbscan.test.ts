@@ -48,13 +48,14 @@ describe('scikit-learn on published data', () => {
     it(`${dataset}, groups of ${minClusterSize}, ${minSamples} samples`, () => {
       const found = hdbscan({ columns: columnsOf(example), minClusterSize, minSamples });
       const theirs = numberGroups(labels, { rowOf: null, nRows: labels.length });
-      // Mutual reachability is full of ties (one core distance stands for many pairs), and either
-      // order of equal merges is right: a few rows on a rim may go one way or the other.
+      // In three cases one row reaches two groups at exactly its own core distance (computed in numpy:
+      // meuse row 98, jura row 204, moons row 91), so either is right. With its rows in another order
+      // scikit-learn itself moves one row and strengths by up to .03 here, by .07 elsewhere.
       const differ = theirs.filter((label, row) => label !== found.labels[row]);
-      expect(differ.length).toBeLessThanOrEqual(3);
+      expect(differ.length).toBeLessThanOrEqual(1);
       found.strength.forEach((value, row) => {
         if (found.labels[row] !== theirs[row]) return;
-        expect(Math.abs(value - probabilities[row]!)).toBeLessThan(0.03);
+        expect(Math.abs(value - probabilities[row]!)).toBeLessThan(0.05);
       });
     });
   }
