@@ -27,7 +27,10 @@ const FEW_PAIRS = 30;
  * Median and 90th percentile of half absolute relative differences over the relative sd of normal
  * errors: quantiles .75 and .95 of the normal over sqrt(2).
  */
-export const HARD_PER_RELATIVE_SD = { median: 0.4769362762044698, p90: 1.1630871536766736 } as const;
+export const HARD_PER_RELATIVE_SD = {
+  median: 0.4769362762044698,
+  p90: 1.1630871536766736,
+} as const;
 
 /** Guide for `cvAverage`, % (common practice, from memory): not a verdict. Gold about twice. */
 export const PRECISION_GUIDE: Readonly<Record<DuplicateStage, number>> = {
