@@ -52,7 +52,11 @@ export function compositeGrade(
   }
   checkGrade(plan, grade, densityTPerM3);
   const count = plan.fromM.length;
-  const [assayedM, replacedM, weight] = [0, 1, 2].map(() => new Float64Array(count));
+  const sums = {
+    assayedM: new Float64Array(count),
+    replacedM: new Float64Array(count),
+    weight: new Float64Array(count),
+  };
   const out = emptyGrade(count);
   for (let piece = 0; piece < plan.pieceM.length; piece++) {
     const row = plan.pieceRow[piece]!;
@@ -68,17 +72,28 @@ export function compositeGrade(
       out.outside.metal += share * value;
       continue;
     }
-    assayedM![composite]! += lengthM;
-    if (grade.isReplaced?.[row] === 1) replacedM![composite]! += lengthM;
-    weight![composite]! += share;
+    sums.assayedM[composite]! += lengthM;
+    if (grade.isReplaced?.[row] === 1) sums.replacedM[composite]! += lengthM;
+    sums.weight[composite]! += share;
     out.metal[composite]! += share * value;
   }
-  for (let i = 0; i < count; i++) {
-    const assayed = assayedM![i]!;
-    out.assayedShare[i] = Math.min(1, assayed / (plan.toM[i]! - plan.fromM[i]!));
-    if (assayed > 0) out.replacedShare[i] = Math.min(1, replacedM![i]! / assayed);
+  settle(plan, out, sums, leastAssayedShare);
+  return out;
+}
+
+/** Turns the sums of each composite into its grade and shares, or withholds the grade. */
+function settle(
+  { fromM, toM }: CompositePlan,
+  out: CompositeGrade,
+  sums: { assayedM: Float64Array; replacedM: Float64Array; weight: Float64Array },
+  leastAssayedShare: number,
+): void {
+  for (let i = 0; i < fromM.length; i++) {
+    const assayed = sums.assayedM[i]!;
+    out.assayedShare[i] = Math.min(1, assayed / (toM[i]! - fromM[i]!));
+    if (assayed > 0) out.replacedShare[i] = Math.min(1, sums.replacedM[i]! / assayed);
     if (assayed > 0 && out.assayedShare[i]! >= leastAssayedShare - 1e-9) {
-      out.valuesPpm[i] = out.metal[i]! / weight![i]!;
+      out.valuesPpm[i] = out.metal[i]! / sums.weight[i]!;
       out.keptMetal += out.metal[i]!;
     } else {
       out.withheld.count++;
@@ -86,7 +101,6 @@ export function compositeGrade(
       out.withheld.metal += out.metal[i]!;
     }
   }
-  return out;
 }
 
 function emptyGrade(count: number): CompositeGrade {
