@@ -85,11 +85,14 @@ export function meansOf(
 ): Float64Array {
   const p = coordinates.length;
   const means = new Float64Array(sizes.length * p);
-  coordinates.forEach((column, k) => {
-    groupOf.forEach((group, row) => {
-      if (group >= 0) means[group * p + k]! += column[row]! / sizes[group]!;
-    });
-  });
+  for (let k = 0; k < p; k++) {
+    const column = coordinates[k]!;
+    for (let row = 0; row < groupOf.length; row++) {
+      const group = groupOf[row]!;
+      if (group >= 0) means[group * p + k]! += column[row]!;
+    }
+  }
+  for (let at = 0; at < means.length; at++) means[at]! /= sizes[Math.floor(at / p)]!;
   return means;
 }
 

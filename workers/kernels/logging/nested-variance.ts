@@ -59,11 +59,16 @@ export function nestedVariance(
   const fCodes = ratio(parts.codes, codeFreedom, parts.within, rowFreedom, parts.total);
   const fParents = ratio(parts.parents, nParents - 1, parts.codes, codeFreedom, parts.total);
   const random = seededRandom(seed);
+  const rowsByParent = rowsOfParents(codeOf, parentOf);
+  const moving = codeOf.slice();
   let [reachedCodes, reachedParents] = [0, 0];
   for (let draw = 0; draw < draws; draw++) {
     if (fCodes !== null) {
-      const moved = partsOf({ ...sums, codeOf: rowsShuffled(codeOf, parentOf, random) });
-      const f = ratio(moved.codes, codeFreedom, moved.within, rowFreedom, parts.total) ?? Infinity;
+      shuffleInside(moving, rowsByParent, random);
+      const moved = betweenLevels(sums, meansOf(coordinates, moving, sizes));
+      // Shuffling inside parents leaves these where they are, so the rest is within codes.
+      const within = parts.codes + parts.within - moved.codes;
+      const f = ratio(moved.codes, codeFreedom, within, rowFreedom, parts.total) ?? Infinity;
       if (f >= fCodes * (1 - 1e-12)) reachedCodes += 1;
     }
     if (fParents !== null) {
@@ -163,18 +168,27 @@ function shuffled(values: Int32Array, random: Random): Int32Array {
   return out;
 }
 
-/** Codes of rows shuffled among the rows of each parent. */
-function rowsShuffled(codeOf: Int32Array, parentOf: Int32Array, random: Random): Int32Array {
-  const out = codeOf.slice();
-  for (const parent of new Set(parentOf)) {
-    const rows = [...codeOf.keys()].filter(
+/** Rows of each parent that has any. */
+function rowsOfParents(codeOf: Int32Array, parentOf: Int32Array): Int32Array[] {
+  return [...new Set(parentOf)].map((parent) =>
+    Int32Array.from(codeOf.keys()).filter(
       (row) => codeOf[row]! >= 0 && parentOf[codeOf[row]!] === parent,
-    );
-    const codes = shuffled(
-      Int32Array.from(rows, (row) => codeOf[row]!),
-      random,
-    );
-    rows.forEach((row, i) => (out[row] = codes[i]!));
+    ),
+  );
+}
+
+/** Shuffles the codes of rows among the rows of each parent, in place. */
+function shuffleInside(
+  codeOf: Int32Array,
+  rowsByParent: readonly Int32Array[],
+  random: Random,
+): void {
+  for (const rows of rowsByParent) {
+    for (let i = rows.length - 1; i > 0; i--) {
+      const [a, b] = [rows[i]!, rows[random.below(i + 1)]!];
+      const kept = codeOf[a]!;
+      codeOf[a] = codeOf[b]!;
+      codeOf[b] = kept;
+    }
   }
-  return out;
 }

@@ -1,8 +1,7 @@
 import { adjustedRandIndex } from '#kernels/clustering/agreement.ts';
-import { mergeIntervals } from '#kernels/intervals/merge-intervals.ts';
-import { KernelError } from '#kernels/kernel-error.ts';
 import { compareCodePoints } from '#kernels/tables/category.ts';
 import type { CodedInterval } from './code-lines.ts';
+import { crossReleases } from './release-pieces.ts';
 
 /** Metres of a code in the old release under a code in the new. */
 export interface MovedMetres {
@@ -50,10 +49,7 @@ export function releaseChange(
   before: readonly CodedInterval[],
   after: readonly CodedInterval[],
 ): ReleaseChange {
-  const [old, fresh] = [byHole(before, 'old'), byHole(after, 'new')];
-  const holes = [...new Set([...old.keys(), ...fresh.keys()])].sort(compareCodePoints);
-  if (holes.length === 0)
-    throw new KernelError('too-few-rows', 'expected coded intervals, found none');
+  const pieces = crossReleases(before, after);
   const cells = new Map<string, MovedMetres>();
   const domains = new Map<string, DomainChange>();
   const domain = (code: string): DomainChange => {
@@ -69,25 +65,24 @@ export function releaseChange(
     return found;
   };
   const sums = { common: 0, added: 0, removed: 0, moved: 0 };
-  for (const hole of holes) {
-    for (const { metres, from, to } of piecesOf(old.get(hole) ?? [], fresh.get(hole) ?? [])) {
-      if (from !== null) domain(from).metresBefore += metres;
-      if (to !== null) domain(to).metresAfter += metres;
-      if (from !== null && to !== null) {
-        sums.common += metres;
-        if (from === to) domain(from).keptMetres += metres;
-        else sums.moved += metres;
-        const key = JSON.stringify([from, to]);
-        const cell = cells.get(key) ?? { before: from, after: to, metres: 0 };
-        cell.metres += metres;
-        cells.set(key, cell);
-      } else if (to !== null) {
-        sums.added += metres;
-        domain(to).addedMetres += metres;
-      } else if (from !== null) {
-        sums.removed += metres;
-        domain(from).removedMetres += metres;
-      }
+  for (const { fromM, toM, before: from, after: to } of pieces) {
+    const metres = toM - fromM;
+    if (from !== null) domain(from).metresBefore += metres;
+    if (to !== null) domain(to).metresAfter += metres;
+    if (from !== null && to !== null) {
+      sums.common += metres;
+      if (from === to) domain(from).keptMetres += metres;
+      else sums.moved += metres;
+      const key = JSON.stringify([from, to]);
+      const cell = cells.get(key) ?? { before: from, after: to, metres: 0 };
+      cell.metres += metres;
+      cells.set(key, cell);
+    } else if (to !== null) {
+      sums.added += metres;
+      domain(to).addedMetres += metres;
+    } else if (from !== null) {
+      sums.removed += metres;
+      domain(from).removedMetres += metres;
     }
   }
   return {
@@ -100,36 +95,6 @@ export function releaseChange(
     ),
     domains: [...domains.values()].sort((a, b) => compareCodePoints(a.code, b.code)),
   };
-}
-
-function byHole(rows: readonly CodedInterval[], name: string): Map<string, CodedInterval[]> {
-  const holes = new Map<string, CodedInterval[]>();
-  rows.forEach((row, at) => {
-    if (row.hole === '' || row.code === '')
-      throw new KernelError(
-        'bad-parameter',
-        `expected a hole and a code in row ${at} of the ${name} release, found "${row.hole}", "${row.code}"`,
-        { row: at },
-      );
-    const own = holes.get(row.hole);
-    if (own) own.push(row);
-    else holes.set(row.hole, [row]);
-  });
-  return holes;
-}
-
-/** Pieces of one hole with their old and new code, null where a release has none. */
-function piecesOf(before: readonly CodedInterval[], after: readonly CodedInterval[]) {
-  const tableOf = (rows: readonly CodedInterval[]) => ({
-    fromM: Float64Array.from(rows, ({ fromM }) => fromM),
-    toM: Float64Array.from(rows, ({ toM }) => toM),
-  });
-  const merged = mergeIntervals(tableOf(before), tableOf(after));
-  return Array.from(merged.fromM, (fromM, i) => ({
-    metres: merged.toM[i]! - fromM,
-    from: before[merged.rowA[i]!]?.code ?? null,
-    to: after[merged.rowB[i]!]?.code ?? null,
-  }));
 }
 
 /**

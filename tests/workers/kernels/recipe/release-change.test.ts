@@ -1,6 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { codingAgreement, releaseChange } from '#kernels/recipe/release-change.ts';
+import { releaseDifferences } from '#kernels/recipe/release-pieces.ts';
 import { gradeChanges } from '#kernels/recipe/release-grades.ts';
 import { categoryFrom } from '#kernels/tables/category.ts';
 
@@ -136,6 +137,35 @@ describe('change between releases', () => {
   it('agreement leaves out what one release does not code', () => {
     expect(codingAgreement(['A', 'A', 'B', 'B', null], ['x', 'x', 'y', 'y', 'y'])).toBe(1);
     expect(codingAgreement(['A', null], [null, 'x'])).toBeNull();
+  });
+});
+
+describe('interval by interval', () => {
+  it('lists what changed, neighbours of one change joined', () => {
+    const old = [
+      ...hole([
+        ['A', 5],
+        ['A', 5],
+        ['B', 5],
+      ]),
+      ...hole([['A', 2]], 'DH2'),
+    ];
+    const fresh = [
+      ...hole([
+        ['A', 4],
+        ['B', 6],
+        [null, 2],
+        ['B', 3],
+        ['C', 1],
+      ]),
+      ...hole([['A', 2]], 'DH2'),
+    ];
+    expect(releaseDifferences(old, fresh)).toEqual([
+      { hole: 'DH1', fromM: 4, toM: 10, before: 'A', after: 'B' },
+      { hole: 'DH1', fromM: 10, toM: 12, before: 'B', after: null },
+      { hole: 'DH1', fromM: 15, toM: 16, before: null, after: 'C' },
+    ]);
+    expect(releaseDifferences(old, old)).toEqual([]);
   });
 });
 
