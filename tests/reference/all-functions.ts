@@ -2,11 +2,13 @@ import type { Adapter, Adapters } from './adapter.ts';
 import { AGREEMENT } from './functions/agreement.ts';
 import { CLUSTER_QUALITY } from './functions/cluster-quality.ts';
 import { CROSSTAB } from './functions/crosstab.ts';
+import { DBSCAN } from './functions/dbscan.ts';
 import { DESURVEY } from './functions/desurvey.ts';
 import { DIP } from './functions/dip.ts';
 import { DIRECTIONS } from './functions/directions.ts';
 import { GMM } from './functions/gmm.ts';
 import { GROUP_TEST } from './functions/group-test.ts';
+import { HIERARCHICAL } from './functions/hierarchical.ts';
 import { KMEANS } from './functions/kmeans.ts';
 import { LOGRATIO } from './functions/logratio.ts';
 import { MIXTURE_1D } from './functions/mixture-1d.ts';
@@ -21,11 +23,13 @@ const GROUPS: readonly Adapters[] = [
   AGREEMENT,
   CLUSTER_QUALITY,
   CROSSTAB,
+  DBSCAN,
   DESURVEY,
   DIP,
   DIRECTIONS,
   GMM,
   GROUP_TEST,
+  HIERARCHICAL,
   KMEANS,
   LOGRATIO,
   MIXTURE_1D,

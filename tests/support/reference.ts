@@ -70,11 +70,17 @@ const SetFile = z.object({
   dataset: z.string(),
   data_file: z.string().nullable(),
   source: z.string(),
-  checks: z.array(Check),
+  checks: z.array(z.unknown()),
 });
 
 /** One expected value with how it was computed; see tests/fixtures/reference/README.md. */
 export type ReferenceCheck = z.infer<typeof Check>;
+
+/** A check that cannot be run as it is written. */
+export interface UnreadableCheck {
+  id: string;
+  message: string;
+}
 
 /** A published data set and the values established libraries computed from it. */
 export interface ReferenceSet {
@@ -85,6 +91,8 @@ export interface ReferenceSet {
   /** Rows of the CSV as text, in file order; empty when the set has no data file. */
   rows: Record<string, string>[];
   checks: ReferenceCheck[];
+  /** Checks that do not keep to the layout, and why. */
+  unreadable: UnreadableCheck[];
   /** The check with this id; throws when there is none. */
   check(id: string): ReferenceCheck;
   /** Checks of a group, optionally only those of one function; throws when there is none. */
@@ -114,15 +122,17 @@ export function readReference(folder: string, name: string): ReferenceSet {
   const file = join(folder, `${name}.json`);
   const known = loaded.get(file);
   if (known) return known;
-  const { dataset, source, data_file, checks } = SetFile.parse(
+  const { dataset, source, data_file, ...written } = SetFile.parse(
     JSON.parse(readFileSync(file, 'utf8')),
   );
+  const { checks, unreadable } = readChecks(written.checks);
   const set: ReferenceSet = {
     name: dataset,
     file,
     source,
     rows: data_file === null ? [] : readRows(join(folder, data_file)),
     checks,
+    unreadable,
     check: (id) => {
       const found = checks.find((check) => check.id === id);
       if (!found) throw new Error(`${dataset} has no check ${id}`);
@@ -144,6 +154,20 @@ export function readReference(folder: string, name: string): ReferenceSet {
 /** The set a check was read with; undefined for a check made up by a test. */
 export function ownerOf(check: ReferenceCheck): ReferenceSet | undefined {
   return [...loaded.values()].find((set) => set.checks.includes(check));
+}
+
+/** One check that breaks the layout does not keep the others from being run. */
+function readChecks(written: unknown[]): Pick<ReferenceSet, 'checks' | 'unreadable'> {
+  const unreadable: UnreadableCheck[] = [];
+  const checks = written.flatMap((item, i) => {
+    const read = Check.safeParse(item);
+    if (read.success) return [read.data];
+    const named = z.looseObject({ id: z.string() }).safeParse(item);
+    const id = named.success ? named.data.id : `check ${i + 1}`;
+    unreadable.push({ id, message: z.prettifyError(read.error).replaceAll('\n', ' ') });
+    return [];
+  });
+  return { checks, unreadable };
 }
 
 function readRows(file: string): Record<string, string>[] {

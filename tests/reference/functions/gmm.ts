@@ -12,7 +12,7 @@ const FAMILY_OF: ReadonlyMap<string, CovarianceFamily> = new Map([
 ]);
 
 /** Starts enough for the best optimum known of tables of this size. */
-const STARTS = 25;
+const STARTS = 16;
 
 const fits = remembered<GaussianMixture>();
 

@@ -5,7 +5,7 @@ import { dataKey, inputNumber, inputText, remembered, type Adapters } from '../a
 import { transformedValues } from '../transform.ts';
 
 /** Random starts besides the deterministic ones; rare optima need this many. */
-const RESTARTS = 120;
+const RESTARTS = 100;
 
 /** Narrower than this share of the total sd a component sits on tied values: no fit, a collapse. */
 const LEAST_SD_SHARE = 0.05;

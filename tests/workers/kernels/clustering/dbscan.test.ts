@@ -1,28 +1,6 @@
 import fc from 'fast-check';
-import { describe, expect, it } from 'vitest';
+import { expect, it } from 'vitest';
 import { dbscan, type DbscanInput } from '#kernels/clustering/dbscan.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { toColumns, transformedTable } from '#tests/support/reference-transform.ts';
-import { loadReference } from '#tests/support/reference.ts';
-
-describe('reference data', () => {
-  for (const name of ['jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('dbscan')) {
-      it(check.id, () => {
-        const found = dbscan({
-          columns: toColumns(transformedTable(set, check)),
-          eps: Number(check.inputs['eps']),
-          minPoints: Number(check.inputs['minPts']),
-        });
-        if (check.function === 'dbscan_labels') expectWithin(check, found.labels);
-        else if (check.function === 'dbscan_core_mask') expectWithin(check, found.core);
-        else
-          expectWithin(check, { clusters: found.clusters, noise: found.nNoise, core: found.nCore });
-      });
-    }
-  }
-});
 
 /** Two runs of rows 1 apart, 10 between them, one row alone and one missing. */
 const line = [Float64Array.of(0, 1, 2, 12, 13, 14, 15, 40, NaN)];

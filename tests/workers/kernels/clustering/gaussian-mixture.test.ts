@@ -1,5 +1,5 @@
 import fc from 'fast-check';
-import { describe, expect, it } from 'vitest';
+import { expect, it } from 'vitest';
 import {
   gaussianMixture,
   type GaussianMixtureInput,
@@ -8,43 +8,6 @@ import { mixtureMembership } from '#kernels/clustering/mixture-membership.ts';
 import { COVARIANCE_FAMILIES, mixtureParameterCount } from '#kernels/clustering/mixture-model.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { toColumns, transformedTable } from '#tests/support/reference-transform.ts';
-import { loadReference } from '#tests/support/reference.ts';
-
-/** The usual names of the families in the reference values. */
-const FAMILY = new Map([
-  ['VVV', 'full'],
-  ['VVI', 'diagonal'],
-  ['VII', 'spherical'],
-  ['EEE', 'tied'],
-] as const);
-
-describe('reference data', () => {
-  for (const name of ['jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('gmm', 'gmm_loglik')) {
-      if (check.fragile ?? check.collapsed) continue;
-      const id = check.id.replace(/\.loglik$/, '');
-      it(id, () => {
-        const [, , model = ''] = check.id.split('.');
-        const family = [...FAMILY].find(([usual]) => usual === model)?.[1] ?? 'full';
-        const fitted = gaussianMixture({
-          columns: toColumns(transformedTable(set, check)),
-          k: check.inputs.k ?? 0,
-          family,
-          seed: 1,
-          starts: 8,
-          rowsPerParameter: 1, // the reference programs have no such limit
-        });
-        expectWithin(check, fitted.logLik);
-        expectWithin(set.check(`${id}.bic`), fitted.bic);
-        expectWithin(set.check(`${id}.df`), fitted.parameters);
-        expect(fitted.icl).toBeGreaterThanOrEqual(fitted.bic);
-      });
-    }
-  }
-});
 
 /** Rows of two groups, sd 1 and 2, 8 apart in the first of p coordinates. */
 function twoGroups(n: number, p: number, seed = 1): Float64Array[] {

@@ -1,5 +1,5 @@
 import fc from 'fast-check';
-import { describe, expect, it } from 'vitest';
+import { expect, it } from 'vitest';
 import { adjustedRandIndex } from '#kernels/clustering/agreement.ts';
 import { cutTree } from '#kernels/clustering/cut-tree.ts';
 import {
@@ -8,32 +8,6 @@ import {
   type Linkage,
 } from '#kernels/clustering/hierarchical.ts';
 import { seededRandom } from '#kernels/random.ts';
-import { expectWithin } from '#tests/support/expect-within.ts';
-import { toColumns, transformedTable } from '#tests/support/reference-transform.ts';
-import { loadReference } from '#tests/support/reference.ts';
-
-describe('reference data', () => {
-  for (const name of ['jura_prediction', 'meuse'] as const) {
-    const set = loadReference(name);
-    for (const check of set.checksOf('hierarchical')) {
-      it(check.id, () => {
-        const [linkage = ''] = check.function.split('_');
-        const tree = hierarchicalTree({
-          columns: toColumns(transformedTable(set, check)),
-          linkage: linkage === 'average' || linkage === 'complete' ? linkage : 'ward',
-        });
-        if (check.function.endsWith('_last'))
-          expectWithin(check, tree.heights.slice(-Number(check.inputs['count'])));
-        else if (check.function.endsWith('_sum'))
-          expectWithin(
-            check,
-            tree.heights.reduce((sum, height) => sum + height, 0),
-          );
-        else expectWithin(check, cutTree(tree, check.inputs.k ?? 0));
-      });
-    }
-  }
-});
 
 const six = [Float64Array.of(0, 0, 1, 5, 5, 6), Float64Array.of(0, 1, 0, 5, 6, 5)];
 const tree = (change: Partial<HierarchicalInput> = {}) =>
