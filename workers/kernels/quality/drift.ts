@@ -1,7 +1,17 @@
+import { changePoints } from '#kernels/clustering/change-points.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { requireFinite } from '#kernels/statistics/require-finite.ts';
 import { theilSen } from '#kernels/statistics/theil-sen.ts';
+
+/** A stretch of results about one level. */
+export interface Level {
+  /** First and last result, by their place in the input. */
+  from: number;
+  to: number;
+  n: number;
+  mean: number;
+}
 
 /** How control results move over time, in sds. */
 export interface Drift {
@@ -11,6 +21,8 @@ export interface Drift {
   change: number;
   /** Running sum of z, in order of date. */
   cusum: Float64Array;
+  /** Stretches about one level, in order; one when no change of mean is worth its cost. */
+  levels: Level[];
   /** Where the mean of z changes most: the last result before; null when no change is likely. */
   changeAfter: number | null;
   /** Share of random orders in which some place divides the results as sharply. */
@@ -25,15 +37,16 @@ const DRAWS = 999;
 const ACCEPTED_P = 0.05;
 
 /**
- * Drift of control results: a robust slope over the order of dates, the running sum, and the place
- * where the mean changes most, with a permutation p. Results of several materials may be joined, since
+ * Drift of control results: a robust slope over the order of dates, the running sum, the levels between
+ * change points, and the place where the mean changes most, with a permutation p. Results of several materials may be joined, since
  * z has no unit.
  *
  * @param z (x - certified value) / sd in order of date, NaN where missing; at least eight. Not
  *   modified.
  * @param options.seed Of the permutations.
  * @throws {KernelError} `too-few-rows`; `not-finite` with { row }; `bad-parameter` for draws.
- * @see Sen (1968), JASA 63; Page (1954), Biometrika 41 (running sums); Pettitt (1979), Appl. Statist.
+ * @see Sen (1968), JASA 63; Page (1954), Biometrika 41 (running sums); Killick,
+ *   Fearnhead & Eckley (2012), JASA 107 (levels); Pettitt (1979), Appl. Statist.
  *   28 (one change at an unknown place, from memory).
  */
 export function drift(
@@ -63,10 +76,25 @@ export function drift(
     slope,
     change: slope * (n - 1),
     cusum,
+    levels: levelsOf(values, rows),
     changeAfter: p <= ACCEPTED_P ? rows[at]! : null,
     changeP: p,
     notes: step > 1 ? [`the slope rests on one in ${step} of ${n} results`] : [],
   };
+}
+
+/** Change points of the mean, scaled by the noise from one result to the next. */
+function levelsOf(values: Float64Array, rows: Uint32Array): Level[] {
+  const { segmentOf, segments } = changePoints({
+    columns: [values],
+    sequence: new Int32Array(values.length),
+  });
+  return Array.from({ length: segments }, (_, segment) => {
+    const [from, last] = [segmentOf.indexOf(segment), segmentOf.lastIndexOf(segment)];
+    const part = values.subarray(from, last + 1);
+    const mean = part.reduce((sum, value) => sum + value, 0) / part.length;
+    return { from: rows[from]!, to: rows[last]!, n: part.length, mean };
+  });
 }
 
 /** Place that divides best: the largest |sum of deviations| scaled by its sd under random order. */

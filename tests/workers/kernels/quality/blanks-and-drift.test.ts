@@ -95,6 +95,26 @@ describe('drift', () => {
     expect(found.changeP).toBe(1 / 1000);
   });
 
+  it('divides twelve results at 4 and 8 (computed: exact dynamic programme)', () => {
+    const z = Float64Array.of(0.1, -0.2, 0.05, 0, 3.1, 2.9, 3.05, 3, -1, -1.1, -0.95, -1.05);
+    const { levels } = drift(z, { seed: 1, draws: 19 });
+    expect(levels.map(({ from, to, n }) => [from, to, n])).toEqual([
+      [0, 3, 4],
+      [4, 7, 4],
+      [8, 11, 4],
+    ]);
+    expect(levels[1]?.mean).toBeCloseTo(3.0125, 12);
+  });
+
+  it('gives levels by their place in the input when results are missing', () => {
+    const z = Float64Array.of(NaN, 0.1, -0.2, 0.05, 0, NaN, 3.1, 2.9, 3.05, 3, NaN);
+    const { levels } = drift(z, { seed: 1, draws: 19 });
+    expect(levels.map(({ from, to }) => [from, to])).toEqual([
+      [1, 4],
+      [6, 9],
+    ]);
+  });
+
   it('sees no change in results in control, in about 19 of 20', () => {
     const seen = Array.from({ length: 20 }, (_, seed) =>
       drift(noise(40, 1, 100 + seed), { seed: 1, draws: 199 }),
@@ -105,6 +125,7 @@ describe('drift', () => {
   it('is flat for one value, and the same for the same seed', () => {
     const flat = drift(new Float64Array(9).fill(1), { seed: 1, draws: 99 });
     expect(flat).toMatchObject({ slope: 0, change: 0, changeAfter: null, changeP: 1 });
+    expect(flat.levels).toEqual([{ from: 0, to: 8, n: 9, mean: 1 }]);
     const z = noise(30, 1);
     expect(drift(z, { seed: 5, draws: 99 })).toEqual(drift(z, { seed: 5, draws: 99 }));
   });
