@@ -63,6 +63,8 @@ export interface LikenessOptions {
   seed: number;
   draws?: number;
   minRows?: number;
+  /** Most rows of a code in a pair test, at equal steps down the table; 100 unless told. */
+  maxRows?: number;
   onProgress?: (share: number) => void;
 }
 
@@ -74,7 +76,7 @@ export interface LikenessOptions {
  */
 export function codeLikeness(input: LikenessInput, options: LikenessOptions): CodeLikeness {
   const { coordinates, codes, parents, holeStarts } = input;
-  const { seed, draws, minRows = MIN_CODE_ROWS, onProgress } = options;
+  const { seed, draws, minRows = MIN_CODE_ROWS, maxRows = 100, onProgress } = options;
   const n = checkHoleStarts(holeStarts);
   if (codes.codes.length !== n || parents.length !== codes.levels.length)
     throw new KernelError(
@@ -89,6 +91,7 @@ export function codeLikeness(input: LikenessInput, options: LikenessOptions): Co
     const isFirst = Int8Array.from(space.codeOf, (code) => (code === a ? 1 : code === b ? 0 : -1));
     const test = energyTest(coordinates, isFirst, holeStarts, {
       seed: seed + at,
+      maxRows,
       ...(draws ? { draws } : {}),
     });
     onProgress?.((at + 1) / places.length);
