@@ -1,7 +1,7 @@
 import { CHUNK_ROWS } from '#server/db/column-store.ts';
 import { columnDatabase } from '#tests/server/db/column-database.ts';
 import { openMappedStore } from '#workers/store-access.ts';
-import type { Bench } from './run.ts';
+import type { Bench } from './bench.ts';
 
 const N_ROWS = 1_000_000;
 const N_COLUMNS = 48;

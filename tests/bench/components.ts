@@ -1,8 +1,8 @@
 import { PCA } from 'ml-pca';
 import { fitComponents } from '#kernels/components/components.ts';
 import { scoreComponents } from '#kernels/components/scores.ts';
-import { seededRandom } from '#kernels/random.ts';
-import type { Bench } from './run.ts';
+import type { Bench } from './bench.ts';
+import { lognormalParts } from './synthetic.ts';
 
 const N_ROWS = 1_000_000;
 const N_PARTS = 48;
@@ -10,22 +10,9 @@ const N_SCORES = 8;
 /** The package works on arrays of arrays: what a plain user can hold, scaled up in the table's words. */
 const PEER_ROWS = 20_000;
 
-/** Lognormal parts that share two factors, as grades do. */
-function parts(): Float64Array[] {
-  const random = seededRandom(7);
-  const factors = [0, 1].map(() => Float64Array.from({ length: N_ROWS }, () => random.normal()));
-  return Array.from({ length: N_PARTS }, (_, part) => {
-    const column = new Float64Array(new SharedArrayBuffer(8 * N_ROWS));
-    for (let row = 0; row < N_ROWS; row++) {
-      column[row] = Math.exp(Math.sin(part) * (factors[0]?.[row] ?? 0) + Math.cos(part) * (factors[1]?.[row] ?? 0) + 0.3 * random.uniform());
-    }
-    return column;
-  });
-}
-
 /** clr, PCA and eight scores of a million intervals by 48 analytes, against the package as a plain user calls it. */
 export function componentsBench(): Bench {
-  const columns = parts();
+  const columns = lognormalParts(N_ROWS, N_PARTS);
   const logs = Array.from({ length: PEER_ROWS }, (_, row) => {
     const values = columns.map((column) => Math.log(column[row] ?? 1));
     const mean = values.reduce((sum, value) => sum + value, 0) / N_PARTS;

@@ -1,7 +1,7 @@
 import { kmeans } from 'ml-kmeans';
 import { kMeans } from '#kernels/clustering/k-means.ts';
-import { seededRandom } from '#kernels/random.ts';
-import type { Bench } from './run.ts';
+import type { Bench } from './bench.ts';
+import { clouds } from './synthetic.ts';
 
 const N_ROWS = 1_000_000;
 const N_COLUMNS = 8;
@@ -9,20 +9,9 @@ const K = 6;
 /** The package holds a row as an array: a twentieth of the rows, one start. */
 const PEER_ROWS = 50_000;
 
-function blobs(): Float64Array[] {
-  const random = seededRandom(11);
-  const centres = Array.from({ length: K }, () => Array.from({ length: N_COLUMNS }, () => 4 * random.normal()));
-  const columns = Array.from({ length: N_COLUMNS }, () => new Float64Array(new SharedArrayBuffer(8 * N_ROWS)));
-  for (let row = 0; row < N_ROWS; row++) {
-    const centre = centres[random.below(K)] ?? [];
-    columns.forEach((column, i) => (column[row] = (centre[i] ?? 0) + random.uniform() + random.uniform() + random.uniform()));
-  }
-  return columns;
-}
-
 /** k-means of a million intervals by eight components, against the package as a plain user calls it. */
 export function groupsBench(): Bench {
-  const columns = blobs();
+  const columns = clouds(N_ROWS, N_COLUMNS, K);
   const rows = Array.from({ length: PEER_ROWS }, (_, row) => columns.map((column) => column[row] ?? 0));
   return {
     workload: `k-means k = ${K}, ${N_ROWS} × ${N_COLUMNS}`,
