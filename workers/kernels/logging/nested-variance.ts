@@ -42,22 +42,15 @@ export function nestedVariance(
   options: { seed: number; draws?: number; onProgress?: (share: number) => void },
 ): NestedVariance {
   const { seed, draws = 999, onProgress } = options;
-  const sizes = sizesOf(codeOf, parentOf.length);
-  if (parentOf.length < 2)
-    throw new KernelError('too-few-groups', `expected 2 or more codes, found ${parentOf.length}`);
-  const empty = sizes.indexOf(0);
-  if (empty >= 0)
-    throw new KernelError('too-few-rows', `expected rows of every code, found none of ${empty}`, {
-      code: empty,
-    });
-  const n = sizes.reduce((sum, size) => sum + size, 0);
-  const nParents = new Set(parentOf).size;
-  const sums = { codeOf, parentOf, coordinates, sizes };
+  const sums = checkedSums({ coordinates, codeOf, parentOf });
   const parts = partsOf(sums);
-  const codeFreedom = parentOf.length - nParents;
-  const rowFreedom = n - parentOf.length;
-  const fCodes = ratio(parts.codes, codeFreedom, parts.within, rowFreedom, parts.total);
-  const fParents = ratio(parts.parents, nParents - 1, parts.codes, codeFreedom, parts.total);
+  const fOfCodes = (codes: number, within: number) =>
+    ratio(codes, sums.codeFreedom, within, sums.rowFreedom, parts.total);
+  const fOfParents = (parents: number, codes: number) =>
+    ratio(parents, sums.parentFreedom, codes, sums.codeFreedom, parts.total);
+  const fCodes = fOfCodes(parts.codes, parts.within);
+  const fParents = fOfParents(parts.parents, parts.codes);
+  const reaches = (f: number | null, observed: number) => (f ?? Infinity) >= observed * (1 - 1e-12);
   const random = seededRandom(seed);
   const rowsByParent = rowsOfParents(codeOf, parentOf);
   const moving = codeOf.slice();
@@ -65,37 +58,51 @@ export function nestedVariance(
   for (let draw = 0; draw < draws; draw++) {
     if (fCodes !== null) {
       shuffleInside(moving, rowsByParent, random);
-      const moved = betweenLevels(sums, meansOf(coordinates, moving, sizes));
+      const moved = betweenLevels(sums, meansOf(coordinates, moving, sums.sizes));
       // Shuffling inside parents leaves these where they are, so the rest is within codes.
       const within = parts.codes + parts.within - moved.codes;
-      const f = ratio(moved.codes, codeFreedom, within, rowFreedom, parts.total) ?? Infinity;
-      if (f >= fCodes * (1 - 1e-12)) reachedCodes += 1;
+      if (reaches(fOfCodes(moved.codes, within), fCodes)) reachedCodes += 1;
     }
     if (fParents !== null) {
       const moved = betweenLevels({ ...sums, parentOf: shuffled(parentOf, random) }, parts.means);
-      const f =
-        ratio(moved.parents, nParents - 1, moved.codes, codeFreedom, parts.total) ?? Infinity;
-      if (f >= fParents * (1 - 1e-12)) reachedParents += 1;
+      if (reaches(fOfParents(moved.parents, moved.codes), fParents)) reachedParents += 1;
     }
     onProgress?.((draw + 1) / draws);
   }
   const { parents, codes, within, total } = parts;
   const pOf = (f: number | null, reached: number) =>
     f === null ? null : (1 + reached) / (draws + 1);
-  return {
-    parents,
-    codes,
-    within,
-    total,
-    fCodes,
-    nominalPCodes: pOf(fCodes, reachedCodes),
-    fParents,
-    pParents: pOf(fParents, reachedParents),
-  };
+  const nominalPCodes = pOf(fCodes, reachedCodes);
+  const pParents = pOf(fParents, reachedParents);
+  return { parents, codes, within, total, fCodes, nominalPCodes, fParents, pParents };
 }
 
 interface Sums extends NestedInput {
   sizes: number[];
+  parentFreedom: number;
+  codeFreedom: number;
+  rowFreedom: number;
+}
+
+function checkedSums(input: NestedInput): Sums {
+  const { codeOf, parentOf } = input;
+  const sizes = sizesOf(codeOf, parentOf.length);
+  if (parentOf.length < 2)
+    throw new KernelError('too-few-groups', `expected 2 or more codes, found ${parentOf.length}`);
+  const code = sizes.indexOf(0);
+  if (code >= 0)
+    throw new KernelError('too-few-rows', `expected rows of every code, found none of ${code}`, {
+      code,
+    });
+  const n = sizes.reduce((sum, size) => sum + size, 0);
+  const nParents = new Set(parentOf).size;
+  return {
+    ...input,
+    sizes,
+    parentFreedom: nParents - 1,
+    codeFreedom: parentOf.length - nParents,
+    rowFreedom: n - parentOf.length,
+  };
 }
 
 function sizesOf(groupOf: Int32Array, groups: number): number[] {

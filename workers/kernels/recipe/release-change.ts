@@ -1,7 +1,7 @@
 import { adjustedRandIndex } from '#kernels/clustering/agreement.ts';
 import { compareCodePoints } from '#kernels/tables/category.ts';
 import type { CodedInterval } from './code-lines.ts';
-import { crossReleases } from './release-pieces.ts';
+import { crossReleases, type ReleasePiece } from './release-pieces.ts';
 
 /** Metres of a code in the old release under a code in the new. */
 export interface MovedMetres {
@@ -52,49 +52,53 @@ export function releaseChange(
   const pieces = crossReleases(before, after);
   const cells = new Map<string, MovedMetres>();
   const domains = new Map<string, DomainChange>();
+  for (const piece of pieces) {
+    const metres = piece.toM - piece.fromM;
+    addToDomains(domains, piece, metres);
+    if (piece.before === null || piece.after === null) continue;
+    const key = JSON.stringify([piece.before, piece.after]);
+    const cell = cells.get(key) ?? { before: piece.before, after: piece.after, metres: 0 };
+    cell.metres += metres;
+    cells.set(key, cell);
+  }
+  const table = [...cells.values()].sort(
+    (a, b) => compareCodePoints(a.before, b.before) || compareCodePoints(a.after, b.after),
+  );
+  const changes = [...domains.values()].sort((a, b) => compareCodePoints(a.code, b.code));
+  const commonMetres = table.reduce((sum, { metres }) => sum + metres, 0);
+  const movedMetres = table.reduce((sum, c) => (c.before === c.after ? sum : sum + c.metres), 0);
+  return {
+    commonMetres,
+    addedMetres: changes.reduce((sum, { addedMetres }) => sum + addedMetres, 0),
+    removedMetres: changes.reduce((sum, { removedMetres }) => sum + removedMetres, 0),
+    movedShare: commonMetres > 0 ? movedMetres / commonMetres : null,
+    table,
+    domains: changes,
+  };
+}
+
+function addToDomains(
+  domains: Map<string, DomainChange>,
+  { before, after }: ReleasePiece,
+  metres: number,
+): void {
   const domain = (code: string): DomainChange => {
-    const found = domains.get(code) ?? {
-      code,
+    const none = {
       metresBefore: 0,
       metresAfter: 0,
       keptMetres: 0,
       addedMetres: 0,
       removedMetres: 0,
     };
+    const found = domains.get(code) ?? { code, ...none };
     domains.set(code, found);
     return found;
   };
-  const sums = { common: 0, added: 0, removed: 0, moved: 0 };
-  for (const { fromM, toM, before: from, after: to } of pieces) {
-    const metres = toM - fromM;
-    if (from !== null) domain(from).metresBefore += metres;
-    if (to !== null) domain(to).metresAfter += metres;
-    if (from !== null && to !== null) {
-      sums.common += metres;
-      if (from === to) domain(from).keptMetres += metres;
-      else sums.moved += metres;
-      const key = JSON.stringify([from, to]);
-      const cell = cells.get(key) ?? { before: from, after: to, metres: 0 };
-      cell.metres += metres;
-      cells.set(key, cell);
-    } else if (to !== null) {
-      sums.added += metres;
-      domain(to).addedMetres += metres;
-    } else if (from !== null) {
-      sums.removed += metres;
-      domain(from).removedMetres += metres;
-    }
-  }
-  return {
-    commonMetres: sums.common,
-    addedMetres: sums.added,
-    removedMetres: sums.removed,
-    movedShare: sums.common > 0 ? sums.moved / sums.common : null,
-    table: [...cells.values()].sort(
-      (a, b) => compareCodePoints(a.before, b.before) || compareCodePoints(a.after, b.after),
-    ),
-    domains: [...domains.values()].sort((a, b) => compareCodePoints(a.code, b.code)),
-  };
+  if (before !== null) domain(before).metresBefore += metres;
+  if (after !== null) domain(after).metresAfter += metres;
+  if (before !== null && before === after) domain(before).keptMetres += metres;
+  if (before === null && after !== null) domain(after).addedMetres += metres;
+  if (after === null && before !== null) domain(before).removedMetres += metres;
 }
 
 /**

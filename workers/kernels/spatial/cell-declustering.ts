@@ -29,7 +29,7 @@ const MAX_CELLS = Number.MAX_SAFE_INTEGER;
  * @returns n weights > 0 whose sum is n.
  * @throws {KernelError} `shape`; `too-few-rows`; `not-finite`; `bad-parameter` for a cell, a number of
  *   offsets or an origin above the data, or cells too small for the extent.
- * @see Journel (1983); Deutsch & Journel (1998), GSLIB, Oxford University Press (from memory).
+ * @see Journel (1983); Deutsch & Journel (1998), Oxford University Press (from memory).
  */
 export function declusterWeights(
   positions: Positions,

@@ -10,6 +10,7 @@ import {
   contactsByPair,
   rowsNearContacts,
   type ContactBin,
+  type ContactRows,
   type PairContact,
 } from './contact-bins.ts';
 import { CONTACT_RULES, readContact, type ContactReading } from './contact-reading.ts';
@@ -143,18 +144,10 @@ function profileOf(
           first: meanOf(used.flatMap(({ first }) => first)),
           second: meanOf(used.flatMap(({ second }) => second)),
         };
-  const trendOf = (side: 'first' | 'second') => {
-    const inside = rows[side].filter(
-      ({ row, distanceM }) =>
-        !Number.isNaN(values[row]) && binIndex(distanceM, compositeM) < CONTACT_RULES.trendBins,
-    );
-    if (inside.length < 3) return null;
-    return rankCorrelation(
-      Float64Array.from(inside, ({ distanceM }) => distanceM),
-      Float64Array.from(inside, ({ row }) => values[row]!),
-    );
+  const trend = {
+    first: trendOf(rows.first, values, compositeM),
+    second: trendOf(rows.second, values, compositeM),
   };
-  const trend = { first: trendOf('first'), second: trendOf('second') };
   return {
     contacts: contacts.length,
     contactsUsed: used.length,
@@ -167,6 +160,23 @@ function profileOf(
     trend,
     ...readContact({ contacts: used.length, nearMeans, test, trend }),
   };
+}
+
+/** Spearman's correlation of grade and distance in the bins next to the contact. */
+function trendOf(
+  rows: ContactRows['rows'],
+  values: Float64Array,
+  compositeM: number,
+): number | null {
+  const inside = rows.filter(
+    ({ row, distanceM }) =>
+      !Number.isNaN(values[row]) && binIndex(distanceM, compositeM) < CONTACT_RULES.trendBins,
+  );
+  if (inside.length < 3) return null;
+  return rankCorrelation(
+    Float64Array.from(inside, ({ distanceM }) => distanceM),
+    Float64Array.from(inside, ({ row }) => values[row]!),
+  );
 }
 
 /** Grades of the two rows of a run next to its contact; fewer where missing. */

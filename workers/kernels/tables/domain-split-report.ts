@@ -100,11 +100,12 @@ function requireInput({
 }
 
 function splitOf(
-  { domains, lithology, lengthsM, coordinates, holeStarts }: SplitReportInput,
+  input: SplitReportInput,
   code: number,
   domain: string,
-  { seed, draws }: { seed: number; draws?: number },
+  options: { seed: number; draws?: number },
 ): DomainSplit {
+  const { domains, lithology, lengthsM } = input;
   const metresOf = new Float64Array(lithology.levels.length);
   let notLoggedMetres = 0;
   domains.codes.forEach((own, row) => {
@@ -117,29 +118,8 @@ function splitOf(
   const ranked = [...metresOf.keys()]
     .filter((rock) => metresOf[rock]! > 0)
     .sort((a, b) => metresOf[b]! - metresOf[a]! || a - b);
-  const [first, second] = ranked;
-  const isDouble = second !== undefined && metresOf[second]! >= SPLIT_RULES.share * logged;
-  const twoRocks =
-    isDouble && first !== undefined
-      ? {
-          first: lithology.levels[first]!,
-          second: lithology.levels[second]!,
-          test: energyTest(
-            coordinates,
-            Int8Array.from(domains.codes, (own, row) =>
-              own !== code
-                ? -1
-                : lithology.codes[row] === first
-                  ? 1
-                  : lithology.codes[row] === second
-                    ? 0
-                    : -1,
-            ),
-            holeStarts,
-            { seed: seed + code, ...(draws === undefined ? {} : { draws }) },
-          ),
-        }
-      : null;
+  const large = ranked.filter((rock) => metresOf[rock]! >= SPLIT_RULES.share * logged);
+  const twoRocks = testTwoRocks(input, code, large, options);
   return {
     domain,
     metres: logged + notLoggedMetres,
@@ -152,6 +132,27 @@ function splitOf(
     entropy: logged > 0 ? entropy(metresOf) : 0,
     twoRocks,
     proposesSplit: twoRocks !== null && twoRocks.test.p <= SPLIT_RULES.p,
+  };
+}
+
+/** Chemistry of the two largest rocks of a domain; null when fewer than two are large. */
+function testTwoRocks(
+  { domains, lithology, coordinates, holeStarts }: SplitReportInput,
+  code: number,
+  [first, second]: readonly number[],
+  { seed, draws }: { seed: number; draws?: number },
+): DomainSplit['twoRocks'] {
+  if (first === undefined || second === undefined) return null;
+  const isFirst = Int8Array.from(domains.codes, (own, row) => {
+    const rock = lithology.codes[row];
+    if (own !== code || (rock !== first && rock !== second)) return -1;
+    return rock === first ? 1 : 0;
+  });
+  const options = { seed: seed + code, ...(draws === undefined ? {} : { draws }) };
+  return {
+    first: lithology.levels[first]!,
+    second: lithology.levels[second]!,
+    test: energyTest(coordinates, isFirst, holeStarts, options),
   };
 }
 
