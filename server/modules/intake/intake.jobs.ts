@@ -2,7 +2,7 @@ import { createHash } from 'node:crypto';
 import * as z from 'zod';
 import type { FileCheck } from '#contract/files.ts';
 import { Id } from '#contract/common.ts';
-import { orNotFound } from '#server/lib/errors.ts';
+import { AppError, orNotFound } from '#server/lib/errors.ts';
 import { enqueueAssembly } from '#server/modules/snapshots/enqueue-assembly.ts';
 import type { CheckFileInput } from '#workers/tasks/check-file.ts';
 import type { LoadFileInput, LoadFileOutput } from '#workers/tasks/load-file.ts';
@@ -23,15 +23,23 @@ export function registerIntakeJobs({ clock, jobs, record, files, uploads, revisi
     return { row, input: { path: files.pathOf(row.stored_name), mapping: mappingOf(row), collarTableId: collars?.table_id ?? null } };
   }
 
+  /** Checksum of the mapping each running check reads by: one saved meanwhile makes the check worthless. */
+  const checkedWith = new Map<number, string>();
+
   jobs.register<CheckFileInput, FileCheck>('check-file', {
     task: 'check-file',
-    async prepare({ depositId, params }) {
+    async prepare({ id, depositId, params }) {
       const { uploadId } = CheckParams.parse(params);
-      const { input } = await readInput(depositId, uploadId);
+      const { row, input } = await readInput(depositId, uploadId);
+      checkedWith.set(id, sha256(row.mapping));
       return { ...input, baseTableId: null, uploadId };
     },
-    async finish(trx, { params }, check) {
+    async finish(trx, { id, depositId, params }, check) {
       const { uploadId } = CheckParams.parse(params);
+      const row = orNotFound(await uploadsRepository(trx).row(depositId, uploadId), 'upload');
+      const mapping = checkedWith.get(id);
+      checkedWith.delete(id);
+      if (sha256(row.mapping) !== mapping) throw new AppError(409, 'mapping-changed', 'The mapping was changed while rows were checked with the earlier one: check again.');
       await uploadsRepository(trx).update(trx, uploadId, { file_check: JSON.stringify(check), state: 'checked' });
       return { kind: 'upload', id: uploadId };
     },

@@ -51,6 +51,16 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
   const rowOf = async (depositId: number, uploadId: number): Promise<UploadRow> => orNotFound(await uploads.row(depositId, uploadId), 'upload');
   const get = async (depositId: number, uploadId: number): Promise<Upload> => orNotFound(await uploads.find(depositId, uploadId), 'upload');
 
+  /** The upload, when it is neither loaded nor about to be. */
+  async function openRow(depositId: number, uploadId: number, isLoaded: string): Promise<UploadRow> {
+    const row = await rowOf(depositId, uploadId);
+    if (row.state === 'loaded') throw new AppError(409, 'upload-loaded', isLoaded);
+    if (await uploads.isLoading(depositId, uploadId)) {
+      throw new AppError(409, 'upload-busy', 'This file is being loaded: wait for it to end, or cancel it first.');
+    }
+    return row;
+  }
+
   async function receiveOne(depositId: number, file: ReceivedFile, actor: Actor): Promise<number> {
     const fileName = cleanFileName(file.originalname);
     const inspected = await compute.run<InspectFileInput, InspectFileOutput>('inspect-file', { path: file.path, fileName, sizeBytes: file.size });
@@ -104,8 +114,7 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
     },
 
     async discard(depositId: number, uploadId: number, actor: Actor) {
-      const row = await rowOf(depositId, uploadId);
-      if (row.state === 'loaded') throw new AppError(409, 'upload-loaded', 'A loaded file is kept: revisions stand on it.');
+      const row = await openRow(depositId, uploadId, 'A loaded file is kept: revisions stand on it.');
       await transact(db, async (trx) => {
         await uploads.update(trx, uploadId, { state: 'discarded' });
         await record.add(trx, { actor, depositId, action: 'upload.discarded', subject: `upload ${uploadId}`, sentence: `${actor.name} discarded ${row.file_name}` });
@@ -115,8 +124,7 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
     },
 
     async saveMapping(depositId: number, uploadId: number, mapping: FileMapping): Promise<Upload> {
-      const row = await rowOf(depositId, uploadId);
-      if (row.state === 'loaded') throw new AppError(409, 'upload-loaded', 'This file is loaded; upload it again to read it another way.');
+      await openRow(depositId, uploadId, 'This file is loaded; upload it again to read it another way.');
       planColumns(mapping);
       await uploads.update(db, uploadId, { mapping: JSON.stringify(mapping), state: 'mapped', file_check: null });
       return get(depositId, uploadId);
@@ -142,8 +150,7 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
     },
 
     async load(depositId: number, uploadId: number, mode: 'replace' | 'add', actor: Actor): Promise<JobStarted> {
-      const row = await rowOf(depositId, uploadId);
-      if (row.state === 'loaded') throw new AppError(409, 'upload-loaded', 'This file is loaded already.');
+      const row = await openRow(depositId, uploadId, 'This file is loaded already.');
       planColumns(mappingOf(row));
       return { job: await jobs.enqueue({ depositId, kind: 'load-file', title: `Load ${row.file_name}`, params: { uploadId, mode }, actor }) };
     },

@@ -83,6 +83,12 @@ export function uploadsRepository(db: Knex) {
     /** The mapping last saved in this deposit for a file with the same header. */
     remembered: (depositId: number, headerSignature: string): Promise<UploadRow | undefined> =>
       db<UploadRow>('uploads').where({ deposit_id: depositId, header_signature: headerSignature, state: 'loaded' }).orderBy('id', 'desc').first(),
+    /** Is a load of it waiting or running? */
+    async isLoading(depositId: number, uploadId: number): Promise<boolean> {
+      const job: unknown = await db('jobs').where({ deposit_id: depositId, kind: 'load-file' }).whereIn('state', ['queued', 'running'])
+        .whereRaw("json_extract(params, '$.uploadId') = ?", [uploadId]).first('id');
+      return job !== undefined;
+    },
     async bytesStored(depositId: number): Promise<number> {
       const [sum] = await db<UploadRow>('uploads').where({ deposit_id: depositId }).sum<{ bytes: number | null }[]>({ bytes: 'size_bytes' });
       return sum?.bytes ?? 0;

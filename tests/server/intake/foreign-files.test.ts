@@ -1,10 +1,13 @@
-import { beforeAll, describe, expect, test } from 'vitest';
+import { beforeAll, describe, expect, test, vi } from 'vitest';
 import type { Revision, Upload } from '#contract/files.ts';
+import { JobStarted } from '#contract/jobs.ts';
 import { Problem } from '#contract/problem.ts';
 import { testClient, type TestClient } from '#tests/support/test-client.ts';
 import { COLLARS, csv, type IntakeDesk, intakeDesk } from './intake-desk.ts';
 
 const NEVER = 987_654;
+/** A refusal but for the id of its request. */
+const Told = Problem.omit({ requestId: true });
 const ASSAYS = csv('HoleID,From,To,Cu_ppm', 'TH-1,0,2,10', 'TH-2,0,2,20');
 
 let client: TestClient;
@@ -48,9 +51,7 @@ describe('AZ-02 files of another deposit, asked for under one’s own', () => {
   test('each way answers 404 as for what never was, and tells nothing of it', async () => {
     for (const [label, ask] of ways()) {
       const [foreign, never] = [await ask(theirs.upload.id), await ask(NEVER)];
-      const { requestId: _one, ...told } = Problem.parse(foreign.body);
-      const { requestId: _other, ...nothing } = Problem.parse(never.body);
-      expect([label, foreign.status, told]).toEqual([label, 404, nothing]);
+      expect([label, foreign.status, Told.parse(foreign.body)]).toEqual([label, 404, Told.parse(never.body)]);
       expect(foreign.text).not.toMatch(/secret|TH-1/);
     }
     await desk.stillAnswers();
@@ -88,12 +89,26 @@ describe('what a loaded file no longer takes: 409 with the reason', () => {
     await desk.stillAnswers();
   });
 
-  test('two loads of one file asked for at once make one revision', async () => {
-    const { id } = await desk.upload('lithology.csv', csv('HoleID,From,To,Lithology', 'TH-2,0,2,BAS', 'TH-2,2,4,BAS'));
+  test('while it is being loaded: no second load, no new mapping, no discard; one revision is made', async () => {
+    const { id, mapping } = await desk.upload('lithology.csv', csv('HoleID,From,To,Lithology', 'TH-2,0,2,BAS', 'TH-2,2,4,BAS'));
     const before = (await desk.revisions()).length;
-    const both = await Promise.all(['add', 'add'].map((mode) => desk.lead.post(`${desk.at(id)}/load`).send({ mode })));
-    const ended = await Promise.all(both.filter(({ status }) => status === 202).map((res) => desk.ended(res)));
-    expect(ended.filter(({ state }) => state === 'done')).toHaveLength(1);
+    const first = await desk.lead.post(`${desk.at(id)}/load`).send({ mode: 'replace' });
+    const others = await Promise.all([desk.lead.post(`${desk.at(id)}/load`).send({ mode: 'replace' }), desk.map(id, { ...mapping, kind: 'weathering' }), desk.lead.delete(desk.at(id))]);
+    for (const res of others) expect(desk.refusal(res)).toMatchObject({ answered: 409, code: expect.stringMatching(/^upload-(busy|loaded)$/) });
+    expect((await desk.ended(first)).state).toBe('done');
     expect((await desk.revisions()).length).toBe(before + 1);
+    expect((await desk.revisions())[0]).toMatchObject({ kind: 'lithology', rows: 2 });
+  });
+
+  test('a check of an earlier mapping is not kept as one of the mapping saved meanwhile', async () => {
+    const rows = Array.from({ length: 20_000 }, (_, i) => `TH-2,${i / 1000},${(i + 1) / 1000},BAS`);
+    const { id, mapping } = await desk.upload('lithology.csv', csv('HoleID,From,To,Lithology', ...rows));
+    const started = await desk.lead.post(`${desk.at(id)}/check`);
+    await vi.waitFor(async () => expect((await desk.lead.get(`${desk.base}/jobs/${JobStarted.parse(started.body).job.id}`)).body).toMatchObject({ startedAt: expect.any(String) }), { interval: 5, timeout: 20_000 });
+    await desk.map(id, { ...mapping, kind: 'weathering' }).expect(200);
+    const job = await desk.ended(started);
+    expect(job).toMatchObject({ state: 'failed', error: { code: 'mapping-changed', message: 'The mapping was changed while rows were checked with the earlier one: check again.' } });
+    expect(await desk.get(id)).toMatchObject({ state: 'mapped', check: null });
+    expect((await desk.check(id)).state).toBe('done');
   });
 });
