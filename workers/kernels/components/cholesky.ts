@@ -1,5 +1,7 @@
 /** Under this share of a variable's own variance, what the others leave of it is rounding noise. */
 const NOISE = 1e-12;
+/** Under this share of the largest variance, a variable is constant but for rounding. */
+const CONSTANT = 1e-26;
 
 /**
  * Lower triangle L with L L' = matrix, in place; the upper triangle is left as it was. Written here
@@ -11,11 +13,14 @@ const NOISE = 1e-12;
  */
 export function cholesky(matrix: Float64Array, size: number): number | null {
   let logDeterminant = 0;
+  let largest = 0;
+  for (let j = 0; j < size; j++) largest = Math.max(largest, matrix[j * size + j]!);
+  const least = Math.max(CONSTANT * largest, 1e-200);
   for (let j = 0; j < size; j++) {
     const variance = matrix[j * size + j]!;
     let pivot = variance;
     for (let k = 0; k < j; k++) pivot -= matrix[j * size + k]! ** 2;
-    if (!(pivot > NOISE * variance) || !(pivot > 1e-200)) return null;
+    if (!(pivot > NOISE * variance) || !(pivot > least)) return null;
     const root = Math.sqrt(pivot);
     logDeterminant += Math.log(pivot);
     matrix[j * size + j] = root;

@@ -1,5 +1,6 @@
+import { cholesky } from '#kernels/components/cholesky.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
-import { CholeskyDecomposition, Matrix } from 'ml-matrix';
+import { inverse, Matrix } from 'ml-matrix';
 
 /** Added to the diagonal, as a share of its mean, of a covariance that cannot be inverted. */
 const RIDGE = 1e-8;
@@ -15,17 +16,15 @@ export function inverseOfCovariance(
   covariance: Float64Array,
   size: number,
 ): { matrix: Float64Array; isRidged: boolean } {
-  const rows = Array.from({ length: size }, (_, i) => [
-    ...covariance.subarray(i * size, (i + 1) * size),
-  ]);
-  const trace = rows.reduce((sum, row, i) => sum + row[i]!, 0);
+  let trace = 0;
+  for (let i = 0; i < size; i++) trace += covariance[i * size + i]!;
   const ridge = (RIDGE * trace) / size;
   for (const added of Number.isFinite(trace) ? [0, ridge] : []) {
-    const matrix = new Matrix(rows.map((row, i) => row.map((x, j) => (i === j ? x + added : x))));
-    const cholesky = new CholeskyDecomposition(matrix);
-    if (!cholesky.isPositiveDefinite()) continue;
-    const inverse = Float64Array.from(cholesky.solve(Matrix.eye(size)).to1DArray());
-    if (inverse.every(Number.isFinite)) return { matrix: inverse, isRidged: added > 0 };
+    const steadied = covariance.slice();
+    for (let i = 0; i < size; i++) steadied[i * size + i]! += added;
+    if (cholesky(steadied.slice(), size) === null) continue;
+    const matrix = inverse(Matrix.from1DArray(size, size, Array.from(steadied))).to1DArray();
+    return { matrix: Float64Array.from(matrix), isRidged: added > 0 };
   }
   throw new KernelError('singular', 'expected log-ratios that vary on their own');
 }
