@@ -48,12 +48,14 @@ export function dipOfSorted(sorted: Float64Array): Dip {
   const m = steps.x.length;
   const minorant: Hull = { at: new Int32Array(m), size: 0 };
   const majorant: Hull = { at: new Int32Array(m), size: 0 };
+  const before = cornersBefore(steps.x, steps.below);
+  const after = cornersAfter(steps.x, steps.upTo);
   let from = 0;
   let to = m - 1;
   let missed = 1; // twice the dip, in counts: no less than one step of F_n
   for (;;) {
-    hull(steps.x, steps.below, from, to, 1, minorant);
-    hull(steps.x, steps.upTo, from, to, -1, majorant);
+    minorantBetween(from, to, before, minorant);
+    majorantBetween(from, to, after, majorant);
     const widest = widestGap(steps, minorant, majorant);
     if (widest.gap <= missed || from === to) break; // a mode of one value may be a jump
     missed = Math.max(
@@ -87,27 +89,49 @@ function stepsOf(sorted: Float64Array): Steps {
   return { x: x.subarray(0, m), below: below.subarray(0, m), upTo: upTo.subarray(0, m), n, scale };
 }
 
-/** Lower (`side` 1) or upper (`side` -1) hull of the points (x_j, y_j), j = from..to. */
-function hull(
-  x: Float64Array,
-  y: Float64Array,
-  from: number,
-  to: number,
-  side: 1 | -1,
-  out: Hull,
-): void {
-  const { at } = out;
-  let size = 0;
-  for (let j = from; j <= to; j++) {
-    while (size >= 2) {
-      const b = at[size - 1]!;
-      const a = at[size - 2]!;
-      const turn = (y[b]! - y[a]!) * (x[j]! - x[b]!) - (y[j]! - y[b]!) * (x[b]! - x[a]!);
-      if (side * turn < 0) break;
-      size -= 1;
+/**
+ * For every value the corner before it in the lower hull of the points up to it. The corners of the
+ * hull from one of its corners to a later value are then a walk: a corner of the hull of all points
+ * up to some value is one of the hull of any of them that hold it.
+ */
+function cornersBefore(x: Float64Array, y: Float64Array): Int32Array {
+  const before = new Int32Array(x.length).fill(-1);
+  for (let j = 1; j < x.length; j++) {
+    let b = j - 1;
+    for (let a = before[b]!; a >= 0; b = a, a = before[b]!) {
+      if ((y[b]! - y[a]!) * (x[j]! - x[b]!) < (y[j]! - y[b]!) * (x[b]! - x[a]!)) break;
     }
-    at[size++] = j;
+    before[j] = b;
   }
+  return before;
+}
+
+/** For every value the corner after it in the upper hull of the points from it on. */
+function cornersAfter(x: Float64Array, y: Float64Array): Int32Array {
+  const last = x.length - 1;
+  const after = new Int32Array(x.length).fill(-1);
+  for (let j = last - 1; j >= 0; j--) {
+    let b = j + 1;
+    for (let c = after[b]!; c >= 0; b = c, c = after[b]!) {
+      if ((y[c]! - y[b]!) * (x[b]! - x[j]!) < (y[b]! - y[j]!) * (x[c]! - x[b]!)) break;
+    }
+    after[j] = b;
+  }
+  return after;
+}
+
+function minorantBetween(from: number, to: number, before: Int32Array, out: Hull): void {
+  let size = 0;
+  for (let j = to; j > from; j = before[j]!) out.at[size++] = j;
+  out.at[size++] = from;
+  out.at.subarray(0, size).reverse();
+  out.size = size;
+}
+
+function majorantBetween(from: number, to: number, after: Int32Array, out: Hull): void {
+  let size = 0;
+  for (let j = from; j < to; j = after[j]!) out.at[size++] = j;
+  out.at[size++] = to;
   out.size = size;
 }
 
