@@ -64,8 +64,8 @@ const MORE_VARIABLES: Record<McdStage, { half: readonly number[]; most: readonly
  * normal samples of n rows, fitted to simulations.
  *
  * @param share Inner share asked for, in [.5, 1]; between .5, .875 and 1 it is interpolated.
- * @throws {KernelError} `bad-parameter` when share or p is out of range; `too-few-rows` when n is so small that the
- *   fitted curve leaves its range.
+ * @throws {KernelError} `bad-parameter` when share or p is out of range; `too-few-rows` when n is so
+ *   small that the fitted curve leaves its range.
  * @see Pison, Van Aelst & Willems (2002), Small sample corrections for LTS and MCD, Metrika 55.
  */
 export function smallSampleFactor(share: number, n: number, p: number, stage: McdStage): number {

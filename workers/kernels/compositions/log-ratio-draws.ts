@@ -39,8 +39,7 @@ export interface LogRatioDrawOptions {
  * @returns The cells below detection of rows that miss no part, by row and part.
  * @throws {KernelError} As {@link replaceByLogRatioEm}; `singular` when a ratio does not vary on its
  *   own.
- * @see Palarea-Albaladejo & Martin-Fernandez (2015), zeros and values below detection by data
- *   augmentation; Schafer (1997), Analysis of Incomplete Multivariate Data, Chapman & Hall.
+ * @see Palarea-Albaladejo & Martin-Fernandez (2015), Chemometr. Intell. Lab. Syst. 143 (from memory); Schafer (1997), Analysis of Incomplete Multivariate Data, Chapman & Hall.
  */
 export function drawByLogRatio(
   columns: readonly Float64Array[],
