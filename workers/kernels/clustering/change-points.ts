@@ -30,6 +30,8 @@ export interface ChangePoints {
 
 /** Median absolute deviation of a standard normal. */
 const NORMAL_MAD = 0.67449;
+/** Noise under this share of the largest step is rounding. */
+const ROUNDING = 1e-12;
 
 /**
  * Change points of the mean of several columns, each stretch of core on its own. Columns are divided
@@ -130,7 +132,9 @@ function noiseOf(column: Float64Array, stretches: readonly [number, number][]): 
     steps.map((step) => Math.abs(step - median)),
     [0.5],
   );
-  return deviation / (NORMAL_MAD * Math.SQRT2);
+  const largest = steps.reduce((most, step) => Math.max(most, Math.abs(step)), 0);
+  // Noise that only rounding makes is none: dividing by it would blow every step up.
+  return deviation > ROUNDING * largest ? deviation / (NORMAL_MAD * Math.SQRT2) : 0;
 }
 
 /**
