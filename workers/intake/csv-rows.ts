@@ -3,7 +3,7 @@ import { stat } from 'node:fs/promises';
 import { Transform, type Readable } from 'node:stream';
 import { CsvError, parse, type Options } from 'csv-parse';
 import { KernelError } from '#kernels/kernel-error.ts';
-import { detectEncoding, readHead, type TextEncoding } from './text-encoding.ts';
+import { encodingOfFile, type TextEncoding } from './text-encoding.ts';
 
 export interface RowSource {
   path: string;
@@ -59,7 +59,7 @@ export async function eachRow(
   onRow: (row: number, cells: string[]) => void,
   onProgress: (share: number) => void = () => undefined,
 ): Promise<void> {
-  const encoding = detectEncoding(await readHead(path));
+  const encoding = await encodingOfFile(path);
   const { size } = await stat(path);
   let bytesRead = 0;
   const source = textStream(path, encoding, (count) => (bytesRead += count));

@@ -3,7 +3,7 @@ import type { ColumnGuess, FileMapping, TableKind } from '#contract/files.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { csvOptions } from './csv-rows.ts';
 import { guessColumns, guessKind } from './guess-columns.ts';
-import { detectEncoding, readHead } from './text-encoding.ts';
+import { encodingOfFile, readHead } from './text-encoding.ts';
 
 export interface Inspection {
   encoding: string;
@@ -64,7 +64,7 @@ const wholeLines = (text: string, isCut: boolean): string => (isCut ? text.slice
  */
 export async function inspectFile(path: string, fileName: string, sizeBytes: number): Promise<Inspection> {
   const head = await readHead(path);
-  const encoding = detectEncoding(head);
+  const encoding = await encodingOfFile(path);
   const isCut = head.length < sizeBytes;
   const text = wholeLines(new TextDecoder(encoding).decode(head), isCut);
   const delimiter = detectDelimiter(text);

@@ -90,7 +90,7 @@ export class TableReader implements RowValues {
       tell('', 'row-short', `expected at least ${this.plan.width} cells, found ${cells.length}`, 'aside', '');
       return false;
     }
-    if (cells.slice(this.#headerWidth).some((cell) => cell.trim() !== '')) {
+    if (cells.length > this.#headerWidth && cells.slice(this.#headerWidth).some((cell) => cell.trim() !== '')) {
       tell('', 'row-long', `expected at most ${this.#headerWidth} cells, found ${cells.length}`, 'aside', '');
       return false;
     }

@@ -1,3 +1,4 @@
+import { createReadStream } from 'node:fs';
 import { open } from 'node:fs/promises';
 import { KernelError } from '#kernels/kernel-error.ts';
 
@@ -42,4 +43,32 @@ export function detectEncoding(head: Uint8Array): TextEncoding {
   if (startsWith(head, 0xfe, 0xff)) return 'utf-16be';
   if (head.includes(0)) throw new KernelError('not-text', 'expected CSV text, found binary content');
   return isUtf8(head) ? 'utf-8' : 'windows-1252';
+}
+
+/**
+ * Tells the encoding of a whole file: letters beyond ASCII may come late.
+ *
+ * @throws {KernelError} `not-text`; also for a file that starts as UTF-8 and goes on as something else.
+ */
+export async function encodingOfFile(path: string): Promise<TextEncoding> {
+  const head = await readHead(path);
+  const encoding = detectEncoding(head);
+  if (encoding !== 'utf-8' || head.length < HEAD_BYTES || (await isUtf8File(path))) return encoding;
+  if (head.some((byte) => byte > 127)) {
+    throw new KernelError('not-text', 'expected one text encoding, found UTF-8 at the start of the file and another further on');
+  }
+  return 'windows-1252';
+}
+
+async function isUtf8File(path: string): Promise<boolean> {
+  const decoder = new TextDecoder('utf-8', { fatal: true });
+  const chunks: AsyncIterable<Uint8Array> = createReadStream(path, { highWaterMark: 1 << 20 });
+  try {
+    for await (const chunk of chunks) decoder.decode(chunk, { stream: true });
+    decoder.decode();
+    return true;
+  } catch (error) {
+    if (error instanceof TypeError) return false;
+    throw error;
+  }
 }

@@ -1,4 +1,5 @@
 import { beforeAll, describe, expect, test } from 'vitest';
+import { getTable } from '#contract/tables.ts';
 import { testClient, type TestClient } from '#tests/support/test-client.ts';
 import { csv, type IntakeDesk, intakeDesk } from './intake-desk.ts';
 
@@ -43,6 +44,29 @@ describe('IN-06 the same rows come in however the text is written', () => {
     expect(await desk.numbers(revision?.tableId ?? 0, 'to')).toEqual([2, 4, 2]);
     expect(await desk.numbers(revision?.tableId ?? 0, 'Cu')).toEqual([10, 20, 30]);
     expect(await desk.bytesOf(id)).toEqual(Buffer.from(content));
+  });
+});
+
+describe('letters beyond ASCII that come late in a long file', () => {
+  const early = Array.from({ length: 20_000 }, (_, i) => `TH-1,${i / 1000},${(i + 1) / 1000},BAS`);
+  const file = (first: string, last: string, encoding: 'latin1' | 'utf8') =>
+    Buffer.concat([Buffer.from(csv('HoleID,From,To,Lithology', `TH-2,0,2,${first}`, ...early), 'utf8'), Buffer.from(csv(`TH-1,30,32,${last}`), encoding)]);
+
+  test.each(['latin1', 'utf8'] as const)('%s is read as what it is', async (encoding) => {
+    const { id, encoding: told } = await desk.upload('lithology.csv', file('GNS', 'GRÈS', encoding));
+    expect(told).toBe(encoding === 'utf8' ? 'utf-8' : 'windows-1252');
+    expect((await desk.load(id)).state).toBe('done');
+    const [revision] = await desk.revisions();
+    const table = await desk.lead.get(`${desk.base}/tables/${revision?.tableId}`).expect(200);
+    const code = getTable.response.parse(table.body).columns.find(({ name }) => name === 'code');
+    expect(code?.dictionary).toEqual(['BAS', 'GNS', 'GRÈS']);
+  });
+
+  test('a file of two encodings is refused, not half misread', async () => {
+    const { uploads, refused } = await desk.receive(['lithology.csv', file('GRÈS', 'GRÈS', 'latin1')]);
+    expect(uploads).toEqual([]);
+    expect(refused).toEqual([{ fileName: 'lithology.csv', message: 'expected one text encoding, found UTF-8 at the start of the file and another further on' }]);
+    await desk.stillAnswers();
   });
 });
 
