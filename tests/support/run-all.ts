@@ -56,7 +56,7 @@ function vitest(name: string, projects: string[]): void {
 
 // Each takes one core for minutes: side by side.
 await Promise.all([quietCheck('lint', ['eslint', '.', '--max-warnings', '0']), quietCheck('types', ['tsc', '--noEmit'])]);
-vitest('unit, reference and API tests', ['node', 'dom']);
+vitest('unit, reference and API tests', ['numeric', 'node', 'dom']);
 check('build of the client', ['vite', 'build', '--logLevel', 'warn']);
 check('build of the server', ['tsx', 'server/cli/build-server.ts']);
 if (ensureChromium()) {
