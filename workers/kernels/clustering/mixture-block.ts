@@ -1,3 +1,4 @@
+import { expOfNegative } from '#kernels/exp.ts';
 import { isAxial, type MixtureDensity } from './mixture-model.ts';
 import { packedSize } from './packed-cholesky.ts';
 
@@ -78,7 +79,7 @@ function shareOut({ shares, logDensity, partial }: MixtureBlock, k: number, coun
   for (let at = 0; at < end; at += BLOCK_ROWS) {
     for (let r = 0; r < count; r++) {
       const less = shares[at + r]! - logDensity[r]!;
-      const share = less < NEGLIGIBLE ? 0 : Math.exp(less);
+      const share = less === 0 ? 1 : less < NEGLIGIBLE ? 0 : expOfNegative(less);
       shares[at + r] = share;
       partial[r]! += share;
     }
