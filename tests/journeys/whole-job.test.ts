@@ -139,7 +139,7 @@ describe('a new geologist does the whole job by hand', () => {
     await page.getByRole('button', { name: 'Save limits' }).click();
     await page.getByText('Limits saved', { exact: true }).waitFor();
     await page.getByRole('button', { name: 'Flag zones' }).click();
-    await page.getByRole('table', { name: 'Deleterious zones' }).waitFor({ timeout: JOB_LIMIT_MS });
+    await page.getByRole('table', { name: 'Deleterious zones', exact: true }).waitFor({ timeout: JOB_LIMIT_MS });
   });
 
   it('takes one code per interval, in the file whose checksum is on the screen, close to the true ground', async () => {

@@ -22,9 +22,8 @@ export function EditableName({ name, refusal, onRename }: Props) {
   if (refusal !== undefined) return <span title={refusal}>{name}</span>;
   if (text === null) {
     return (
-      <button ref={button} type="button" title="Rename" className="min-h-6 max-w-full truncate rounded-1 text-left font-medium underline decoration-rule-firm decoration-dotted underline-offset-4 hover:bg-trough" onClick={() => setText(name)}>
+      <button ref={button} type="button" title="Rename" aria-label={`${name}, rename`} className="min-h-6 max-w-full truncate rounded-1 text-left font-medium underline decoration-rule-firm decoration-dotted underline-offset-4 hover:bg-trough" onClick={() => setText(name)}>
         {name}
-        <span className="sr-only">, rename</span>
       </button>
     );
   }
