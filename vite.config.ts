@@ -10,6 +10,8 @@ export default defineConfig({
   server: { port: 4311, proxy: { '/api': `http://localhost:${apiPort}` } },
   build: { outDir: 'dist/client', emptyOutDir: true, sourcemap: false, chunkSizeWarningLimit: 900 },
   test: {
+    // By default a core is left idle; much of the tests' time is waiting for other processes anyway.
+    maxWorkers: '100%',
     projects: [
       {
         extends: true,

@@ -56,11 +56,8 @@ test('OU-05 answers of the API are not stored by caches', async () => {
   }
 });
 
-test('the built client: hashed assets for a year, any page address gives the one page', async () => {
-  const folder = tempFolder();
-  mkdirSync(join(folder.path, 'assets'));
-  writeFileSync(join(folder.path, 'index.html'), '<!doctype html><title>Selvage</title>');
-  writeFileSync(join(folder.path, 'assets', 'index-4f2a.js'), 'export {};');
+/** The app with its client in a folder, whatever has been built. */
+async function appOn(clientDir: string) {
   const { env, db, mailer, compute } = await testClient();
   const log = createLog('silent');
   const deps = {
@@ -75,7 +72,15 @@ test('the built client: hashed assets for a year, any page address gives the one
     demo: null,
     checks: [],
   };
-  const app = createApp(deps, folder.path).express;
+  return createApp(deps, clientDir).express;
+}
+
+test('the built client: hashed assets for a year, any page address gives the one page', async () => {
+  const folder = tempFolder();
+  mkdirSync(join(folder.path, 'assets'));
+  writeFileSync(join(folder.path, 'index.html'), '<!doctype html><title>Selvage</title>');
+  writeFileSync(join(folder.path, 'assets', 'index-4f2a.js'), 'export {};');
+  const app = await appOn(folder.path);
 
   const page = await request(app).get('/deposits/3/groups');
   expect([page.status, page.get('content-type'), page.get('cache-control')]).toEqual([
@@ -94,7 +99,8 @@ test('the built client: hashed assets for a year, any page address gives the one
 });
 
 test('without a built client the server says so', async () => {
-  const client = await testClient();
-  const res = await client.bare().get('/');
+  const folder = tempFolder();
+  const res = await request(await appOn(folder.path)).get('/');
   expect([res.status, res.text]).toEqual([503, expect.stringContaining('npm run build')]);
+  folder.remove();
 });
