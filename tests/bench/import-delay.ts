@@ -28,7 +28,7 @@ export async function importDelayBench(): Promise<Bench> {
   const path = join(folder, 'assays.csv');
   writeAssays(path);
   const content = readFileSync(path);
-  const { env, remove } = await tempInstance({ PORT: '0', LOG_LEVEL: 'error' });
+  const { env, remove } = await tempInstance({ PORT: '0', LOG_LEVEL: 'error', INSTANCE: 'production', SMTP_URL: 'smtp://127.0.0.1:9', ALLOW_PLAIN_HTTP: 'yes' });
   const db = openDb(env.paths.database);
   const people = await insertPeople(db, env, () => new Date());
   await db.destroy();
