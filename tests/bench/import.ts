@@ -16,12 +16,12 @@ export async function importBench(): Promise<Bench> {
   const path = join(folder, 'assays.csv');
   writeAssays(path);
   const { store, remove } = await columnDatabase();
-  const { mapping } = await inspectFile(path, 'assays.csv', 1e9);
+  const { mapping, encoding } = await inspectFile(path, 'assays.csv', 1e9);
   return {
     workload: `import ${ASSAY_ROWS} × ${ASSAY_COLUMNS} CSV, checked and written (goal: ratio ≤ 3)`,
     peerName: 'bare csv-parse stream',
     ours: async () => {
-      const { draft, order } = await readTable(store, { path, mapping, collarTableId: null, baseTableId: null }, () => undefined);
+      const { draft, order } = await readTable(store, { path, encoding, mapping, collarTableId: null, baseTableId: null }, () => undefined);
       const tableId = store.createTable({ depositId: 1, nRows: order.length, purpose: 'bench', jobId: null });
       writeDraft(store, tableId, draft, order);
       store.dropTable(tableId);

@@ -3,11 +3,13 @@ import { stat } from 'node:fs/promises';
 import { Transform, type Readable } from 'node:stream';
 import { CsvError, parse, type Options } from 'csv-parse';
 import { KernelError } from '#kernels/kernel-error.ts';
-import { encodingOfFile, type TextEncoding } from './text-encoding.ts';
+import type { TextEncoding } from './text-encoding.ts';
 
 export interface RowSource {
   path: string;
   delimiter: string;
+  /** As found when the file came in: telling it takes a look at every byte. */
+  encoding: TextEncoding;
 }
 
 /** One record may hold a mebibyte; more is a quote that never closes. */
@@ -55,11 +57,10 @@ function textStream(path: string, encoding: TextEncoding, onBytes: (count: numbe
  * @throws {KernelError} `bad-csv` with the row; `not-text`.
  */
 export async function eachRow(
-  { path, delimiter }: RowSource,
+  { path, delimiter, encoding }: RowSource,
   onRow: (row: number, cells: string[]) => void,
   onProgress: (share: number) => void = () => undefined,
 ): Promise<void> {
-  const encoding = await encodingOfFile(path);
   const { size } = await stat(path);
   let bytesRead = 0;
   const source = textStream(path, encoding, (count) => (bytesRead += count));

@@ -3,10 +3,10 @@ import type { ColumnGuess, FileMapping, TableKind } from '#contract/files.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { csvOptions } from './csv-rows.ts';
 import { guessColumns, guessKind } from './guess-columns.ts';
-import { encodingOfFile, readHead } from './text-encoding.ts';
+import { encodingOfFile, readHead, type TextEncoding } from './text-encoding.ts';
 
 export interface Inspection {
-  encoding: string;
+  encoding: TextEncoding;
   guess: ColumnGuess[];
   mapping: FileMapping;
   /** The header as one text: the same header is the same source. */

@@ -7,11 +7,13 @@ import { knownHoles } from './hole-names.ts';
 import { ProblemList } from './problem-list.ts';
 import { TableDraft } from './table-draft.ts';
 import { TableReader } from './table-reader.ts';
+import type { TextEncoding } from './text-encoding.ts';
 
 const MARK_BY_QUALIFIER = { [QUALIFIER.measured]: 'plain', [QUALIFIER.below]: 'below', [QUALIFIER.above]: 'above' } as const;
 
 export interface PreviewInput {
   path: string;
+  encoding: TextEncoding;
   mapping: FileMapping;
   rows: number;
   collarNames: string[] | null;
@@ -27,14 +29,14 @@ function markOf(text: string, decimalMark: '.' | ',') {
 }
 
 /** Reads the first rows with a mapping and marks each cell as it will be understood. */
-export async function previewFile({ path, mapping, rows, collarNames, collarLengths }: PreviewInput): Promise<PreviewRow[]> {
+export async function previewFile({ path, encoding, mapping, rows, collarNames, collarLengths }: PreviewInput): Promise<PreviewRow[]> {
   const problems = new ProblemList();
   const holes = collarNames === null ? null : knownHoles(collarNames, collarLengths);
   const reader = new TableReader(mapping, { holes }, new TableDraft(), problems);
   const shown = mapping.columns.filter(({ role }) => role !== 'skip');
   const preview: PreviewRow[] = [];
   try {
-    await eachRow({ path, delimiter: mapping.delimiter }, (row, cells) => {
+    await eachRow({ path, delimiter: mapping.delimiter, encoding }, (row, cells) => {
       if (row === 1) return reader.readHeader(cells);
       if (cells.length === 1 && cells[0]?.trim() === '') return;
       if (preview.length >= rows) throw new Cancelled();

@@ -8,9 +8,11 @@ import { sortedRows } from './row-order.ts';
 import { resolveDeterminations, settleConflicts, settlePending } from './settle.ts';
 import { TableDraft } from './table-draft.ts';
 import { TableReader } from './table-reader.ts';
+import type { TextEncoding } from './text-encoding.ts';
 
 export interface ReadTableInput {
   path: string;
+  encoding: TextEncoding;
   mapping: FileMapping;
   /** Table of the current collars, to know holes by; null while there is none. */
   collarTableId: number | null;
@@ -47,14 +49,15 @@ export async function readTable(
   input: ReadTableInput,
   onProgress: (share: number) => void,
 ): Promise<ReadTableOutput> {
-  const { path, mapping, baseTableId } = input;
+  const { mapping, baseTableId } = input;
+  const source = { path: input.path, delimiter: mapping.delimiter, encoding: input.encoding };
   const holes = collarsOf(store, input);
   const problems = new ProblemList();
   const fileDraft = new TableDraft();
   const reader = new TableReader(mapping, { holes }, fileDraft, problems);
   let rows = 0;
   let blank = 0;
-  await eachRow({ path, delimiter: mapping.delimiter }, (row, cells) => {
+  await eachRow(source, (row, cells) => {
     if (row === 1) return reader.readHeader(cells);
     if (cells.length === 1 && cells[0]?.trim() === '') blank += 1;
     else rows += 1;
@@ -68,7 +71,7 @@ export async function readTable(
   const leftOut = new Uint8Array(draft.rows);
   leftOut.set(fileLeftOut, base?.rows ?? 0);
   settleConflicts(mapping.kind, draft, problems, leftOut);
-  await giveOriginals({ path, delimiter: mapping.delimiter }, problems);
+  await giveOriginals(source, problems);
 
   const order = sortedRows(draft).filter((i) => leftOut[i] === 0);
   const rowsAdded = order.reduce((sum, i) => sum + (draft.sourceRow.at(i) > 0 ? 1 : 0), 0);

@@ -1,4 +1,4 @@
-import type { FileCheck } from '#contract/files.ts';
+import type { FileCheck, FileMapping } from '#contract/files.ts';
 import { readTable, type ReadTableInput } from '#workers/intake/read-table.ts';
 import { storeProblems } from '#workers/intake/store-problems.ts';
 import { defineTask } from '#workers/task.ts';
@@ -7,11 +7,17 @@ export interface CheckFileInput extends ReadTableInput {
   uploadId: number;
 }
 
+export interface CheckFileOutput {
+  check: FileCheck;
+  /** What the rows were read by: one saved meanwhile makes the check worthless. */
+  mapping: FileMapping;
+}
+
 /** Reads a whole file and lists its row problems; loads nothing. */
-export default defineTask<CheckFileInput, FileCheck>(async (input, { report, store }) => {
+export default defineTask<CheckFileInput, CheckFileOutput>(async (input, { report, store }) => {
   report('read rows', 0);
   const { check, problems } = await readTable(store(), input, (share) => report('read rows', 0.95 * share));
   report('list problems', 0.97);
   storeProblems(store().db, input.uploadId, problems.listed);
-  return check;
+  return { check, mapping: input.mapping };
 });

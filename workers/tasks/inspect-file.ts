@@ -17,7 +17,7 @@ export default defineTask<InspectFileInput, InspectFileOutput>(async ({ path, fi
   report('look at the columns', 0);
   const inspection = await inspectFile(path, fileName, sizeBytes);
   let rowCount = 0;
-  await eachRow({ path, delimiter: inspection.mapping.delimiter }, (row, cells) => {
+  await eachRow({ path, delimiter: inspection.mapping.delimiter, encoding: inspection.encoding }, (row, cells) => {
     if (row > 1 && (cells.length > 1 || cells[0]?.trim() !== '')) rowCount += 1;
   }, (share) => report('count rows', share));
   return { ...inspection, rowCount };

@@ -1,14 +1,13 @@
 import { createHash } from 'node:crypto';
 import * as z from 'zod';
-import type { FileCheck } from '#contract/files.ts';
 import { Id } from '#contract/common.ts';
 import { AppError, orNotFound } from '#server/lib/errors.ts';
 import { enqueueAssembly } from '#server/modules/snapshots/enqueue-assembly.ts';
-import type { CheckFileInput } from '#workers/tasks/check-file.ts';
+import type { CheckFileInput, CheckFileOutput } from '#workers/tasks/check-file.ts';
 import type { LoadFileInput, LoadFileOutput } from '#workers/tasks/load-file.ts';
 import type { IntakeDeps } from './intake.service.ts';
 import { revisionsRepository } from './revisions.repository.ts';
-import { mappingOf, uploadsRepository } from './uploads.repository.ts';
+import { LOADED_ALREADY, mappingOf, uploadsRepository } from './uploads.repository.ts';
 
 const CheckParams = z.strictObject({ uploadId: Id });
 const LoadParams = CheckParams.extend({ mode: z.enum(['replace', 'add']) });
@@ -20,26 +19,20 @@ export function registerIntakeJobs({ clock, jobs, record, files, uploads, revisi
   async function readInput(depositId: number, uploadId: number) {
     const row = orNotFound(await uploads.row(depositId, uploadId), 'upload');
     const collars = await revisions.currentTable(depositId, 'collar');
-    return { row, input: { path: files.pathOf(row.stored_name), mapping: mappingOf(row), collarTableId: collars?.table_id ?? null } };
+    return { row, input: { path: files.pathOf(row.stored_name), encoding: row.encoding, mapping: mappingOf(row), collarTableId: collars?.table_id ?? null } };
   }
 
-  /** Checksum of the mapping each running check reads by: one saved meanwhile makes the check worthless. */
-  const checkedWith = new Map<number, string>();
-
-  jobs.register<CheckFileInput, FileCheck>('check-file', {
+  jobs.register<CheckFileInput, CheckFileOutput>('check-file', {
     task: 'check-file',
-    async prepare({ id, depositId, params }) {
+    async prepare({ depositId, params }) {
       const { uploadId } = CheckParams.parse(params);
-      const { row, input } = await readInput(depositId, uploadId);
-      checkedWith.set(id, sha256(row.mapping));
+      const { input } = await readInput(depositId, uploadId);
       return { ...input, baseTableId: null, uploadId };
     },
-    async finish(trx, { id, depositId, params }, check) {
+    async finish(trx, { depositId, params }, { check, mapping }) {
       const { uploadId } = CheckParams.parse(params);
       const row = orNotFound(await uploadsRepository(trx).row(depositId, uploadId), 'upload');
-      const mapping = checkedWith.get(id);
-      checkedWith.delete(id);
-      if (sha256(row.mapping) !== mapping) throw new AppError(409, 'mapping-changed', 'The mapping was changed while rows were checked with the earlier one: check again.');
+      if (JSON.stringify(mappingOf(row)) !== JSON.stringify(mapping)) throw new AppError(409, 'mapping-changed', 'The mapping was changed while rows were checked with the earlier one: check again.');
       await uploadsRepository(trx).update(trx, uploadId, { file_check: JSON.stringify(check), state: 'checked' });
       return { kind: 'upload', id: uploadId };
     },
@@ -50,6 +43,8 @@ export function registerIntakeJobs({ clock, jobs, record, files, uploads, revisi
     async prepare({ id, depositId, params }) {
       const { uploadId, mode } = LoadParams.parse(params);
       const { row, input } = await readInput(depositId, uploadId);
+      // Two requests of one instant are both taken; the load that comes second finds it done.
+      if (row.state === 'loaded') throw new AppError(409, 'upload-loaded', LOADED_ALREADY);
       const base = mode === 'add' ? await revisions.currentTable(depositId, mappingOf(row).kind) : undefined;
       return { ...input, baseTableId: base?.table_id ?? null, depositId, uploadId, jobId: id };
     },

@@ -18,7 +18,7 @@ import type { InspectFileInput, InspectFileOutput } from '#workers/tasks/inspect
 import type { PreviewFileInput } from '#workers/tasks/preview-file.ts';
 import type { FileStore } from './file-store.ts';
 import { cleanFileName } from './receive-files.ts';
-import { mappingOf, type UploadRow, type UploadsRepository } from './uploads.repository.ts';
+import { LOADED_ALREADY, mappingOf, type UploadRow, type UploadsRepository } from './uploads.repository.ts';
 import type { RevisionsRepository } from './revisions.repository.ts';
 
 export interface ReceivedFile {
@@ -131,10 +131,10 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
     },
 
     async preview(depositId: number, uploadId: number, mapping: FileMapping, rows: number) {
-      const { stored_name } = await rowOf(depositId, uploadId);
+      const { stored_name, encoding } = await rowOf(depositId, uploadId);
       planColumns(mapping);
       const collars = await revisions.currentTable(depositId, 'collar');
-      const input = { path: files.pathOf(stored_name), mapping, rows, collarTableId: collars?.table_id ?? null };
+      const input = { path: files.pathOf(stored_name), encoding, mapping, rows, collarTableId: collars?.table_id ?? null };
       const preview = await compute.run<PreviewFileInput, PreviewRow[]>('preview-file', input);
       const shown = mapping.columns.filter(({ role }) => role !== 'skip');
       const columns = shown.map(({ index, role, analyte, oxide, unit, header }) => ({
@@ -150,7 +150,7 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
     },
 
     async load(depositId: number, uploadId: number, mode: 'replace' | 'add', actor: Actor): Promise<JobStarted> {
-      const row = await openRow(depositId, uploadId, 'This file is loaded already.');
+      const row = await openRow(depositId, uploadId, LOADED_ALREADY);
       planColumns(mappingOf(row));
       return { job: await jobs.enqueue({ depositId, kind: 'load-file', title: `Load ${row.file_name}`, params: { uploadId, mode }, actor }) };
     },

@@ -1,6 +1,8 @@
 import type { Knex } from 'knex';
 import * as z from 'zod';
 import { ColumnGuess, FileCheck, FileMapping, type RowProblem, type Upload } from '#contract/files.ts';
+import { WAITING } from '#server/modules/jobs/jobs.repository.ts';
+import type { InspectFileOutput } from '#workers/tasks/inspect-file.ts';
 
 export interface UploadRow {
   id: number;
@@ -12,7 +14,7 @@ export interface UploadRow {
   uploaded_by: number;
   uploaded_at: string;
   state: 'mapped' | 'checked' | 'loaded' | 'discarded';
-  encoding: string;
+  encoding: InspectFileOutput['encoding'];
   row_count: number;
   guess: string;
   header_signature: string;
@@ -47,6 +49,7 @@ const toUpload = (row: NamedUploadRow): Upload => ({
   revisionId: row.revision_id,
 });
 
+export const LOADED_ALREADY = 'This file is loaded already.';
 const LIST_LIMIT = 200;
 
 export function uploadsRepository(db: Knex) {
@@ -85,7 +88,7 @@ export function uploadsRepository(db: Knex) {
       db<UploadRow>('uploads').where({ deposit_id: depositId, header_signature: headerSignature, state: 'loaded' }).orderBy('id', 'desc').first(),
     /** Is a load of it waiting or running? */
     async isLoading(depositId: number, uploadId: number): Promise<boolean> {
-      const job: unknown = await db('jobs').where({ deposit_id: depositId, kind: 'load-file' }).whereIn('state', ['queued', 'running'])
+      const job: unknown = await db('jobs').where({ deposit_id: depositId, kind: 'load-file' }).whereIn('state', [...WAITING, 'running'])
         .whereRaw("json_extract(params, '$.uploadId') = ?", [uploadId]).first('id');
       return job !== undefined;
     },

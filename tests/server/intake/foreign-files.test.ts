@@ -100,6 +100,16 @@ describe('what a loaded file no longer takes: 409 with the reason', () => {
     expect((await desk.revisions())[0]).toMatchObject({ kind: 'lithology', rows: 2 });
   });
 
+  test('two loads asked for in one instant make one revision', async () => {
+    const { id } = await desk.upload('lithology.csv', csv('HoleID,From,To,Lithology', 'TH-1,0,2,BAS'));
+    const before = (await desk.revisions()).length;
+    const answers = await Promise.all([1, 2].map(() => desk.lead.post(`${desk.at(id)}/load`).send({ mode: 'replace' })));
+    const jobs = await Promise.all(answers.filter(({ status }) => status === 202).map((res) => desk.ended(res)));
+    expect(jobs.filter(({ state }) => state === 'done')).toHaveLength(1);
+    for (const { error } of jobs.filter(({ state }) => state === 'failed')) expect(error).toMatchObject({ code: 'upload-loaded' });
+    expect((await desk.revisions()).length).toBe(before + 1);
+  });
+
   test('a check of an earlier mapping is not kept as one of the mapping saved meanwhile', async () => {
     const rows = Array.from({ length: 20_000 }, (_, i) => `TH-2,${i / 1000},${(i + 1) / 1000},BAS`);
     const { id, mapping } = await desk.upload('lithology.csv', csv('HoleID,From,To,Lithology', ...rows));
