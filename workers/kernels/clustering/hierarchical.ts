@@ -101,8 +101,14 @@ export interface Join {
   height: number;
 }
 
-/** Joins in the order the chain finds them; a group lives on at the place of its later row. */
-function joinByChain(
+/**
+ * Joins in the order the nearest-neighbour chain finds them; a group lives on at the place of its later
+ * row.
+ *
+ * @param distances Condensed, as of `condensedDistances`; used up.
+ * @param size What each row stands for; used up.
+ */
+export function joinByChain(
   distances: Float64Array,
   size: Float64Array,
   linkage: Linkage,

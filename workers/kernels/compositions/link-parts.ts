@@ -1,3 +1,4 @@
+import { averageLinkage } from '#kernels/clustering/average-linkage.ts';
 import { requireSquare } from './part-relations.ts';
 
 /** Parts joined step by step, the most nearly proportional first. */
@@ -12,7 +13,8 @@ export interface PartTree {
 
 /**
  * Average linkage of parts on their variation matrix: an order for a heat map, and a sequential
- * binary partition whose balances set apart what varies together. Ties go to the earlier parts.
+ * binary partition whose balances set apart what varies together. Equal means are
+ * settled in the same way each time.
  *
  * @param matrix T, row-major (nParts, nParts), symmetric.
  * @throws {KernelError} `too-few-parts` under two, `shape`.
@@ -20,29 +22,16 @@ export interface PartTree {
  */
 export function linkParts(matrix: Float64Array, nParts: number): PartTree {
   requireSquare(matrix, nParts);
-  let sets = Array.from({ length: nParts }, (_, part) => [part]);
-  const meanBetween = (a: readonly number[], b: readonly number[]) =>
-    a.reduce((sum, i) => sum + b.reduce((part, j) => part + matrix[i * nParts + j]!, 0), 0) /
-    (a.length * b.length);
-  const merges: PartTree['merges'] = [];
-  while (sets.length > 1) {
-    let best = { above: sets[0]!, below: sets[1]!, height: Infinity };
-    sets.forEach((above, i) => {
-      for (const below of sets.slice(i + 1)) {
-        const height = meanBetween(above, below);
-        if (height < best.height) best = { above, below, height };
-      }
-    });
-    const { above, below } = best;
-    merges.push(best);
-    sets = sets.flatMap((set) =>
-      set === above ? [[...above, ...below]] : set === below ? [] : [set],
-    );
-  }
+  const members = Array.from({ length: nParts }, (_, part) => [part]);
+  const merges = averageLinkage(matrix, nParts).map(({ a, b, height }) => {
+    const [above, below] = [members[a]!, members[b]!];
+    members.push([...above, ...below]);
+    return { above, below, height };
+  });
   const signOf = (merge: PartTree['merges'][number], part: number) =>
     merge.above.includes(part) ? 1 : merge.below.includes(part) ? -1 : 0;
   const signs = merges
     .toReversed()
     .map((merge) => Array.from({ length: nParts }, (_, part) => signOf(merge, part)));
-  return { merges, order: sets[0]!, signs };
+  return { merges, order: members.at(-1) ?? [], signs };
 }

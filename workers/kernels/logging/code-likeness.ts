@@ -5,7 +5,7 @@ import { energyTest } from '#kernels/tables/energy-distance.ts';
 import { pairsOf } from '#kernels/tables/grouped-values.ts';
 import { checkHoleStarts } from '#kernels/tables/hole-shift.ts';
 import { benjaminiHochberg } from '#kernels/tables/multiple-tests.ts';
-import { averageLinkage, type TreeJoin } from './average-linkage.ts';
+import { averageLinkage, type TreeJoin } from '#kernels/clustering/average-linkage.ts';
 import {
   centreDistances,
   codeSpace,

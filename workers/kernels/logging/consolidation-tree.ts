@@ -1,5 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
-import { averageLinkage, type TreeJoin } from './average-linkage.ts';
+import { averageLinkage, type TreeJoin } from '#kernels/clustering/average-linkage.ts';
 
 /** A tree of codes by chemistry and by who lies beside whom. */
 export interface ConsolidationTree {

@@ -1,7 +1,7 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { centredLogRatio } from '#kernels/compositions/centred-log-ratio.ts';
-import { averageLinkage, leafOrder } from '#kernels/logging/average-linkage.ts';
+import { averageLinkage, leafOrder } from '#kernels/clustering/average-linkage.ts';
 import { codeLikeness } from '#kernels/logging/code-likeness.ts';
 import { centreDistances, codeSpace, standardisedDistances } from '#kernels/logging/code-space.ts';
 import { nestedVariance } from '#kernels/logging/nested-variance.ts';

@@ -1,4 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import { joinByChain, treeOfJoins } from './hierarchical.ts';
 
 /** Two branches joined. Leaves are 0..n-1; the join at place i of the list is branch n + i. */
 export interface TreeJoin {
@@ -11,7 +12,8 @@ export interface TreeJoin {
 
 /**
  * Tree of a distance matrix by average linkage: the two branches with the least mean distance between
- * their leaves join first; ties go to the first pair. Own code: trees of tens of codes need no package.
+ * their leaves join first; equal distances are settled in the same way each time. The chain is that of
+ * `hierarchicalTree`, on distances that are given.
  *
  * @param distances Row-major (n, n), symmetric, finite, >= 0. Not modified.
  * @returns n - 1 joins, heights never falling.
@@ -21,34 +23,18 @@ export interface TreeJoin {
  */
 export function averageLinkage(distances: Float64Array, n: number): TreeJoin[] {
   requireDistances(distances, n);
-  const gap = distances.slice();
-  const branch = Array.from({ length: n }, (_, i) => ({ id: i, size: 1 }));
-  const open = new Set(branch.keys());
-  const joins: TreeJoin[] = [];
-  while (open.size > 1) {
-    const { i, j, height } = nearestPair(gap, n, [...open]);
-    const [first, second] = [branch[i]!, branch[j]!];
-    const size = first.size + second.size;
-    for (const k of open) {
-      const mean = (first.size * gap[i * n + k]! + second.size * gap[j * n + k]!) / size;
-      gap[i * n + k] = gap[k * n + i] = mean;
-    }
-    open.delete(j);
-    const [a, b] = first.id < second.id ? [first.id, second.id] : [second.id, first.id];
-    branch[i] = { id: n + joins.length, size };
-    joins.push({ a, b, height, size });
-  }
-  return joins;
-}
-
-function nearestPair(gap: Float64Array, n: number, open: readonly number[]) {
-  let best = { i: -1, j: -1, height: Infinity };
-  for (const [at, i] of open.entries()) {
-    for (const j of open.slice(at + 1)) {
-      if (gap[i * n + j]! < best.height) best = { i, j, height: gap[i * n + j]! };
-    }
-  }
-  return best;
+  const condensed = new Float64Array((n * (n - 1)) / 2);
+  for (let row = 0, at = 0; row < n; row++)
+    for (let col = row + 1; col < n; col++) condensed[at++] = distances[row * n + col]!;
+  const found = joinByChain(condensed, new Float64Array(n).fill(1), 'average');
+  const { merges, heights } = treeOfJoins(found, n);
+  const sizes = new Float64Array(2 * n).fill(1);
+  return Array.from(heights, (height, join) => {
+    const [a, b] = [merges[2 * join]!, merges[2 * join + 1]!];
+    const size = sizes[a]! + sizes[b]!;
+    sizes[n + join] = size;
+    return { a, b, height, size };
+  });
 }
 
 function requireDistances(distances: Float64Array, n: number): void {
