@@ -116,3 +116,25 @@ export function whiten(
     out[at + a] = sum;
   }
 }
+
+/**
+ * Answers for rows: `score` turns a whitened row into its shares, one per class.
+ *
+ * @returns Row-major (asked, classes); a row of NaN where a coordinate is missing.
+ */
+export function answerRows(
+  moments: ClassMoments,
+  columns: readonly Float64Array[],
+  asked: Int32Array,
+  score: (z: Float64Array, shares: Float64Array) => void,
+): Float64Array {
+  const { nClasses, p } = moments;
+  const out = new Float64Array(asked.length * nClasses).fill(NaN);
+  const z = new Float64Array(p);
+  asked.forEach((row, i) => {
+    if (!isComplete(columns, row)) return;
+    whiten(moments, columns, row, z);
+    score(z, out.subarray(i * nClasses, (i + 1) * nClasses));
+  });
+  return out;
+}

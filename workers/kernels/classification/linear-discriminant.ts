@@ -1,6 +1,6 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import type { FitClassifier } from '#kernels/logging/cross-validate.ts';
-import { classMoments, isComplete, whiten } from './class-moments.ts';
+import { answerRows, classMoments, whiten } from './class-moments.ts';
 
 /**
  * Coordinates of all rows: fixed, or fitted anew on each set of training rows (components, replaced
@@ -38,18 +38,11 @@ export function linearDiscriminant(
     );
     for (let c = 0; c < nClasses; c++) whiten(moments, meanColumns, c, centres, c * p);
     const logPrior = sizes.map((size) => (priors === 'equal' ? 0 : Math.log(size)));
-    return (asked) => {
-      const out = new Float64Array(asked.length * nClasses).fill(NaN);
-      const z = new Float64Array(p);
-      asked.forEach((row, i) => {
-        if (!isComplete(columns, row)) return;
-        whiten(moments, columns, row, z);
-        const scores = out.subarray(i * nClasses, (i + 1) * nClasses);
+    return (asked) =>
+      answerRows(moments, columns, asked, (z, scores) => {
         for (let c = 0; c < nClasses; c++) scores[c] = logPrior[c]! - squared(z, centres, c, p) / 2;
         toProbabilities(scores);
       });
-      return out;
-    };
   };
 }
 

@@ -1,6 +1,6 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import type { FitClassifier } from '#kernels/logging/cross-validate.ts';
-import { classMoments, isComplete, whiten } from './class-moments.ts';
+import { answerRows, classMoments, isComplete, whiten } from './class-moments.ts';
 import { coordinatesFor, type Coordinates } from './linear-discriminant.ts';
 
 /** Neighbours asked unless said. */
@@ -32,20 +32,14 @@ export function nearestNeighbours(
     used.forEach((i, at) => whiten(moments, columns, rows[i]!, known, at * p));
     const classes = Int32Array.from(used, (i) => classOf[i]!);
     const neighbours = new Neighbours(Math.min(k, used.length));
-    return (asked) => {
-      const out = new Float64Array(asked.length * nClasses).fill(NaN);
-      const z = new Float64Array(p);
-      asked.forEach((row, i) => {
-        if (!isComplete(columns, row)) return;
-        whiten(moments, columns, row, z);
+    return (asked) =>
+      answerRows(moments, columns, asked, (z, shares) => {
         neighbours.find(known, z);
-        const shares = out.subarray(i * nClasses, (i + 1) * nClasses).fill(0);
+        shares.fill(0);
         for (const at of neighbours.rows) shares[classes[at]!]! += 1 / sizes[classes[at]!]!;
         const total = shares.reduce((sum, share) => sum + share, 0);
         for (let c = 0; c < nClasses; c++) shares[c]! /= total;
       });
-      return out;
-    };
   };
 }
 

@@ -1,3 +1,4 @@
+import { overlapM } from '#kernels/intervals/interval-table.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 
 /** Intervals down one hole, m, by rising depth, without overlaps. */
@@ -36,7 +37,7 @@ export function valuesOnIntervals(
     let [sum, length] = [0, 0];
     for (let i = first; i < values.length && source.from[i]! < bottom; i++) {
       if (Number.isNaN(values[i])) continue;
-      const shared = Math.min(bottom, source.to[i]!) - Math.max(top, source.from[i]!);
+      const shared = overlapM(top, bottom, source.from[i]!, source.to[i]!);
       sum += shared * values[i]!;
       length += shared;
     }
