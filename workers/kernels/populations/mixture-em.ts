@@ -57,10 +57,13 @@ export function logLikelihood(data: MixtureData, components: readonly NormalComp
 const BLOCK = 256;
 /** Room for a block: densities, component after component; per point the largest, then the factor of responsibility. */
 const room = { density: new Float64Array(BLOCK * 8), top: new Float64Array(BLOCK), factor: new Float64Array(BLOCK) };
+const densityRoom = (k: number): Float64Array =>
+  room.density.length >= BLOCK * k ? room.density : new Float64Array(BLOCK * k);
 
 function measuredSums(data: MixtureData, components: readonly NormalComponent[]): Sums {
   const k = components.length;
-  const { density, top, factor } = room;
+  const { top, factor } = room;
+  const density = densityRoom(k);
   const sums: Sums = {
     mass: new Float64Array(k),
     first: new Float64Array(k),

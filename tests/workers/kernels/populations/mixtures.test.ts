@@ -105,6 +105,12 @@ describe('EM', () => {
     expect(logLikelihood(data, components)).toBeCloseTo(direct, 8);
   });
 
+  it.each([2, 9, 20])('the likelihood of %d equal components is that of one', (k) => {
+    const alone = [{ share: 1, mean: 0.5, sd: 1.2 }];
+    const equal = Array.from({ length: k }, () => ({ share: 1 / k, mean: 0.5, sd: 1.2 }));
+    expect(logLikelihood(data, equal)).toBeCloseTo(logLikelihood(data, alone), 8);
+  });
+
   it('one censored normal: mean and spread near the truth, far from those of substitution', () => {
     const draw = seededRandom(14);
     const all = Float64Array.from({ length: 4000 }, () => 1 + 0.8 * draw.normal());
