@@ -1,6 +1,6 @@
 import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
-import { launchBrowser, openContext, untilSettled, watchComplaints } from '#tests/support/journey-browser.ts';
+import { launchBrowser, openPage, untilSettled } from '#tests/support/journey-browser.ts';
 import { LEAD } from '#tests/support/journey-steps.ts';
 
 const MOST_TABS = 60;
@@ -31,9 +31,7 @@ describe('without a mouse', () => {
   let complaints: string[];
   beforeAll(async () => {
     browser = await launchBrowser();
-    const context = await openContext(browser, inject('journeyUrl'));
-    page = await context.newPage();
-    complaints = watchComplaints(page);
+    ({ page, complaints } = await openPage(browser, inject('journeyUrl')));
   });
   afterAll(() => browser.close());
 

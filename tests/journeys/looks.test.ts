@@ -2,7 +2,7 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
 import * as z from 'zod';
 import { pageViolations } from '#tests/support/journey-axe.ts';
-import { DESK, goTo, launchBrowser, openContext, PHONE, sidewaysOverflow, watchComplaints } from '#tests/support/journey-browser.ts';
+import { DESK, goTo, launchBrowser, openContext, openPage, PHONE, sidewaysOverflow } from '#tests/support/journey-browser.ts';
 import { ask, depositNamed, LEAD, signIn } from '#tests/support/journey-steps.ts';
 
 const Listed = z.array(z.looseObject({ id: z.number() }));
@@ -25,8 +25,7 @@ describe('every page, light and dark', () => {
   let complaints: string[];
   beforeAll(async () => {
     browser = await launchBrowser();
-    page = await (await openContext(browser, inject('journeyUrl'))).newPage();
-    complaints = watchComplaints(page);
+    ({ page, complaints } = await openPage(browser, inject('journeyUrl')));
   });
   afterAll(() => browser.close());
 

@@ -3,7 +3,7 @@ import type { Browser, Page } from 'playwright-core';
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
 import * as z from 'zod';
 import { expectWithin } from '#tests/support/expect-within.ts';
-import { goTo, launchBrowser, openContext, untilSettled, watchComplaints } from '#tests/support/journey-browser.ts';
+import { goTo, launchBrowser, openPage, untilSettled } from '#tests/support/journey-browser.ts';
 import { acceptEachGroup, depositInHand, groupBy, JOB_LIMIT_MS, makeCodes, runComponents, untilAssembled } from '#tests/support/journey-stages.ts';
 import { ask, openStage, signIn } from '#tests/support/journey-steps.ts';
 import { loadReference } from '#tests/support/reference.ts';
@@ -24,8 +24,7 @@ describe('open data from a file to codes', () => {
   let complaints: string[];
   beforeAll(async () => {
     browser = await launchBrowser();
-    page = await (await openContext(browser, inject('journeyUrl'))).newPage();
-    complaints = watchComplaints(page);
+    ({ page, complaints } = await openPage(browser, inject('journeyUrl')));
     await signIn(page);
   });
   afterAll(() => browser.close());

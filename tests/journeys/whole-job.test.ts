@@ -8,7 +8,7 @@ import * as z from 'zod';
 import { CODE_COLUMNS } from '#contract/codes.ts';
 import { adjustedRandIndex } from '#kernels/clustering/agreement.ts';
 import { makeDemoDeposit } from '#seeds/demo/demo-deposit.ts';
-import { goTo, launchBrowser, openContext, untilSettled, watchComplaints } from '#tests/support/journey-browser.ts';
+import { goTo, launchBrowser, openContext, openPage, untilSettled } from '#tests/support/journey-browser.ts';
 import { acceptEachGroup, groupBy, JOB_LIMIT_MS, loadFiles, makeCodes, runComponents } from '#tests/support/journey-stages.ts';
 import { depositNamed, linkMailedTo, openStage, signIn } from '#tests/support/journey-steps.ts';
 import { tempFolder } from '#tests/support/temp-instance.ts';
@@ -41,8 +41,7 @@ describe('a new geologist does the whole job by hand', () => {
   let complaints: string[];
   beforeAll(async () => {
     browser = await launchBrowser();
-    page = await (await openContext(browser, inject('journeyUrl'))).newPage();
-    complaints = watchComplaints(page);
+    ({ page, complaints } = await openPage(browser, inject('journeyUrl')));
   });
   afterAll(async () => {
     await browser.close();

@@ -4,7 +4,7 @@
  *
  * @see Hubert & Arabie (1985), Comparing partitions, J. Classif. 2.
  */
-export function adjustedRand(a: readonly number[], b: readonly number[]): number {
+export function adjustedRand(a: readonly (string | number)[], b: readonly (string | number)[]): number {
   const both = pairsWithin(a.map((label, row) => `${label}|${b[row]}`));
   const [inA, inB] = [pairsWithin(a), pairsWithin(b)];
   const expected = (inA * inB) / ((a.length * (a.length - 1)) / 2);

@@ -44,6 +44,12 @@ export function watchComplaints(page: Page): string[] {
   return complaints;
 }
 
+/** A page of a context of its own on the server under test, with what the browser complains about on it. */
+export async function openPage(browser: Browser, baseURL: string): Promise<{ page: Page; complaints: string[] }> {
+  const page = await (await openContext(browser, baseURL)).newPage();
+  return { page, complaints: watchComplaints(page) };
+}
+
 /** Waits until the page's heading stands and nothing is being read any more. */
 export async function untilSettled(page: Page): Promise<void> {
   await page.getByRole('heading', { level: 1 }).first().waitFor();

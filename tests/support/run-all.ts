@@ -14,19 +14,8 @@ const reportFolder = mkdtempSync(join(tmpdir(), 'selvage-test-'));
 const Report = z.object({ numPassedTests: z.number(), numFailedTests: z.number(), success: z.boolean() });
 const total = { passed: 0, failed: 0 };
 
-function command(name: string, args: string[]): boolean {
-  console.log(`\n— ${name}`);
-  const { status } = spawnSync('npx', ['--no-install', ...args], { stdio: 'inherit' });
-  return status === 0;
-}
-
-function check(name: string, args: string[]): void {
-  if (command(name, args)) total.passed += 1;
-  else total.failed += 1;
-}
-
-/** A check beside others: what it prints comes in one piece at its end. */
-async function quietCheck(name: string, args: string[]): Promise<void> {
+/** A step that passes or fails; what it prints comes in one piece at its end, so that two may run side by side. */
+async function check(name: string, args: string[]): Promise<void> {
   const child = spawn('npx', ['--no-install', ...args], { stdio: ['ignore', 'pipe', 'pipe'] });
   let output = '';
   const keep = (chunk: Buffer): void => void (output += chunk.toString());
@@ -42,12 +31,13 @@ function vitest(name: string, projects: string[]): void {
   const file = join(reportFolder, `${name.replaceAll(' ', '-')}.json`);
   const selected = projects.flatMap((project) => ['--project', project]);
   const reporters = ['--reporter=default', '--reporter=json', `--outputFile.json=${file}`];
-  const ok = command(name, ['vitest', 'run', ...selected, ...reporters]);
+  console.log(`\n— ${name}`);
+  const { status } = spawnSync('npx', ['--no-install', 'vitest', 'run', ...selected, ...reporters], { stdio: 'inherit' });
   try {
     const report = Report.parse(JSON.parse(readFileSync(file, 'utf8')));
     total.passed += report.numPassedTests;
     total.failed += report.numFailedTests;
-    if (!ok && report.numFailedTests === 0) total.failed += 1;
+    if (status !== 0 && report.numFailedTests === 0) total.failed += 1;
   } catch {
     console.log(`${name}: no report was written`);
     total.failed += 1;
@@ -55,10 +45,10 @@ function vitest(name: string, projects: string[]): void {
 }
 
 // Each takes one core for minutes: side by side.
-await Promise.all([quietCheck('lint', ['eslint', '.', '--max-warnings', '0']), quietCheck('types', ['tsc', '--noEmit'])]);
+await Promise.all([check('lint', ['eslint', '.', '--max-warnings', '0']), check('types', ['tsc', '--noEmit'])]);
 vitest('unit, reference and API tests', ['numeric', 'node', 'dom']);
-check('build of the client', ['vite', 'build', '--logLevel', 'warn']);
-check('build of the server', ['tsx', 'server/cli/build-server.ts']);
+await check('build of the client', ['vite', 'build', '--logLevel', 'warn']);
+await check('build of the server', ['tsx', 'server/cli/build-server.ts']);
 if (ensureChromium()) {
   vitest('browser journeys', ['journeys']);
 } else {

@@ -2,20 +2,8 @@ import { kmeans } from 'ml-kmeans';
 import { PCA } from 'ml-pca';
 import { describe, expect, it } from 'vitest';
 import { makeDemoDeposit } from '#seeds/demo/demo-deposit.ts';
+import { adjustedRand } from '#tests/reference/adjusted-rand.ts';
 import { readAssays } from './read-demo.ts';
-
-/** Adjusted Rand index of two labellings. Hubert & Arabie (1985), Comparing partitions. */
-function adjustedRand(a: readonly (string | number)[], b: readonly (string | number)[]): number {
-  const pairs = (n: number): number => (n * (n - 1)) / 2;
-  const pairsOf = (labels: readonly (string | number)[]): number => {
-    const counts = new Map<string | number, number>();
-    for (const label of labels) counts.set(label, (counts.get(label) ?? 0) + 1);
-    return [...counts.values()].reduce((sum, n) => sum + pairs(n), 0);
-  };
-  const both = pairsOf(a.map((label, i) => `${label}|${b[i]}`));
-  const expected = (pairsOf(a) * pairsOf(b)) / pairs(a.length);
-  return (both - expected) / ((pairsOf(a) + pairsOf(b)) / 2 - expected);
-}
 
 /** Best of several k-means runs on every fourth interval, on six components of the clr suite. */
 function groupDemo(k: number): { domains: string[]; clusters: number[] } {
