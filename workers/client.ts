@@ -27,6 +27,8 @@ export interface RunOptions {
 }
 
 export interface Compute {
+  /** Threads for long work: more parts of one job than these would only keep others waiting. */
+  readonly threads: number;
   /**
    * Runs `workers/tasks/<taskName>.ts` on a thread.
    *
@@ -62,13 +64,14 @@ const CANCEL_LIMIT_MS = 1_800;
 
 export function createCompute(options: ComputeOptions): Compute {
   const pending = new Map<number, Pending>();
+  const threads = Math.min(options.threads, Math.max(1, availableParallelism()));
   let nextRunId = 1;
 
   const host = startHost(
     {
       databaseFile: resolve(options.databaseFile),
       dataDir: resolve(options.dataDir),
-      threads: Math.min(options.threads, Math.max(1, availableParallelism())),
+      threads,
       taskFolder: options.taskFolder ?? fileURLToPath(new URL('./tasks/', import.meta.url)),
       memoryLimitMb: options.memoryLimitMb ?? defaultMemoryLimitMb(),
       threadHeapMb: options.threadHeapMb ?? DEFAULT_THREAD_HEAP_MB,
@@ -121,6 +124,7 @@ export function createCompute(options: ComputeOptions): Compute {
   }
 
   return {
+    threads,
     async run<In, Out>(taskName: string, input: In, { signal, onProgress }: RunOptions = {}): Promise<Out> {
       if (host.isClosed()) throw new ComputeError('closed', 'The service is stopping.', true);
       if (signal?.aborted) throw new Cancelled();

@@ -63,6 +63,7 @@ function testClock(): TestClock {
 }
 
 const noCompute: Compute = {
+  threads: 1,
   run: () => Promise.reject(new Error('this test has no compute host: ask for testClient({ compute: true })')),
   ready: () => Promise.resolve(),
   isHealthy: () => true,

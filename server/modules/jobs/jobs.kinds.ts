@@ -34,8 +34,6 @@ export interface RunnableKind {
 }
 
 const DEFAULT_TIME_LIMIT_MS = 3_600_000;
-/** As many as there are threads for jobs: more would keep other deposits waiting longer. */
-const PARTS_AT_MOST = 2;
 
 export interface JobKinds {
   register<In, Out>(kind: JobKind, spec: JobKindSpec<In, Out>): void;
@@ -46,7 +44,7 @@ export function createJobKinds(compute: Compute): JobKinds {
   const kinds = new Map<JobKind, RunnableKind>();
 
   async function outputOf<In, Out>({ task, parts }: JobKindSpec<In, Out>, input: In, options: RunOptions): Promise<Out> {
-    const inputs = parts?.split(input, PARTS_AT_MOST) ?? [];
+    const inputs = parts?.split(input, compute.threads) ?? [];
     if (!parts || inputs.length < 2) return compute.run<In, Out>(task, input, options);
     const [first, ...others] = await runParts(inputs, (part, own) => compute.run<In, Out>(task, part, own), options);
     if (first === undefined) throw new Error(`task ${task} was divided into nothing`);

@@ -5,6 +5,7 @@ import { openDb } from '#server/db/knex.ts';
 import { createLog } from '#server/lib/log.ts';
 import { createEvents, type Events } from '#server/modules/jobs/events.ts';
 import { createJobsService, type JobsService } from '#server/modules/jobs/jobs.service.ts';
+import { chunksOf } from '#server/modules/jobs/run-parts.ts';
 import { insertPeople, type TestPeople } from '#tests/support/people.ts';
 import { tempInstance } from '#tests/support/temp-instance.ts';
 import { testCompute } from '#tests/workers/test-compute.ts';
@@ -53,6 +54,13 @@ export function registerTestKinds(jobs: JobsService): { followed: number[] } {
       followed.push(id);
       return Promise.resolve();
     },
+  });
+  // Gives back its digits as one number, from as many parts as there are threads.
+  jobs.register<number[], number[]>('check-file', {
+    task: 'echo',
+    prepare: () => [1, 2, 3, 4],
+    parts: { split: (digits, count) => chunksOf(digits, count), join: (outputs) => outputs.flat() },
+    finish: (_trx, _job, digits) => ({ kind: 'upload', id: Number(digits.join('')) }),
   });
   return { followed };
 }

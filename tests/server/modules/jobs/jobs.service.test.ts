@@ -72,6 +72,11 @@ describe('a job that does not', () => {
   });
 });
 
+test('work in parts, one a thread, is put together in order', { timeout: PATIENCE_MS }, async () => {
+  expect(harness.compute.threads).toBeGreaterThan(1);
+  expect(await harness.runToEnd('check-file')).toMatchObject({ state: 'done', progress: 1, result: { kind: 'upload', id: 1234 } });
+});
+
 describe('JO-02 cancel', () => {
   const lead = (): { id: number; role: 'lead' } => ({ id: harness.people.of('lead').id, role: 'lead' });
 
