@@ -28,8 +28,8 @@ export const csvOptions = (delimiter: string): Options => ({
   max_record_size: MAX_RECORD_BYTES,
 });
 
-function toKernelError(error: unknown): unknown {
-  if (!(error instanceof CsvError)) return error;
+/** A fault of the parser with the row it is in. */
+export function csvFault(error: CsvError): KernelError {
   // Records read before it; the one that fails is the next.
   const row = typeof error['records'] === 'number' ? error['records'] + 1 : null;
   const where = row === null ? '' : `row ${row}: `;
@@ -75,7 +75,7 @@ export async function eachRow(
       if (row % 2048 === 0) onProgress(size === 0 ? 1 : bytesRead / size);
     }
   } catch (error) {
-    throw toKernelError(error);
+    throw error instanceof CsvError ? csvFault(error) : error;
   } finally {
     source.destroy();
   }

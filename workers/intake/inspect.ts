@@ -1,7 +1,7 @@
 import { CsvError, parse } from 'csv-parse/sync';
 import type { ColumnGuess, FileMapping, TableKind } from '#contract/files.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
-import { csvOptions } from './csv-rows.ts';
+import { csvFault, csvOptions } from './csv-rows.ts';
 import { guessColumns, guessKind } from './guess-columns.ts';
 import { encodingOfFile, readHead, type TextEncoding } from './text-encoding.ts';
 
@@ -20,7 +20,7 @@ const SAMPLE_ROWS = 200;
 /** The separator that divides the first lines into the most columns, the same number in each. */
 function detectDelimiter(text: string): Delimiter {
   const scores = DELIMITERS.map((delimiter) => {
-    const widths = headRecords(text, delimiter).slice(0, 30).filter((cells) => cells.length > 1 || cells[0] !== '').map((cells) => cells.length);
+    const widths = headRecords(text, delimiter).records.slice(0, 30).filter((cells) => cells.length > 1 || cells[0] !== '').map((cells) => cells.length);
     const width = widths[0] ?? 1;
     const steady = widths.filter((other) => other === width).length / Math.max(1, widths.length);
     return { delimiter, score: width > 1 ? width * steady * steady : 0 };
@@ -28,8 +28,8 @@ function detectDelimiter(text: string): Delimiter {
   return scores.reduce((best, next) => (next.score > best.score ? next : best)).delimiter;
 }
 
-/** Records up to the first that does not parse: reading the whole file tells what is wrong there. */
-function headRecords(text: string, delimiter: string): string[][] {
+/** Records up to the first that does not parse, and what was wrong there. */
+function headRecords(text: string, delimiter: string): { records: string[][]; fault: CsvError | null } {
   const records: string[][] = [];
   const keep = (cells: string[]): null => {
     records.push(cells);
@@ -37,10 +37,11 @@ function headRecords(text: string, delimiter: string): string[][] {
   };
   try {
     parse(text, { ...csvOptions(delimiter), to: SAMPLE_ROWS + 1, on_record: keep });
+    return { records, fault: null };
   } catch (error) {
-    if (!(error instanceof CsvError)) throw error;
+    if (error instanceof CsvError) return { records, fault: error };
+    throw error;
   }
-  return records;
 }
 
 const COMMA_DECIMAL = /^-?\d+,\d+$/;
@@ -59,8 +60,8 @@ const wholeLines = (text: string, isCut: boolean): string => (isCut ? text.slice
 /**
  * Looks at the first part of a file and guesses separator, table kind and what each column is.
  *
- * @throws {KernelError} `not-text`, `no-header`, `no-rows`; `bad-csv` when row 2 does not end in the
- *   part looked at.
+ * @throws {KernelError} `not-text`, `no-header`, `no-rows`; `bad-csv` when no row below the column names
+ *   parses, or row 2 does not end in the part looked at.
  */
 export async function inspectFile(path: string, fileName: string, sizeBytes: number): Promise<Inspection> {
   const head = await readHead(path);
@@ -68,7 +69,9 @@ export async function inspectFile(path: string, fileName: string, sizeBytes: num
   const isCut = head.length < sizeBytes;
   const text = wholeLines(new TextDecoder(encoding).decode(head), isCut);
   const delimiter = detectDelimiter(text);
-  const [header, ...rows] = headRecords(text, delimiter);
+  const { records, fault } = headRecords(text, delimiter);
+  const [header, ...rows] = records;
+  if (!header && fault) throw csvFault(fault);
   if (!header || header.every((cell) => cell.trim() === '')) {
     throw new KernelError('no-header', 'row 1: expected column names, found an empty line');
   }
@@ -76,6 +79,7 @@ export async function inspectFile(path: string, fileName: string, sizeBytes: num
   if (filled.length === 0 && isCut) {
     throw new KernelError('bad-csv', `row 2: expected one CSV record, found no end of it in ${Math.round(head.length / 1024)} KiB; is a quotation mark not closed?`, { row: 2 });
   }
+  if (filled.length === 0 && fault) throw csvFault(fault);
   if (filled.length === 0) throw new KernelError('no-rows', 'expected rows below the column names, found none');
   const kind: TableKind = guessKind(header, fileName, filled);
   const guess = guessColumns(header, filled, kind);

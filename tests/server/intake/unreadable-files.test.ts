@@ -30,6 +30,16 @@ describe('IN-04, IN-06 a file that is no table is refused by name, and the other
       /row [2-5]: expected one CSV record, found that a quotation mark opens and is not closed/,
     ],
     [
+      'open-quote-in-the-first-row.csv',
+      csv('HoleID,From,To,Lithology', 'TH-1,0,10,"AND', 'TH-1,10,20,AND', 'TH-2,0,30,RHY'),
+      /row 2: expected one CSV record, found that a quotation mark opens and is not closed/,
+    ],
+    [
+      'open-quote-in-the-names.csv',
+      csv('HoleID,"From,To,Cu_ppm', 'TH-1,0,10,5'),
+      /row 1: expected one CSV record, found that a quotation mark opens and is not closed/,
+    ],
+    [
       'endless-record.csv',
       `HoleID,From,To,Cu_ppm\nTH-1,0,2,"${'x'.repeat(1_100_000)}\n`,
       /row 2: expected one CSV record, found no end of it in 256 KiB; is a quotation mark not closed\?/,

@@ -16,7 +16,7 @@ const WORDS = [
   ['missing', 'listed, not received', 'LNR NR SNR'],
   ['missing', 'interference', 'INTF'],
   ['missing', 'contamination', 'CONT'],
-  ['not-analysed', 'not analysed', 'NA N/A #N/A NAN NULL - -9 -99 -999 -9999'],
+  ['not-analysed', 'not analysed', 'NA N.A. N/A #N/A NAN NULL - -9 -99 -999 -9999'],
 ] as const;
 
 /**

@@ -91,6 +91,7 @@ describe('parseAssayCell', () => {
     ['INTF', 'missing', 'interference'],
     ['CONT', 'missing', 'contamination'],
     ['NA', 'not-analysed', 'not analysed'],
+    ['n.a.', 'not-analysed', 'not analysed'],
     ['n/a', 'not-analysed', 'not analysed'],
     ['-', 'not-analysed', 'not analysed'],
     ['', 'not-analysed', 'blank'],
