@@ -1,6 +1,7 @@
 import { normalCdf } from '#kernels/normal.ts';
 import { checkGroups, pairsOf } from './grouped-values.ts';
 import { benjaminiHochberg, holm } from './multiple-tests.ts';
+import { exactTwoSidedP, MOST_ROWS_EXACT } from './rank-sum-law.ts';
 import { joined, midranks, rankSums } from './ranks.ts';
 import { chiSquareTail } from './special-functions.ts';
 
@@ -45,6 +46,8 @@ export interface MannWhitney {
   u: number;
   /** Two-sided, normal approximation with tie and continuity correction; nominal down-hole. */
   nominalP: number;
+  /** Two-sided over all orders of independent rows; null with ties or more than 50 rows. */
+  exactP: number | null;
   pHolm: number;
   pBenjaminiHochberg: number;
   /** 2 u / (n1 n2) - 1: chance of first above second less the chance of below. */
@@ -52,7 +55,7 @@ export interface MannWhitney {
 }
 
 /**
- * Mann-Whitney tests of every pair of groups, with p adjusted over the pairs.
+ * Mann-Whitney tests of every pair of groups, with the nominal p adjusted over the pairs.
  *
  * @param groups Two or more groups, each with a value; no NaN.
  * @throws {KernelError} `too-few-groups`; `not-finite`.
@@ -84,7 +87,9 @@ function mannWhitney(a: Float64Array, b: Float64Array) {
   const sd = Math.sqrt((product / 12) * (n + 1 - tieSum / (n * (n - 1))));
   const away = Math.max(0, Math.abs(u - product / 2) - 0.5);
   const nominalP = sd > 0 ? Math.min(1, 2 * normalCdf(-away / sd)) : 1;
-  return { u, nominalP, cliffsDelta: (2 * u) / product - 1 };
+  const isExact = tieSum === 0 && n <= MOST_ROWS_EXACT;
+  const exactP = isExact ? exactTwoSidedP(u, a.length, b.length) : null;
+  return { u, nominalP, exactP, cliffsDelta: (2 * u) / product - 1 };
 }
 
 /**

@@ -3,6 +3,7 @@ import { contactProfiles } from '#kernels/spatial/contact-profile.ts';
 import { readContact } from '#kernels/spatial/contact-reading.ts';
 import { categoryFrom } from '#kernels/tables/category.ts';
 import { mannWhitneyPairs } from '#kernels/tables/rank-tests.ts';
+import { welchTest } from '#kernels/tables/welch.ts';
 
 const A = [2.1, 1.8, 2.4, 2.0, 1.9, 2.2, 1.7, 2.5, 2.0, 1.6];
 const B = [0.6, 0.7, 0.5, 0.8, 0.55, 0.65, 1.8, 0.9, 0.7, 1.0];
@@ -26,17 +27,16 @@ const profilesOf = ({ intervals, domains, values }: ReturnType<typeof holes>) =>
   contactProfiles(intervals, domains, values, { compositeM: 1, seed: 1 });
 
 /** Ten holes that cross A to B, two composites a side, both of the grade given. */
-const ten = holes(
-  A.map(
-    (a, i) =>
-      [
-        ['A', a],
-        ['A', a],
-        ['B', B[i] ?? NaN],
-        ['B', B[i] ?? NaN],
-      ] as const,
-  ),
+const crossings = A.map(
+  (a, i) =>
+    [
+      ['A', a],
+      ['A', a],
+      ['B', B[i] ?? NaN],
+      ['B', B[i] ?? NaN],
+    ] as const,
 );
+const ten = holes(crossings);
 
 describe('ten contacts of two kinds of grade', () => {
   const [profile] = profilesOf(ten);
@@ -79,12 +79,24 @@ describe('ten contacts of two kinds of grade', () => {
   });
 });
 
-it('six a side: U 36 (computed; the exact p is 2 / C(12, 6))', () => {
-  const [test] = mannWhitneyPairs([
-    Float64Array.from(A.slice(0, 6)),
-    Float64Array.from(B.slice(0, 6)),
-  ]);
-  expect(test?.u).toBe(36);
+describe('six contacts', () => {
+  const [a, b] = [Float64Array.from(A.slice(0, 6)), Float64Array.from(B.slice(0, 6))];
+
+  it('U 36, exact p .0021645 = 2 / C(12, 6), Welch t 14.536653 (computed: scipy)', () => {
+    const [test] = mannWhitneyPairs([a, b]);
+    expect(test?.u).toBe(36);
+    expect(test?.exactP).toBeCloseTo(0.0021645, 7);
+    expect(test?.exactP).toBeCloseTo(2 / 924, 15);
+    expect(welchTest(a, b).t).toBeCloseTo(14.536653, 6);
+  });
+
+  it('ratio 3.287663 and no verdict under ten contacts (computed)', () => {
+    const [profile] = profilesOf(holes(crossings.slice(0, 6)));
+    expect(profile).toMatchObject({ contactsUsed: 6, verdict: null });
+    expect(Math.exp(profile?.test?.mean ?? NaN)).toBeCloseTo(3.287663, 6);
+    // All six differences point one way: 2 of 64 flips reach their mean.
+    expect(profile?.test).toMatchObject({ reached: 2, flips: 64, p: 2 / 64 });
+  });
 });
 
 describe('contacts', () => {
