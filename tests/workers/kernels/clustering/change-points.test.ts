@@ -19,7 +19,14 @@ it('finds the segments, the noise and the objective of the worked series', () =>
   expect([segments, notes]).toEqual([3, []]);
   expect(noise[0]).toBeCloseTo(0.209672, 6);
   expect(objective).toBeCloseTo(11.901541, 5);
+  // The penalty unless told is 2 ln 12 = 4.969813.
+  expect(changes({ penalty: 4.969813 }).objective).toBeCloseTo(objective, 5);
   expect(changes({ penalty: 2 * Math.log(12) }).objective).toBeCloseTo(objective, 12);
+  // Differences about zero, not about their median, would give a noise of .157254 (computed).
+  const steps = Array.from(x.subarray(1), (value, i) => Math.abs(value - x[i]!)).sort(
+    (a, b) => a - b,
+  );
+  expect(steps[5]! / (0.6744897501960817 * Math.SQRT2)).toBeCloseTo(0.157254, 5);
 });
 
 it('has the objectives computed without scaling', () => {

@@ -38,6 +38,16 @@ it.each([
   expect(mixtureParameterCount(family, k, p)).toBe(count);
 });
 
+it('BIC at ln L -100, n 50 and 44 parameters is 372.129 (computed)', () => {
+  const { bic, logLik, parameters, nUsed } = fit({
+    columns: twoGroups(50, 4),
+    k: 3,
+    rowsPerParameter: 1,
+  });
+  expect([parameters, nUsed]).toEqual([44, 50]);
+  expect(bic + 2 * logLik + 200).toBeCloseTo(372.129, 3);
+});
+
 it.each(COVARIANCE_FAMILIES)('%s: with one group it is the closed form', (family) => {
   const columns = [Float64Array.of(0, 2, 4, 6, 1, 3), Float64Array.of(1, 0, 3, 2, 5, 7)];
   const { model, logLik, own } = fit({ columns, k: 1, family, rowsPerParameter: 1 });

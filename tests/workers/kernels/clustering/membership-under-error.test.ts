@@ -40,6 +40,8 @@ it('has the spread of ln ppm and the probability of the closed form', () => {
   expect(b).toBeCloseTo(0.099751, 6);
   // ln (12/10) less half the difference of the variances, over the sd of a difference: numpy .911963
   const exact = normalCdf((Math.log(1.2) - (a * a - b * b) / 2) / Math.hypot(a, b));
+  expect(Math.log(1.2) - (a * a - b * b) / 2).toBeCloseTo(0.183113, 6);
+  expect(Math.hypot(a, b)).toBeCloseTo(0.135344, 6);
   expect(exact).toBeCloseTo(0.911963, 6);
   const draws = 4000;
   const { probability } = run({ draws });

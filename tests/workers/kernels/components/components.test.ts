@@ -40,7 +40,7 @@ describe('components', () => {
   it('of four rows: .225840, .004294, loadings and signs (computed: python)', () => {
     const { eigenvalues, shares, loadings, notes } = fitComponents(columnsOfTable(FOUR_ROWS, 3));
     expect([...eigenvalues].map((value) => Number(value.toFixed(6)))).toEqual([0.22584, 0.004294]);
-    expect(shares[0]).toBeCloseTo(0.98134, 5);
+    expect(100 * shares[0]!).toBeCloseTo(98.134, 3);
     const expected = [0.708462, -0.405892, -0.705743, -0.410601, -0.002719, 0.816492];
     expected.forEach((value, i) => expect(loadings[i]).toBeCloseTo(value, 6));
     expect(notes).toEqual([]);

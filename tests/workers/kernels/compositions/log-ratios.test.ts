@@ -32,6 +32,10 @@ function expectClose(found: Float64Array, expected: readonly number[], digits = 
 describe('worked row (10, 30, 60) (computed: python; clr and pivot also Node)', () => {
   it('clr, pivot, Helmert, alr, balance', () => {
     expectClose(centredLogRatio(x, 3), [-0.963457, 0.135155, 0.828302]);
+    // Each part over the exponential of its coordinate is the geometric mean.
+    centredLogRatio(x, 3).forEach((value, j) =>
+      expect(x[j]! / Math.exp(value)).toBeCloseTo(26.207414, 6),
+    );
     expectClose(isometricLogRatio(x, pivotBasis(3)), [-1.179989, -0.490129]);
     expectClose(isometricLogRatio(x, helmertBasis(3)), [-0.776836, -1.014459]);
     expectClose(additiveLogRatio(x, 3), [-1.791759, -0.693147]);

@@ -4,6 +4,7 @@ import { fitCensoredLognormal, meanBelowLimit } from '#kernels/compositions/cens
 import { replaceByLognormal } from '#kernels/compositions/lognormal-replacement.ts';
 import { VALUE_STATE } from '#kernels/compositions/replacement.ts';
 import { lowerTailRatio, lowerTailVariance } from '#kernels/compositions/truncated-normal.ts';
+import { normalCdf, normalQuantile } from '#kernels/normal.ts';
 import { loadReference, numbersOf } from '#tests/support/reference.ts';
 
 const { measured, below, above, missing } = VALUE_STATE;
@@ -65,6 +66,19 @@ describe('fitCensoredLognormal', () => {
     const value = meanBelowLimit({ logMean: Math.LN2, logSd: 1 }, 1);
     expect(value).toBeCloseTo(0.553146, 6);
     expect(Math.log(value)).toBeCloseTo(-0.592133, 6);
+  });
+
+  it('expects .244109 of rows below 1 of ln 2, 1 (computed), and finds that fit of such a table', () => {
+    expect(normalCdf(-Math.LN2)).toBeCloseTo(0.244109, 6);
+    const n = 4000;
+    const all = Float64Array.from({ length: n }, (_, i) =>
+      Math.exp(Math.LN2 + normalQuantile((i + 0.5) / n)),
+    );
+    const kept = all.filter((value) => value >= 1);
+    expect(1 - kept.length / n).toBeCloseTo(0.244109, 3);
+    const fit = fitCensoredLognormal(kept, ones(n - kept.length));
+    expect(fit.logMean).toBeCloseTo(Math.LN2, 2);
+    expect(fit.logSd).toBeCloseTo(1, 2);
   });
 
   it('without limits is the mean and sd of logs; a change of unit moves the mean only', () => {

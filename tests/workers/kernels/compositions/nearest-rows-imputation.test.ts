@@ -31,6 +31,9 @@ describe('imputeByNeighbours', () => {
     expect(imputeByNeighbours(table(), { k: 1 }).columns[0]![4]).toBeCloseTo(10.672199, 6);
     const two = imputeByNeighbours(table(), { k: 2 }).columns[0]![4]!;
     expect(two).toBeCloseTo((10.672199 + 10.319884) / 2, 6);
+    // The third alone: the last donor without the others.
+    const last = table().map((column) => column.slice(3));
+    expect(imputeByNeighbours(last, { k: 1 }).columns[0]![1]).toBeCloseTo(12.797311, 6);
   });
 
   it('does not depend on the scale of rows: the target keeps its own', () => {

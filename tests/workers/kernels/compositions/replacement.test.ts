@@ -18,6 +18,19 @@ describe('replaceInClosed', () => {
     );
     [0.0065, 0.3974, 0.5961].forEach((value, i) => expect(found[i]).toBeCloseTo(value, 12));
     expect(found[1]! / found[2]!).toBeCloseTo(0.4 / 0.6, 12);
+    expect(found[1]! / found[2]!).toBeCloseTo(0.6667, 4);
+  });
+
+  it('shrinks the measured parts, which an open table leaves: ratios .016356 and .016250 (computed)', () => {
+    const closed = replaceInClosed(
+      Float64Array.of(0, 0.4, 0.6),
+      3,
+      new Float64Array(3).fill(0.65 * 0.01),
+    );
+    expect(closed[0]! / closed[1]!).toBeCloseTo(0.016356, 6);
+    const limit = replaceBelowLimit(Float64Array.of(0.01), Uint8Array.of(below)).values[0]!;
+    expect(limit / 0.4).toBeCloseTo(0.01625, 6);
+    expect(limit / 0.4 / (closed[0]! / closed[1]!)).toBeCloseTo(1 - 0.65 * 0.01, 12);
   });
 
   it.each([

@@ -16,6 +16,12 @@ describe('desurvey by minimum curvature', () => {
     const [, , , east = NaN, north = NaN, up = NaN] = path.positions;
     expect([north, east, -up].map((x) => Number(x.toFixed(2)))).toEqual([27.22, 19.45, 94.01]);
     expect(toDegrees(path.doglegsRad[0] ?? NaN)).toBeCloseTo(12.95, 2);
+    // The same leg exactly (computed in python and Node). The page prints a ratio factor of 1.00408,
+    // which its own dogleg does not give: a slip.
+    [27.218329, 19.450774, 94.012343].forEach((value, k) =>
+      expect([north, east, -up][k]).toBeCloseTo(value, 6),
+    );
+    expect(toDegrees(path.doglegsRad[0] ?? NaN)).toBeCloseTo(12.951651, 6);
     expect(path.ratioFactors[0]).toBeCloseTo(1.00428, 6);
   });
 
@@ -27,6 +33,7 @@ describe('desurvey by minimum curvature', () => {
     const path = desurvey(COLLAR, stations);
     expect(path.positions[3]).toBeCloseTo(0, 9);
     expect(path.positions[4]).toBeCloseTo(200 / Math.PI, 9);
+    expect(path.positions[4]).toBeCloseTo(63.661977, 6);
     expect(path.positions[5]).toBeCloseTo(-200 / Math.PI, 9);
     expect(path.ratioFactors[0]).toBeCloseTo(1.27324, 6);
   });

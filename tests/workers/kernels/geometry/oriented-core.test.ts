@@ -131,6 +131,21 @@ describe('lineFromCore', () => {
     expect(dipDirection).toBeCloseTo(163.154496, 6);
   });
 
+  it('has the frame of that hole: u, v, r, e and the line of gamma 30 (computed)', () => {
+    const hole = { azimuth: 315, dip: -55 };
+    // At alpha 0 the normal is the radial line at beta, turned up: u at 0, v at 90, r at 40.
+    const radial = (beta: number) => planeFromCore(hole, { alpha: 0, beta }).normal;
+    const line = (gamma: number) => lineVector(lineFromCore(hole, { alpha: 45, beta: 40 }, gamma));
+    for (const [found, expected] of [
+      [radial(0), [-0.579228, 0.579228, 0.573576]],
+      [radial(90), [0.707107, 0.707107, 0]],
+      [radial(40), [0.010805, 0.898234, 0.439385]],
+      [line(0), [-0.294429, -0.348359, -0.88992]],
+      [line(30), [-0.711981, -0.386365, -0.58635]],
+    ] as const)
+      expected.forEach((value, k) => expect(found[k]).toBeCloseTo(value, 6));
+  });
+
   it('counts beta 90 to the north in a hole plunging east, seen looking down the hole', () => {
     // alpha 0: the plane holds the core axis, its normal is the radial line at beta
     const { normal } = planeFromCore({ azimuth: 90, dip: -60 }, { alpha: 0, beta: 90 });

@@ -13,9 +13,20 @@ const path = desurvey(
 );
 
 describe('traceHole', () => {
-  it('cuts 30 m turning 5° into three pieces at .05 m (computed: sagitta .327197)', () => {
+  /** Distance of the arc from its chord in the middle of a stretch, m. */
+  const sagitta = (fromM: number, toM: number) => {
+    const [a, middle, b] = [fromM, (fromM + toM) / 2, toM].map(
+      (depthM) => positionAtDepth(path, depthM).position,
+    );
+    return Math.hypot(...middle!.map((x, k) => x - (a![k]! + b![k]!) / 2));
+  };
+
+  it('cuts 30 m turning 5° into three pieces at .05 m (computed: sagitta .327197, then .036361)', () => {
     expect(piecesOfLeg(30, (5 * Math.PI) / 180, 0.05)).toBe(3);
-    expect((30 * ((5 * Math.PI) / 180)) / 8).toBeCloseTo(0.32725, 4);
+    expect(sagitta(0, 30)).toBeCloseTo(0.327197, 6);
+    // R (1 - cos(5°/6)) is .03636039; a ninth of m β / 8 gives .036361
+    expect(sagitta(10, 20)).toBeCloseTo(0.0363604, 7);
+    expect(sagitta(10, 20)).toBeLessThan(0.036361);
     expect([...traceHole(path, 60).depthsM]).toEqual([0, 10, 20, 30, 60]);
   });
 

@@ -5,11 +5,35 @@ import {
   lognormalMean,
   readCv,
 } from '#kernels/populations/coefficient-of-variation.ts';
-import { andersonDarling, lilliefors } from '#kernels/populations/normality.ts';
+import { andersonDarling, andersonDarlingP, lilliefors } from '#kernels/populations/normality.ts';
 import { shapiroWilk } from '#kernels/populations/shapiro-wilk.ts';
 import { seededRandom } from '#kernels/random.ts';
 
 const grades = [1.2, 0.8, 2.1, 3.3, 0.5, 1.9, 2.7, 1.1, 0.9, 4.5];
+
+describe('p of an adjusted Anderson-Darling statistic', () => {
+  it.each([
+    // Published points of D'Agostino & Stephens (1986), which a public page on the test prints too:
+    // 10 % .631, 5 % .752, 2.5 % .873, 1 % 1.035.
+    [0.631, 0.1],
+    [0.752, 0.05],
+    [0.873, 0.025],
+    [1.035, 0.01],
+  ])('%d is the %d point', (adjusted, p) => {
+    expect(Math.abs(andersonDarlingP(adjusted) / p - 1)).toBeLessThan(0.015);
+  });
+
+  it('steps from .1169 up to .1194 at .6, where the branches do not join (computed)', () => {
+    expect(andersonDarlingP(0.6 - 1e-12)).toBeCloseTo(0.1169, 4);
+    expect(andersonDarlingP(0.6)).toBeCloseTo(0.1194, 4);
+  });
+
+  it('never rises past 10, where the quadratic would turn up again at 153', () => {
+    expect(andersonDarlingP(200)).toBe(andersonDarlingP(10));
+    expect(andersonDarlingP(10)).toBeLessThan(1e-20);
+    expect(5.709 / (2 * 0.0186)).toBeCloseTo(153.5, 1);
+  });
+});
 
 describe('ten grades (computed; R nortest the same)', () => {
   it('Anderson-Darling on ln grade and on grade', () => {

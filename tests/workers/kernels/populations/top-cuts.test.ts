@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest';
-import { normalQuantile } from '#kernels/normal.ts';
+import { normalCdf, normalQuantile } from '#kernels/normal.ts';
 import { decileAnalysis, topCutTable } from '#kernels/populations/top-cuts.ts';
 
 const grades = [0.5, 0.8, 1, 1.2, 1.5, 2, 2.5, 3, 5, 40];
@@ -34,8 +34,33 @@ it('deciles of a lognormal, sd 1.2, trip all three rules (computed)', () => {
   expect(deciles.reduce((sum, c) => sum + c.metalPercent, 0)).toBeCloseTo(100, 9);
 });
 
+it('deciles of a lognormal, sd 1.2, tend to 46.7502, 17.2468 and 13.0009 % (theory, computed)', () => {
+  const { deciles, topPercentiles } = decileAnalysis(lognormal(1.2, 400_000));
+  const share = (p: number) => 100 * normalCdf(1.2 - normalQuantile(p));
+  expect(share(0.9)).toBeCloseTo(46.7502, 4);
+  expect(share(0.8) - share(0.9)).toBeCloseTo(17.2468, 4);
+  expect(share(0.99)).toBeCloseTo(13.0009, 4);
+  // A deterministic sample lacks the far end of the tail: short of theory by about .002 here.
+  expect(Math.abs(deciles[9]!.metalPercent - 46.7502)).toBeLessThan(0.004);
+  expect(Math.abs(deciles[8]!.metalPercent - 17.2468)).toBeLessThan(0.004);
+  expect(Math.abs(topPercentiles![9]!.metalPercent - 13.0009)).toBeLessThan(0.006);
+});
+
 it('a lognormal, sd 1.0, trips none (38.9 %, 2.24 times, 9.2 %: computed)', () => {
+  const { deciles, topPercentiles, indications } = decileAnalysis(lognormal(1, 100_000));
+  expect(deciles[9]!.metalPercent).toBeCloseTo(38.9, 1);
+  expect(deciles[9]!.metalPercent / deciles[8]!.metalPercent).toBeCloseTo(2.24, 2);
+  expect(topPercentiles![9]!.metalPercent).toBeCloseTo(9.2, 1);
+  expect(indications).toEqual([]);
   expect(decileAnalysis(lognormal(1)).indications).toEqual([]);
+});
+
+it.each([
+  [1.025, 0],
+  [1.035, 2],
+  [1.05, 3],
+])('the three rules begin at sd 1.03 to 1.05 (computed): sd %d trips %i', (sd, count) => {
+  expect(decileAnalysis(lognormal(sd, 100_000)).indications).toHaveLength(count);
 });
 
 it('cuts ranks as floor(i n / 10), and gives no percentiles below 100 rows', () => {

@@ -7,6 +7,7 @@ import {
   HARD_PER_RELATIVE_SD,
   precisionGuide,
 } from '#kernels/quality/duplicate-precision.ts';
+import { normalQuantile } from '#kernels/normal.ts';
 import { requirePairs, usablePairs } from '#kernels/quality/pairs.ts';
 import { seededRandom } from '#kernels/random.ts';
 
@@ -43,6 +44,25 @@ describe('duplicatePrecision', () => {
     expect(found.medianHard / 100 / HARD_PER_RELATIVE_SD.median / error).toBeCloseTo(1, 1);
     expect(found.hard90 / 100 / HARD_PER_RELATIVE_SD.p90 / error).toBeCloseTo(1, 1);
     expect(found).toMatchObject({ cvInterval: null, notes: [] });
+  });
+
+  it('of errors at normal quantiles: median .476936 and 90th percentile 1.163087 of the sd (computed: scipy)', () => {
+    // a - b of two errors of relative sd c has sd c sqrt(2): HARD is 50 c sqrt(2) |z| for a + b = 2.
+    const error = 1e-3;
+    const n = 20_001;
+    const z = Float64Array.from({ length: n }, (_, i) => normalQuantile((i + 0.5) / n));
+    const found = duplicatePrecision(
+      z.map((value) => 1 + (error * value) / Math.SQRT2),
+      z.map((value) => 1 - (error * value) / Math.SQRT2),
+      { seed: 1 },
+    );
+    expect(found.medianHard / 100 / error).toBeCloseTo(0.476936, 4);
+    expect(found.hard90 / 100 / error).toBeCloseTo(1.163087, 3);
+    expect(found.cvAverage / 100 / error).toBeCloseTo(1, 3);
+    expect(HARD_PER_RELATIVE_SD.median).toBeCloseTo(normalQuantile(0.75) / Math.SQRT2, 12);
+    expect(HARD_PER_RELATIVE_SD.p90).toBeCloseTo(normalQuantile(0.95) / Math.SQRT2, 12);
+    expect(HARD_PER_RELATIVE_SD.median).toBeCloseTo(0.476936, 6);
+    expect(HARD_PER_RELATIVE_SD.p90).toBeCloseTo(1.163087, 6);
   });
 
   it('does not change when sides or units change', () => {

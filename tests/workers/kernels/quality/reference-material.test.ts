@@ -67,6 +67,9 @@ describe('controlRules', () => {
   it('fails results in control as rarely as their tails say: .0455003 and .0026998 (computed: scipy)', () => {
     expect(2 * normalCdf(-2)).toBeCloseTo(0.0455003, 7);
     expect(2 * normalCdf(-3)).toBeCloseTo(0.0026998, 7);
+    // Two or three of three past +2 or past -2, a rule not used here: .0031 (computed).
+    const tail = normalCdf(-2);
+    expect(2 * (3 * tail ** 2 * (1 - tail) + tail ** 3)).toBeCloseTo(0.0031, 4);
     const random = seededRandom(12);
     const results = Float64Array.from({ length: 20_000 }, () => 5 + 0.1 * random.normal());
     const { hits, z } = controlRules(results, certificate);

@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { association, entropy, millerMadow, strengthInWords } from '#kernels/tables/association.ts';
 import { chiSquareTest, residualSignificance } from '#kernels/tables/chi-square.ts';
 
-/** Gender by party, Agresti (2007), An Introduction to Categorical Data Analysis (counts from memory). */
+/** Gender by party, Agresti (2007), An Introduction to Categorical Data Analysis, p. 39; R's help of chisq.test prints the same counts. */
 const agresti = Float64Array.from([762, 327, 468, 484, 239, 477]);
 const tested = (counts: Float64Array, nCols: number) => {
   const test = chiSquareTest(counts, nCols);
