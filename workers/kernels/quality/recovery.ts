@@ -90,17 +90,18 @@ export function recoveryAgainstGrade(
 /**
  * Spearman's correlation with its Student t and two-sided p on n - 2 degrees of freedom.
  *
- * @returns Null when a side does not vary.
+ * @returns Null when a side does not vary; t null (and p 0) when one order repeats the other.
  * @throws {KernelError} As rankCorrelation.
  */
 export function spearmanTest(
   x: Float64Array,
   y: Float64Array,
-): { rho: number; t: number; nominalP: number } | null {
+): { rho: number; t: number | null; nominalP: number } | null {
   const rho = rankCorrelation(x, y);
   if (rho === null) return null;
   const left = 1 - rho * rho;
-  const t = left > 0 ? rho * Math.sqrt((x.length - 2) / left) : rho * Infinity;
+  if (!(left > 0)) return { rho, t: null, nominalP: 0 };
+  const t = rho * Math.sqrt((x.length - 2) / left);
   return { rho, t, nominalP: studentTwoSided(t, x.length - 2) };
 }
 

@@ -121,8 +121,8 @@ export interface MaterialBias {
   sd: number;
   /** 100 (mean / certified value - 1), %. */
   biasPercent: number;
-  /** (mean - certified value) / (sd / sqrt(n)); infinite when results do not vary but are off. */
-  t: number;
+  /** (mean - certified value) / (sd / sqrt(n)); null, with p 0, when results do not vary but are off. */
+  t: number | null;
   /** Two-sided Student p with n - 1 degrees of freedom, for independent results: nominal. */
   nominalP: number;
 }
@@ -141,8 +141,9 @@ export function materialBias(results: Float64Array, certifiedValue: number): Mat
   }
   const { n, mean, sd } = momentsOf(results, 2);
   const away = mean - certifiedValue;
-  const t = away === 0 ? 0 : away / (sd / Math.sqrt(n));
   const biasPercent = 100 * (mean / certifiedValue - 1);
+  if (sd === 0 && away !== 0) return { n, mean, sd, biasPercent, t: null, nominalP: 0 };
+  const t = away === 0 ? 0 : away / (sd / Math.sqrt(n));
   return { n, mean, sd, biasPercent, t, nominalP: studentTwoSided(t, n - 1) };
 }
 

@@ -14,7 +14,7 @@ export interface HoleIntervals {
  * @param values One per source interval, NaN where missing. Not modified.
  * @returns Per target interval the weighted value, NaN where no known value overlaps, and the share
  *   of its length that is covered by known values.
- * @throws {KernelError} `shape`; `not-finite` with { row } at a depth; `bad-parameter` with { row }
+ * @throws {KernelError} `shape`; `not-finite` with { row } at a depth or an infinite value; `bad-parameter` with { row }
  *   where an interval has no length or overlaps the one before.
  */
 export function valuesOnIntervals(
@@ -27,6 +27,11 @@ export function valuesOnIntervals(
   if (values.length !== source.from.length) {
     const message = `expected ${source.from.length} values, found ${values.length}`;
     throw new KernelError('shape', message);
+  }
+  const endless = values.findIndex((value) => Math.abs(value) === Infinity);
+  if (endless >= 0) {
+    const message = `expected values or NaN, found ${values[endless]} at source interval ${endless}`;
+    throw new KernelError('not-finite', message, { row: endless });
   }
   const n = target.from.length;
   const out = { values: new Float64Array(n), covered: new Float64Array(n) };

@@ -1,3 +1,4 @@
+import { KernelError } from '#kernels/kernel-error.ts';
 import { marginsOf, type Margins } from './margins.ts';
 
 /** How strongly two label columns go together; entropies and information in nats. */
@@ -17,8 +18,17 @@ export interface Association {
   purity: number;
 }
 
-/** Entropy -sum p ln p in nats of weights >= 0 (any total); 0 for an empty list. */
+/**
+ * Entropy -sum p ln p in nats of weights >= 0 (any total); 0 for an empty list.
+ *
+ * @throws {KernelError} `bad-parameter` with { row } at a weight that is negative or not finite.
+ */
 export function entropy(weights: Float64Array): number {
+  const row = weights.findIndex((weight) => !(weight >= 0 && weight < Infinity));
+  if (row >= 0)
+    throw new KernelError('bad-parameter', `expected a weight >= 0, found ${weights[row]}`, {
+      row,
+    });
   const total = weights.reduce((sum, weight) => sum + weight, 0);
   let sum = 0;
   for (const weight of weights) if (weight > 0) sum -= (weight / total) * Math.log(weight / total);

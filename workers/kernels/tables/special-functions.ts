@@ -9,11 +9,12 @@ const MAX_STEPS = 100_000;
  * ln of the gamma function for x > 0, relative error about 1e-15: the argument is raised above 12 by
  * the recurrence, then Stirling's series.
  *
- * @throws {KernelError} `bad-parameter` when x is not > 0.
+ * @throws {KernelError} `bad-parameter` when x is not > 0 and finite.
  * @see Abramowitz & Stegun (1964), Handbook of Mathematical Functions, 6.1.15 and 6.1.41.
  */
 export function logGamma(x: number): number {
-  if (!(x > 0)) throw new KernelError('bad-parameter', `expected an argument > 0, found ${x}`);
+  if (!(x > 0 && x < Infinity))
+    throw new KernelError('bad-parameter', `expected an argument > 0, found ${x}`);
   let product = 1;
   let z = x;
   while (z < 12) product *= z++;
