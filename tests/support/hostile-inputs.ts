@@ -99,3 +99,15 @@ export function codesOf({ length }: Float64Array, levels: number): Category {
 export function halves({ length }: Float64Array): Int32Array {
   return length < 2 ? Int32Array.of(0, length) : Int32Array.of(0, length >> 1, length);
 }
+
+/** Intervals of a metre, one below the other, as many as a column has rows. */
+export function metresOf({ length }: Float64Array): { fromM: Float64Array; toM: Float64Array } {
+  const fromM = Float64Array.from({ length }, (_, i) => i);
+  return { fromM, toM: fromM.map((top) => top + 1) };
+}
+
+/** Unit vectors, row-major, in the direction of three columns about their middle. */
+export function directionsOf(x: Float64Array, y: Float64Array, z: Float64Array): Float64Array {
+  const rows = Array.from(x, (east, i) => [east - 3.5, y[i]! - 3.5, z[i]! - 3.5] as const);
+  return Float64Array.from(rows.flatMap((v) => v.map((part) => part / Math.hypot(...v))));
+}

@@ -69,7 +69,8 @@ export function categoryCurve(
  * @param intervals Intervals of one hole in any order, without overlaps.
  * @param values One per interval; NaN where not assayed.
  * @returns One value per sample; NaN where less than half of its step is assayed.
- * @throws {KernelError} `shape`, `bad-interval`, `overlap`; `bad-parameter` at the steps.
+ * @throws {KernelError} `shape`, `bad-interval`, `overlap`; `bad-parameter` at the steps;
+ *   `not-finite` with { row } at an infinite value.
  */
 export function gradeCurve(
   intervals: IntervalTable,
@@ -78,6 +79,11 @@ export function gradeCurve(
 ): Float64Array {
   checkSteps(steps);
   const order = orderedRows(intervals, values.length);
+  const endless = values.findIndex((value) => Math.abs(value) === Infinity);
+  if (endless >= 0) {
+    const message = `expected grades or NaN, found ${values[endless]} in row ${endless}`;
+    throw new KernelError('not-finite', message, { row: endless });
+  }
   const { fromM, toM } = intervals;
   const curve = new Float64Array(steps.count).fill(NaN);
   let first = 0;

@@ -36,6 +36,17 @@ export function cross(a: Vector, b: Vector): Vector {
   return [a[1] * b[2] - a[2] * b[1], a[2] * b[0] - a[0] * b[2], a[0] * b[1] - a[1] * b[0]];
 }
 
+/**
+ * Refuses a vector one part of which is no number or infinite.
+ *
+ * @throws {KernelError} `not-finite`.
+ */
+export function requireVector(vector: Vector): void {
+  if (Number.isFinite(vector[0]) && Number.isFinite(vector[1]) && Number.isFinite(vector[2]))
+    return;
+  throw new KernelError('not-finite', `expected a vector, found (${vector.join(', ')})`);
+}
+
 /** a x + b y. */
 export function combine(a: number, x: Vector, b: number, y: Vector): Vector {
   return [a * x[0] + b * y[0], a * x[1] + b * y[1], a * x[2] + b * y[2]];
@@ -59,8 +70,13 @@ export function tangentOf(direction: HoleDirection): Vector {
   return [Math.cos(d) * Math.sin(a), Math.cos(d) * Math.cos(a), Math.sin(d)];
 }
 
-/** Azimuth and dip (degrees) of a tangent; the azimuth of a vertical hole is undefined, hence null. */
+/**
+ * Azimuth and dip (degrees) of a tangent; the azimuth of a vertical hole is undefined, hence null.
+ *
+ * @throws {KernelError} `not-finite`.
+ */
 export function directionOf(tangent: Vector): { azimuth: number | null; dip: number } {
+  requireVector(tangent);
   const horizontal = Math.hypot(tangent[0], tangent[1]);
   const dip = toDegrees(Math.atan2(tangent[2], horizontal));
   if (horizontal < VERTICAL) return { azimuth: null, dip };
@@ -72,7 +88,9 @@ export function directionOf(tangent: Vector): { azimuth: number | null; dip: num
  *
  * @param declination Of the survey date, positive east, degrees.
  * @param convergence Grid north measured clockwise from true north, degrees.
+ * @throws {KernelError} `not-finite`.
  */
 export function gridAzimuth(magnetic: number, declination: number, convergence: number): number {
+  requireVector([magnetic, declination, convergence]);
   return wrapAzimuth(magnetic + declination - convergence);
 }

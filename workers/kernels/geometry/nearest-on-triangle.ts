@@ -1,4 +1,4 @@
-import { combine, dot, type Vector } from './directions.ts';
+import { combine, dot, requireVector, type Vector } from './directions.ts';
 import { minus } from './triangle-vectors.ts';
 
 /** Part of a triangle nearest to a point: a corner, an edge (k from corner k to the next), or inside. */
@@ -12,13 +12,16 @@ export interface NearestPoint {
 /**
  * Nearest point of a triangle by the regions of its corners, edges and inside.
  *
- * @param corners Not in one line.
+ * @param p Finite.
+ * @param corners Finite, not in one line.
+ * @throws {KernelError} `not-finite` at the point.
  * @see Ericson (2005), Real-Time Collision Detection, Morgan Kaufmann, section 5.1.5 (from memory).
  */
 export function nearestOnTriangle(
   p: Vector,
   [a, b, c]: readonly [Vector, Vector, Vector],
 ): NearestPoint {
+  requireVector(p);
   const [ab, ac] = [minus(b, a), minus(c, a)];
   const fromA = minus(p, a);
   const [d1, d2] = [dot(ab, fromA), dot(ac, fromA)];

@@ -1,5 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
-import { toDegrees, toRadians, wrapAzimuth, type Vector } from './directions.ts';
+import { requireVector, toDegrees, toRadians, wrapAzimuth, type Vector } from './directions.ts';
 
 /** A plane in degrees; the dip direction of a horizontal plane is undefined, hence null. */
 export interface Plane {
@@ -107,8 +107,13 @@ export function lineVector({ trend, plunge }: Line): Vector {
   return [Math.cos(p) * Math.sin(t), Math.cos(p) * Math.cos(t), -Math.sin(p)];
 }
 
-/** Trend and plunge of a line, turned to point down. */
+/**
+ * Trend and plunge of a line, turned to point down.
+ *
+ * @throws {KernelError} `not-finite`.
+ */
 export function lineOf(vector: Vector): Line {
+  requireVector(vector);
   const [east, north, up] = vector[2] > 0 ? [-vector[0], -vector[1], -vector[2]] : vector;
   const horizontal = Math.hypot(east, north);
   return {

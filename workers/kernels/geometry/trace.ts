@@ -43,7 +43,18 @@ export function traceHole(
   return { depthsM, positions: positionsAtDepths(path, depthsM).positions };
 }
 
-/** Pieces that keep the sagitta, about length x angle / 8 for the whole leg, within the tolerance. */
+/** A leg in more pieces than this is a mistake of unit, in the tolerance or the survey. */
+const MOST_PIECES = 100_000;
+
+/**
+ * Pieces that keep the sagitta, about length x angle / 8 for the whole leg, within the tolerance.
+ *
+ * @param lengthM, angleRad >= 0.  @param toleranceM > 0.
+ * @throws {KernelError} `bad-parameter` outside those ranges or above 100 000 pieces.
+ */
 export function piecesOfLeg(lengthM: number, angleRad: number, toleranceM: number): number {
-  return Math.ceil(Math.sqrt((lengthM * angleRad) / (8 * toleranceM)));
+  const pieces = Math.ceil(Math.sqrt((lengthM * angleRad) / (8 * toleranceM)));
+  if (lengthM >= 0 && angleRad >= 0 && toleranceM > 0 && pieces <= MOST_PIECES) return pieces;
+  const message = `expected a leg of 0 to ${MOST_PIECES} pieces, found ${lengthM} m, ${angleRad} rad at ${toleranceM} m`;
+  throw new KernelError('bad-parameter', message);
 }

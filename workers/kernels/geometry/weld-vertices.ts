@@ -1,3 +1,5 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+
 /** Vertices with near ones joined. */
 export interface WeldedVertices {
   /** Row-major (nKept, 3). */
@@ -12,8 +14,17 @@ export interface WeldedVertices {
  *
  * @param vertices Row-major (n, 3), finite. Not modified.
  * @param distanceM > 0.
+ * @throws {KernelError} `not-finite` with { row }; `bad-parameter`.
  */
 export function weldVertices(vertices: Float64Array, distanceM: number): WeldedVertices {
+  const bad = vertices.findIndex((value) => !Number.isFinite(value));
+  if (bad >= 0) {
+    const row = Math.floor(bad / 3);
+    const message = `expected a position, found ${vertices[bad]} at vertex ${row}`;
+    throw new KernelError('not-finite', message, { row });
+  }
+  if (!(distanceM > 0))
+    throw new KernelError('bad-parameter', `expected a distance > 0 m, found ${distanceM}`);
   const n = vertices.length / 3;
   const cells = new Map<string, number[]>();
   const kept: number[] = [];

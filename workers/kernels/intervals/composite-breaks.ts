@@ -1,5 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
-import { LOGGING_TOLERANCE_M } from './interval-table.ts';
+import { intervalFault, LOGGING_TOLERANCE_M } from './interval-table.ts';
 
 /** How composites are laid over a run of one domain. */
 export interface CompositeRules {
@@ -26,6 +26,8 @@ export interface CompositeBreaks {
   leastM: number;
 }
 
+const MOST_PIECES = 10_000_000;
+
 /** Lengths that differ by less are the same length (m). */
 const ROUNDING_M = 1e-9;
 
@@ -34,7 +36,8 @@ const ROUNDING_M = 1e-9;
  * length: whole pieces from the top; a residual shorter than `leastShare` of the length is added to
  * the piece above (a run too short for that is kept whole), kept, or discarded.
  *
- * @throws {KernelError} `bad-parameter` at a length that logging cannot resolve or a share outside [0, 1].
+ * @throws {KernelError} `bad-parameter` at a length that logging cannot resolve, a share outside [0, 1]
+ *   or more than 10 000 000 pieces; `bad-interval` at a run that is none.
  */
 export function compositeBreaks(
   fromM: number,
@@ -48,6 +51,12 @@ export function compositeBreaks(
   }
   if (!(leastShare >= 0 && leastShare <= 1)) {
     throw new KernelError('bad-parameter', `expected a share in [0, 1], found ${leastShare}`);
+  }
+  const fault = intervalFault(fromM, toM);
+  if (fault) throw new KernelError('bad-interval', `${fault} of a run`);
+  if (!((toM - fromM) / lengthM <= MOST_PIECES)) {
+    const message = `expected at most ${MOST_PIECES} pieces of ${lengthM} m, found a run of ${toM - fromM} m`;
+    throw new KernelError('bad-parameter', message);
   }
   const leastM = leastShare * lengthM - ROUNDING_M;
   const runM = toM - fromM;

@@ -1,3 +1,5 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+
 /** Troy ounce in grams (31.1034768 exactly, the international definition of the grain). */
 const TROY_OUNCE_G = 31.1034768;
 /** Short ton (2000 lb) and long ton (2240 lb) in tonnes; 1 lb = 0.45359237 kg exactly. */
@@ -66,7 +68,13 @@ export function ppmPerUnit(unit: AssayUnit): number {
   return PPM_PER_UNIT[unit];
 }
 
-/** A grade in ppm (mg/kg). */
+/**
+ * A grade in ppm (mg/kg); NaN where missing stays NaN.
+ *
+ * @throws {KernelError} `not-finite` for an infinite grade.
+ */
 export function toPpm(grade: number, unit: AssayUnit): number {
+  if (Math.abs(grade) === Infinity)
+    throw new KernelError('not-finite', `expected a grade in ${unit}, found ${grade}`);
   return grade * PPM_PER_UNIT[unit];
 }

@@ -84,10 +84,13 @@ function stoichiometricFactor(element: string, atoms: number, oxygens: number): 
  * Grade of the element held by an oxide grade, in the same unit.
  *
  * @param formula Oxide formula, `Al2O3`.
- * @param grade Grade of the oxide in any mass unit.
- * @throws {KernelError} `bad-parameter` for an oxide the table does not hold.
+ * @param grade Grade of the oxide in any mass unit; NaN where missing stays NaN.
+ * @throws {KernelError} `bad-parameter` for an oxide the table does not hold; `not-finite` for an
+ *   infinite grade.
  */
 export function elementFromOxide(formula: string, grade: number): number {
+  if (Math.abs(grade) === Infinity)
+    throw new KernelError('not-finite', `expected a grade of ${formula}, found ${grade}`);
   return grade / oxideFactor(formula);
 }
 
