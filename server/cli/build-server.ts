@@ -11,6 +11,8 @@ import * as z from 'zod';
  * `dist/node` gets a package.json of its own that leads them to the emitted files.
  */
 const ROOMS = ['server', 'workers', 'migrations', 'seeds'];
+/** Compiled apart (`build-simd.ts`). */
+const LEFT_OUT = join('workers', 'simd');
 const OUT = join('dist', 'node');
 
 const compilerOptions: ts.CompilerOptions = {
@@ -31,7 +33,9 @@ async function emit(file: string): Promise<void> {
 
 async function filesOf(room: string): Promise<string[]> {
   const entries = await readdir(room, { recursive: true, withFileTypes: true });
-  return entries.filter((entry) => entry.isFile() && entry.name.endsWith('.ts')).map((entry) => join(entry.parentPath, entry.name));
+  return entries
+    .filter((entry) => entry.isFile() && entry.name.endsWith('.ts') && entry.parentPath !== LEFT_OUT)
+    .map((entry) => join(entry.parentPath, entry.name));
 }
 
 async function writeManifest(): Promise<void> {

@@ -1,6 +1,6 @@
 import { seededRandom } from '#kernels/random.ts';
 import { drawRows, kMeansStarts } from './k-means-starts.ts';
-import { squaredDistance } from './nearest-centre.ts';
+import { squaredDistance } from '#kernels/dense/squared-distance.ts';
 import {
   emptyMixture,
   mixtureDensity,

@@ -1,10 +1,7 @@
-import {
-  nearestTwoFor,
-  padRows,
-  paddedStride,
-  squaredDistance,
-  type NearestTwo,
-} from './nearest-centre.ts';
+import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
+import { NO_LABEL, type DenseMath, type RowGroups, type RowTable } from '#kernels/dense/dense-math.ts';
+import { squaredDistance } from '#kernels/dense/squared-distance.ts';
+import { evenStride, rowTableBytes, rowTableOf, unpadded } from './row-table.ts';
 import type { OnProgress } from './points.ts';
 
 /** Where Lloyd's iterations start and when they stop. */
@@ -28,30 +25,18 @@ export interface LloydResult {
   labels: Uint8Array;
   /** Row-major, shape (k, p): weighted mean of each group's rows. */
   centres: Float64Array;
+  /** How much nearer each row is to its own centre than to the next, at least. */
+  lead: Float64Array;
   /** Weighted sum of squared distances to the own centre. */
   inertia: number;
   iterations: number;
   converged: boolean;
 }
 
-/** No label yet. */
-const NONE = 255;
-
 interface State {
-  readonly points: Float64Array;
-  readonly weights: Float64Array | null;
-  readonly n: number;
-  readonly stride: number;
-  readonly k: number;
-  readonly nearest: NearestTwo;
-  readonly centres: Float64Array;
-  readonly labels: Uint8Array;
-  readonly sums: Float64Array;
-  readonly mass: Float64Array;
-  /** Rows of each label. */
-  readonly counts: Uint32Array;
-  /** A row's distance to the next centre less that to its own, plus `slack`, when last measured. */
-  readonly lead: Float64Array;
+  readonly math: DenseMath;
+  readonly rows: RowTable;
+  readonly groups: RowGroups;
   /** Per label: the lead its rows may have lost since the start. */
   readonly slack: Float64Array;
 }
@@ -66,99 +51,98 @@ interface State {
  *   this kind (both from memory).
  */
 export function lloyd(input: LloydInput): LloydResult {
-  const { p, maxIterations, minMove, onProgress } = input;
-  const state = startState(input);
-  let converged = false;
-  let iterations = 0;
-  while (!converged && iterations < maxIterations) {
-    const changed = assign(state);
-    const reseeded = reseedEmpty(state);
-    const largestMove = moveCentres(state);
-    iterations += 1;
-    converged = !reseeded && (changed === 0 || largestMove <= minMove);
-    onProgress?.(iterations / maxIterations);
-  }
-  assign(state);
-  reseedEmpty(state);
-  const inertia = settle(state);
-  return { labels: state.labels, centres: unpadded(state, p), inertia, iterations, converged };
-}
-
-function startState({ points, p, centres, weights }: LloydInput): State {
+  const { points, p, centres, maxIterations, minMove, onProgress } = input;
   const n = points.length / p;
   const k = centres.length / p;
-  const stride = paddedStride(p);
+  return withLab(rowTableBytes(n, p) + groupBytes(n, k, evenStride(p)), (lab) => {
+    const state = startState(lab, input);
+    const { math, rows, groups, slack } = state;
+    let converged = false;
+    let iterations = 0;
+    while (!converged && iterations < maxIterations) {
+      const changed = math.assign(rows, groups, slack);
+      const reseeded = reseedEmpty(state);
+      const largestMove = moveCentres(state);
+      iterations += 1;
+      converged = !reseeded && (changed === 0 || largestMove <= minMove);
+      onProgress?.(iterations / maxIterations);
+    }
+    math.assign(rows, groups, slack);
+    reseedEmpty(state);
+    const { inertia, moved } = settle(state);
+    return {
+      labels: groups.labels.slice(),
+      centres: unpadded(groups.centres, p),
+      lead: groups.lead.map((value, i) => value - slack[groups.labels[i]!]! - 2 * moved),
+      inertia,
+      iterations,
+      converged,
+    };
+  });
+}
+
+/** Bytes of the groups of {@link startState}. */
+const groupBytes = (n: number, k: number, stride: number): number =>
+  f64Bytes(n, n / 8, k * stride, k * stride, k, k, k);
+
+function startState(lab: Lab, { points, p, centres, weights }: LloydInput): State {
+  const rows = rowTableOf(lab, points, p, weights);
+  const { n, stride } = rows;
+  const k = centres.length / p;
   return {
-    points: padRows(points, p, stride),
-    weights,
-    n,
-    stride,
-    k,
-    nearest: nearestTwoFor(stride),
-    centres: padRows(centres.slice(), p, stride),
-    labels: new Uint8Array(n).fill(NONE),
-    sums: new Float64Array(k * stride),
-    mass: new Float64Array(k),
-    counts: new Uint32Array(k),
-    lead: new Float64Array(n).fill(-Infinity),
-    slack: new Float64Array(k),
+    math: lab.math,
+    rows,
+    groups: {
+      k,
+      centres: rowTableOf(lab, centres, p, null).points,
+      labels: lab.u8(n).fill(NO_LABEL),
+      lead: lab.f64(n).fill(-Infinity),
+      sums: lab.f64(k * stride),
+      mass: lab.f64(k),
+      counts: lab.u32(k),
+    },
+    slack: lab.f64(k),
   };
 }
 
-/** Gives rows whose label may have changed their nearest centre; returns how many did change. */
-function assign(state: State): number {
-  const { points, n, centres, labels, lead, slack, nearest } = state;
-  const two = new Float64Array(2);
-  let changed = 0;
-  for (let i = 0; i < n; i++) {
-    const old = labels[i]!;
-    if (old !== NONE && lead[i]! > slack[old]!) continue;
-    const label = nearest(points, i, centres, two);
-    lead[i] = Math.sqrt(two[1]!) - Math.sqrt(two[0]!) + slack[label]!;
-    if (label === old) continue;
-    changed += 1;
-    moveRow(state, i, old, label);
-  }
-  return changed;
-}
-
-/** Moves row i from one label's sums to another's. */
-function moveRow(
-  { points, weights, stride, sums, mass, counts, labels }: State,
-  i: number,
-  from: number,
-  to: number,
-): void {
+/** Moves row i from its group to another. */
+function moveRow({ rows, groups }: State, i: number, to: number): void {
+  const { points, weights, stride } = rows;
+  const { labels, sums, mass, counts } = groups;
   const w = weights ? weights[i]! : 1;
-  const row = i * stride;
-  if (from !== NONE) {
-    mass[from]! -= w;
-    counts[from]! -= 1;
-    for (let j = 0; j < stride; j++) sums[from * stride + j]! -= w * points[row + j]!;
-  }
+  const from = labels[i]!;
+  mass[from]! -= w;
+  counts[from]! -= 1;
   mass[to]! += w;
   counts[to]! += 1;
-  for (let j = 0; j < stride; j++) sums[to * stride + j]! += w * points[row + j]!;
+  for (let j = 0; j < stride; j++) {
+    const value = w * points[i * stride + j]!;
+    sums[from * stride + j]! -= value;
+    sums[to * stride + j]! += value;
+  }
   labels[i] = to;
 }
 
 /** Puts each centre without rows on the farthest row of another group; true when it had to. */
 function reseedEmpty(state: State): boolean {
-  const { counts, stride, labels, lead } = state;
+  const { counts, lead, mass, sums } = state.groups;
+  const { stride } = state.rows;
   const empty = [...counts.keys()].filter((c) => counts[c] === 0);
   for (const c of empty) {
     const row = farthestRow(state);
     if (row < 0) return false;
-    state.mass[c] = 0;
-    state.sums.fill(0, c * stride, (c + 1) * stride);
-    moveRow(state, row, labels[row]!, c);
+    mass[c] = 0;
+    sums.fill(0, c * stride, (c + 1) * stride);
+    moveRow(state, row, c);
   }
   if (empty.length > 0) lead.fill(-Infinity);
   return empty.length > 0;
 }
 
 /** The row farthest from its own centre among groups of two rows or more; -1 when none. */
-function farthestRow({ points, n, stride, centres, labels, counts }: State): number {
+function farthestRow({ rows, groups }: State): number {
+  const { points, n, stride } = rows;
+  const { centres, labels, counts } = groups;
   let farthest = -1;
   let farthestSq = 0;
   for (let i = 0; i < n; i++) {
@@ -172,7 +156,9 @@ function farthestRow({ points, n, stride, centres, labels, counts }: State): num
 }
 
 /** Moves centres to their means, widens the slack; returns the largest move. */
-function moveCentres({ stride, k, centres, sums, mass, slack }: State): number {
+function moveCentres({ rows, groups, slack }: State): number {
+  const { stride } = rows;
+  const { k, centres, sums, mass } = groups;
   const moves = new Float64Array(k);
   for (let c = 0; c < k; c++) {
     if (!(mass[c]! > 0)) continue;
@@ -195,39 +181,27 @@ function moveCentres({ stride, k, centres, sums, mass, slack }: State): number {
 }
 
 /**
- * Means summed afresh, free of the rounding of thousands of single moves; returns the inertia. The
- * squared distances are taken to the centres as they were: moving a centre to the mean of its rows
- * lowers their sum by mass times the squared move, exactly.
+ * Means summed afresh, free of the rounding of thousands of single moves; gives the inertia and the
+ * largest move. The squared distances are taken to the centres as they were: moving a centre to the
+ * mean of its rows lowers their sum by mass times the squared move, exactly.
  */
-function settle({ points, weights, n, stride, k, centres, sums, mass, labels }: State): number {
+function settle({ math, rows, groups }: State): { inertia: number; moved: number } {
+  const { stride } = rows;
+  const { k, centres, sums, mass } = groups;
   sums.fill(0);
   mass.fill(0);
-  let inertia = 0;
-  for (let i = 0; i < n; i++) {
-    const w = weights ? weights[i]! : 1;
-    let sq = 0;
-    mass[labels[i]!]! += w;
-    for (let j = 0, from = i * stride, to = labels[i]! * stride; j < stride; j++, from++, to++) {
-      const x = points[from]!;
-      const d = x - centres[to]!;
-      sq += d * d;
-      sums[to]! += w * x;
-    }
-    inertia += w * sq;
-  }
+  let inertia = math.sumGroups(rows, groups);
+  let moved = 0;
   for (let c = 0; c < k; c++) {
     if (!(mass[c]! > 0)) continue;
+    let sq = 0;
     for (let j = c * stride; j < (c + 1) * stride; j++) {
       const mean = sums[j]! / mass[c]!;
-      inertia -= mass[c]! * (mean - centres[j]!) ** 2;
+      sq += (mean - centres[j]!) ** 2;
       centres[j] = mean;
     }
+    inertia -= mass[c]! * sq;
+    moved = Math.max(moved, Math.sqrt(sq));
   }
-  return Math.max(0, inertia);
-}
-
-function unpadded({ centres, k, stride }: State, p: number): Float64Array {
-  const out = new Float64Array(k * p);
-  for (let c = 0; c < k; c++) for (let j = 0; j < p; j++) out[c * p + j] = centres[c * stride + j]!;
-  return out;
+  return { inertia: Math.max(0, inertia), moved };
 }

@@ -1,6 +1,11 @@
 import { KernelError } from '#kernels/kernel-error.ts';
-import { nearestTwoFor, padRows, paddedStride, squaredDistance } from './nearest-centre.ts';
+import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
+import { squaredDistance } from '#kernels/dense/squared-distance.ts';
+import { rowTableBytes, rowTableOf } from './row-table.ts';
 import { packPoints } from './points.ts';
+
+/** Rows measured at a time. */
+const BLOCK_ROWS = 4096;
 
 /** A frozen k-means model and the rows to place in it. */
 export interface MembershipInput {
@@ -36,23 +41,25 @@ export function withinVariance(inertia: number, n: number, k: number, p: number)
  * @throws {KernelError} `shape`, `not-finite`, `too-few-rows`, `bad-parameter` (variance < 0).
  */
 export function ownMembership(input: MembershipInput): Float64Array {
-  const { points, n, rowOf, stride, centres, k, halfPrecision, nRows } = prepared(input);
-  const nearest = nearestTwoFor(stride);
-  const two = new Float64Array(2);
+  const { points, n, p, rowOf, centres, k, halfPrecision, nRows } = prepared(input);
   const out = new Float64Array(nRows).fill(NaN);
-  for (let i = 0; i < n; i++) {
-    nearest(points, i, centres, two);
-    const nearestSq = two[0]!;
-    let total = 0;
-    if (k > 1 && (two[1]! - nearestSq) * halfPrecision > 40)
-      total = 1; // the rest is below 1e-17
-    else
-      for (let c = 0; c < k; c++)
-        total += relativeLikelihood(
-          squaredDistance(points, i, centres, c, stride) - nearestSq,
-          halfPrecision,
-        );
-    out[rowOf ? rowOf[i]! : i] = 1 / total;
+  const room = rowTableBytes(BLOCK_ROWS, p) + rowTableBytes(k, p) + f64Bytes(BLOCK_ROWS, BLOCK_ROWS, BLOCK_ROWS);
+  for (let from = 0; from < n; from += BLOCK_ROWS) {
+    const block = points.subarray(from * p, Math.min(from + BLOCK_ROWS, n) * p);
+    withLab(room, (lab) => {
+      const rows = rowTableOf(lab, block, p, null);
+      const [nearestSq, nextSq] = [lab.f64(rows.n), lab.f64(rows.n)];
+      lab.math.nearestTwo(rows, rowTableOf(lab, centres, p, null).points, k, lab.u8(rows.n), nearestSq, nextSq);
+      for (let i = 0; i < rows.n; i++) {
+        const least = nearestSq[i]!;
+        let total = 0;
+        if (k > 1 && (nextSq[i]! - least) * halfPrecision > 40) total = 1; // the rest is below 1e-17
+        else
+          for (let c = 0; c < k; c++)
+            total += relativeLikelihood(squaredDistance(block, i, centres, c, p) - least, halfPrecision);
+        out[rowOf ? rowOf[from + i]! : from + i] = 1 / total;
+      }
+    });
   }
   return out;
 }
@@ -64,13 +71,13 @@ export function ownMembership(input: MembershipInput): Float64Array {
  * @throws {KernelError} As `ownMembership`.
  */
 export function allMemberships(input: MembershipInput): Float64Array {
-  const { points, n, rowOf, stride, centres, k, halfPrecision, nRows } = prepared(input);
+  const { points, n, p, rowOf, centres, k, halfPrecision, nRows } = prepared(input);
   const out = new Float64Array(nRows * k).fill(NaN);
   const sq = new Float64Array(k);
   for (let i = 0; i < n; i++) {
     let nearestSq = Infinity;
     for (let c = 0; c < k; c++) {
-      sq[c] = squaredDistance(points, i, centres, c, stride);
+      sq[c] = squaredDistance(points, i, centres, c, p);
       nearestSq = Math.min(nearestSq, sq[c]!);
     }
     const at = (rowOf ? rowOf[i]! : i) * k;
@@ -97,15 +104,14 @@ function prepared({ columns, centroids, variance }: MembershipInput) {
   }
   if (!(variance >= 0 && variance < Infinity))
     throw new KernelError('bad-parameter', `expected a variance >= 0, found ${variance}`);
-  const stride = paddedStride(p);
   const packed = packPoints(columns);
   return {
-    points: padRows(packed.points, p, stride),
+    points: packed.points,
+    p,
     n: packed.n,
     rowOf: packed.rowOf,
     nRows: columns[0]?.length ?? 0,
-    stride,
-    centres: padRows(centroids, p, stride),
+    centres: centroids,
     k: centroids.length / p,
     halfPrecision: 1 / (2 * variance),
   };

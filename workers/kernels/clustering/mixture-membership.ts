@@ -1,5 +1,6 @@
 import { KernelError } from '#kernels/kernel-error.ts';
-import { BLOCK_ROWS, blockResponsibilities, fillBlock, mixtureBlock } from './mixture-block.ts';
+import { withLab } from '#kernels/dense/lab.ts';
+import { BLOCK_ROWS, densityTables, fillBlock, mixtureBlock, mixtureBlockBytes } from './mixture-block.ts';
 import { mixtureDensity, type MixtureModel } from './mixture-model.ts';
 import { packPoints } from './points.ts';
 
@@ -39,16 +40,19 @@ export function mixtureMembership(
     own: new Float64Array(nRows).fill(NaN),
     entropy: 0,
   };
-  const block = mixtureBlock(k, p);
-  for (let from = 0; from < n; from += BLOCK_ROWS) {
-    const count = Math.min(BLOCK_ROWS, n - from);
-    fillBlock(block, points, p, from, count);
-    blockResponsibilities(block, density, count);
-    for (let r = 0; r < count; r++) {
-      const row = rowOf ? rowOf[from + r]! : from + r;
-      takeRow(out, block.shares, r, row, k, weights ? weights[row]! : 1);
+  withLab(mixtureBlockBytes(k, p), (lab) => {
+    const block = mixtureBlock(lab, k, p);
+    const tables = densityTables(lab, density);
+    for (let from = 0; from < n; from += BLOCK_ROWS) {
+      const count = Math.min(BLOCK_ROWS, n - from);
+      fillBlock(block, points, from, count);
+      lab.math.mixtureShares(block, count, tables);
+      for (let r = 0; r < count; r++) {
+        const row = rowOf ? rowOf[from + r]! : from + r;
+        takeRow(out, block.shares, r, row, k, weights ? weights[row]! : 1);
+      }
     }
-  }
+  });
   return out;
 }
 

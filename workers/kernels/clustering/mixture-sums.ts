@@ -1,11 +1,6 @@
-import { addCrossProducts } from '#kernels/components/cross-products.ts';
-import {
-  BLOCK_ROWS,
-  blockResponsibilities,
-  fillBlock,
-  mixtureBlock,
-  type MixtureBlock,
-} from './mixture-block.ts';
+import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
+import type { MixtureMoments } from '#kernels/dense/dense-math.ts';
+import { BLOCK_ROWS, densityTables, fillBlock, mixtureBlock, mixtureBlockBytes, paddedColumns } from './mixture-block.ts';
 import { isAxial, type MixtureDensity, type MixtureModel } from './mixture-model.ts';
 import { packedSize } from './packed-cholesky.ts';
 
@@ -45,96 +40,48 @@ export function sumResponsibilities(
   { points, n, weights }: MixtureRows,
   sums: MixtureSums,
 ): void {
-  const { model } = density;
-  const { k, p } = model;
-  const block = mixtureBlock(k, p);
-  const adder = groupAdder(model, block, sums);
-  sums.mass.fill(0);
-  sums.first.fill(0);
-  sums.second.fill(0);
-  sums.logLik = 0;
-  for (let from = 0; from < n; from += BLOCK_ROWS) {
-    const count = Math.min(BLOCK_ROWS, n - from);
-    fillBlock(block, points, p, from, count);
-    blockResponsibilities(block, density, count);
-    let logLik = 0;
-    for (let r = 0; r < count; r++) {
-      const w = weights ? weights[from + r]! : 1;
-      logLik += w * block.logDensity[r]!;
-      if (weights)
-        for (let at = r; at < block.shares.length; at += BLOCK_ROWS) block.shares[at]! *= w;
-    }
-    sums.logLik += logLik;
-    for (let c = 0; c < k; c++) adder(c, count);
-  }
-  unpackCross(model, adder.cross, sums);
-}
-
-type GroupAdder = ((c: number, count: number) => void) & { cross: Float64Array };
-
-/** Adds the rows of the block to the sums of a group; rows without a share in it cost nothing. */
-function groupAdder(model: MixtureModel, block: MixtureBlock, sums: MixtureSums): GroupAdder {
-  const { k, p, means, family } = model;
-  const { x, shares, deviations } = block;
-  const nCols = deviations.length / BLOCK_ROWS;
-  const axial = isAxial(family);
-  const rows = new Int32Array(BLOCK_ROWS);
-  const roots = new Float64Array(BLOCK_ROWS);
-  const cross = new Float64Array(axial ? 0 : k * nCols * nCols);
-  const crossOf = Array.from({ length: axial ? 0 : k }, (_, c) =>
-    cross.subarray(c * nCols * nCols, (c + 1) * nCols * nCols),
-  );
-  const add = (c: number, count: number): void => {
-    const used = sharedRows(shares, c, count, rows, roots, sums);
-    for (let j = 0; j < p; j++) {
-      const mean = means[c * p + j]!;
-      const at = j * BLOCK_ROWS;
-      let first = 0;
-      let second = 0;
-      for (let t = 0; t < used; t++) {
-        const root = roots[t]!;
-        const scaled = root * (x[at + rows[t]!]! - mean);
-        deviations[at + t] = scaled;
-        first += root * scaled;
-        second += scaled * scaled;
+  const { k, p, family } = density.model;
+  const nCols = paddedColumns(p);
+  const momentBytes = f64Bytes(k * p, k * p, k * nCols * nCols);
+  withLab(mixtureBlockBytes(k, p) + momentBytes, (lab) => {
+    const { math } = lab;
+    const block = mixtureBlock(lab, k, p);
+    const tables = densityTables(lab, density);
+    const moments: MixtureMoments = {
+      first: lab.f64(k * p),
+      squares: lab.f64(k * p),
+      cross: isAxial(family) ? null : lab.f64(k * nCols * nCols),
+      nCols,
+    };
+    sums.mass.fill(0);
+    sums.logLik = 0;
+    for (let from = 0; from < n; from += BLOCK_ROWS) {
+      const count = Math.min(BLOCK_ROWS, n - from);
+      fillBlock(block, points, from, count);
+      math.mixtureShares(block, count, tables);
+      let logLik = 0;
+      for (let r = 0; r < count; r++) {
+        const w = weights ? weights[from + r]! : 1;
+        logLik += w * block.logDensity[r]!;
+        if (weights)
+          for (let at = r; at < block.shares.length; at += BLOCK_ROWS) block.shares[at]! *= w;
       }
-      sums.first[c * p + j]! += first;
-      if (axial) sums.second[c * packedSize(p) + packedSize(j + 1) - 1]! += second;
+      sums.logLik += logLik;
+      for (let c = 0; c < k; c++) sums.mass[c]! += math.addGroupMoments(block, count, c, tables, moments);
     }
-    if (!axial) addCrossProducts(deviations, BLOCK_ROWS, 0, used, nCols, crossOf[c]!);
-  };
-  return Object.assign(add, { cross });
+    sums.first.set(moments.first);
+    secondMoments(density.model, moments, sums.second);
+  });
 }
 
-/** Rows of the block with a share in group c, and the square roots of those shares. */
-function sharedRows(
-  shares: Float64Array,
-  c: number,
-  count: number,
-  rows: Int32Array,
-  roots: Float64Array,
-  sums: MixtureSums,
-): number {
-  const at = c * BLOCK_ROWS;
-  let used = 0;
-  let mass = 0;
-  for (let r = 0; r < count; r++) {
-    const share = shares[at + r]!;
-    if (share === 0) continue;
-    mass += share;
-    rows[used] = r;
-    roots[used++] = Math.sqrt(share);
+/** Second moments as packed lower triangles; of axial families only the diagonal, the rest zero. */
+function secondMoments({ k, p }: MixtureModel, { squares, cross, nCols }: MixtureMoments, second: Float64Array): void {
+  for (let c = 0, i = 0; c < k; c++) {
+    for (let a = 0; a < p; a++) {
+      for (let b = 0; b <= a; b++, i++) {
+        if (cross) second[i] = cross[(c * nCols + b) * nCols + a]!;
+        else second[i] = a === b ? squares[c * p + a]! : 0;
+      }
+    }
   }
-  sums.mass[c]! += mass;
-  return used;
-}
-
-/** The upper triangles of padded squares into packed lower triangles. */
-function unpackCross({ k, p }: MixtureModel, cross: Float64Array, { second }: MixtureSums): void {
-  if (cross.length === 0) return;
-  const size = cross.length / k;
-  const nCols = Math.sqrt(size);
-  for (let c = 0, i = 0; c < k; c++)
-    for (let a = 0; a < p; a++)
-      for (let b = 0; b <= a; b++) second[i++] = cross[c * size + b * nCols + a]!;
 }

@@ -1,3 +1,4 @@
+import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { groupedPoints, type GroupedPoints, type Labels } from './group-moments.ts';
 import { drawRows } from './k-means-starts.ts';
@@ -55,27 +56,38 @@ function drawn(all: GroupedPoints, size: number, seed: number): GroupedPoints {
   return { ...all, points: takeRows(all.points, all.p, rows), n: size, group, sizes };
 }
 
+/** Rows between reports of progress. */
+const REPORT_ROWS = 256;
+
 /** Sum of distances from each row to the rows of each group, shape (n, k). */
 function distanceSums(
-  { points, n, p, group, k }: GroupedPoints,
+  { points, n, p, group, k, sizes }: GroupedPoints,
   onProgress?: OnProgress,
 ): Float64Array {
-  const sums = new Float64Array(n * k);
-  for (let a = 0; a < n; a++) {
-    if ((a & 255) === 0) onProgress?.(a / n);
-    const rowA = a * p;
-    for (let b = a + 1; b < n; b++) {
-      let sq = 0;
-      for (let j = 0, at = b * p; j < p; j++, at++) {
-        const d = points[rowA + j]! - points[at]!;
-        sq += d * d;
-      }
-      const distance = Math.sqrt(sq);
-      sums[a * k + group[b]!]! += distance;
-      sums[b * k + group[a]!]! += distance;
+  const stride = n + (n % 2);
+  const rowAt = rowsByGroup(group, sizes);
+  return withLab(f64Bytes(stride * p, stride * k, k + 1), (lab) => {
+    const x = lab.f64(stride * p);
+    const starts = lab.u32(k + 1);
+    const sums = lab.f64(stride * k);
+    for (const [g, size] of sizes.entries()) starts[g + 1] = starts[g]! + size;
+    for (let i = 0; i < n; i++) for (let j = 0; j < p; j++) x[j * stride + i] = points[rowAt[i]! * p + j]!;
+    for (let from = 0; from < n; from += REPORT_ROWS) {
+      onProgress?.(1 - (1 - from / n) ** 2); // each row has fewer left to be measured against
+      lab.math.addDistances(x, stride, p, starts, k, from, Math.min(from + REPORT_ROWS, n), sums);
     }
-  }
-  return sums;
+    const out = new Float64Array(n * k);
+    for (let i = 0; i < n; i++) for (let g = 0; g < k; g++) out[rowAt[i]! * k + g] = sums[g * stride + i]!;
+    return out;
+  });
+}
+
+/** Row numbers, group after group. */
+function rowsByGroup(group: Uint16Array, sizes: readonly number[]): Uint32Array {
+  const next = sizes.map((_, g) => sizes.slice(0, g).reduce((sum, size) => sum + size, 0));
+  const rows = new Uint32Array(group.length);
+  group.forEach((g, row) => (rows[next[g]!++] = row));
+  return rows;
 }
 
 function widths(

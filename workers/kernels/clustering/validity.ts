@@ -1,4 +1,4 @@
-import { squaredDistance } from './nearest-centre.ts';
+import { squaredDistance } from '#kernels/dense/squared-distance.ts';
 import { groupedPoints, type GroupedPoints, type Labels } from './group-moments.ts';
 
 /** How compact and how far apart the groups of a labelling are; every row counts the same. */

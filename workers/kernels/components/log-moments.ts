@@ -1,14 +1,7 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { requireColumns } from '#kernels/compositions/require-parts.ts';
-import { addCrossProducts } from './cross-products.ts';
-import {
-  BLOCK_ROWS,
-  emptyLogBlock,
-  fillLogBlock,
-  paddedParts,
-  partColumns,
-  type PartColumn,
-} from './log-block.ts';
+import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
+import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, paddedParts, type LogBlock } from './log-block.ts';
 
 /** Called with the share done, some hundreds of times; it may throw to cancel. */
 export type OnProgress = (share: number) => void;
@@ -65,13 +58,18 @@ export function logMomentsOfSpan(
     throw new KernelError('shape', `expected a mask of ${nRows} rows, found ${mask.length}`);
   }
   const [from, to] = [span * SPAN_ROWS, Math.min((span + 1) * SPAN_ROWS, nRows)];
-  const views = partColumns(columns);
-  const total = emptyMoments(columns.length);
-  for (let row = from; row < to; row += CHUNK_ROWS) {
-    onProgress?.((row - from) / (to - from));
-    addMoments(total, momentsOfChunk(views, mask ?? null, row, Math.min(row + CHUNK_ROWS, to)));
-  }
-  return total;
+  const nParts = columns.length;
+  const padded = paddedParts(nParts);
+  return withLab(logBlockBytes(nParts) + f64Bytes(padded * padded, nParts), (lab) => {
+    const room = chunkRoom(lab, nParts);
+    const total = emptyMoments(nParts);
+    for (let row = from; row < to; row += CHUNK_ROWS) {
+      onProgress?.((row - from) / (to - from));
+      const end = Math.min(row + CHUNK_ROWS, to);
+      addMoments(total, momentsOfChunk(columns, mask ?? null, row, end, room));
+    }
+    return total;
+  });
 }
 
 /** Moments of several disjoint sets of rows together, added in the order given. */
@@ -106,31 +104,42 @@ function addMoments(total: LogMoments, { nRows, nParts, mean, cross }: LogMoment
   total.nRows = sum;
 }
 
+/** What the sums of a chunk are made in. */
+interface ChunkRoom {
+  block: LogBlock;
+  cross: Float64Array;
+  sums: Float64Array;
+}
+
+function chunkRoom(lab: Lab, nParts: number): ChunkRoom {
+  return {
+    block: emptyLogBlock(lab, nParts),
+    cross: lab.f64(paddedParts(nParts) ** 2),
+    sums: lab.f64(nParts),
+  };
+}
+
 /** Sums of logs less those of the chunk's first used row, so that little cancels. */
 function momentsOfChunk(
-  views: readonly PartColumn[],
+  columns: readonly Float64Array[],
   mask: Uint8Array | null,
   from: number,
   to: number,
+  { block, cross, sums }: ChunkRoom,
 ): LogMoments {
-  const nParts = views.length;
+  const nParts = columns.length;
   const padded = paddedParts(nParts);
   const moments = emptyMoments(nParts);
   const first = mask ? mask.subarray(from, to).findIndex((use) => use !== 0) + from : from;
   if (first < from) return moments;
-  const shift = Float64Array.from(views, ({ values }) => Math.log(values[first]!));
-  const block = emptyLogBlock(nParts);
-  const cross = new Float64Array(padded * padded);
-  const sums = new Float64Array(nParts);
+  const { shift, logs, math } = block;
+  for (let part = 0; part < nParts; part++) shift[part] = Math.log(columns[part]![first]!);
+  cross.fill(0);
+  sums.fill(0);
   for (let row = first; row < to;) {
-    row = fillLogBlock(views, mask, row, to, shift, block);
-    addCrossProducts(block.logs, BLOCK_ROWS, 0, block.count, padded, cross);
-    for (let part = 0; part < nParts; part++) {
-      let sum = 0;
-      for (let i = part * BLOCK_ROWS; i < part * BLOCK_ROWS + block.count; i++)
-        sum += block.logs[i]!;
-      sums[part]! += sum;
-    }
+    row = fillLogBlock(columns, mask, row, to, block);
+    math.addCrossProducts(logs, BLOCK_ROWS, block.count, padded, cross);
+    math.addColumnSums(logs, BLOCK_ROWS, block.count, nParts, sums);
     moments.nRows += block.count;
   }
   for (let i = 0; i < nParts; i++) {

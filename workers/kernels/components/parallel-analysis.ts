@@ -1,12 +1,13 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { requireColumns, notPositive } from '#kernels/compositions/require-parts.ts';
+import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
+import type { DenseMath } from '#kernels/dense/dense-math.ts';
 import { seededRandom, type Random } from '#kernels/random.ts';
 import { quantiles } from '#kernels/statistics/quantile.ts';
 import { matrixOf, type ComponentBasis } from './components.ts';
 import { countAbove } from './component-count.ts';
-import { addCrossProducts } from './cross-products.ts';
 import { eigenOfCovariance } from './eigen.ts';
-import { paddedParts } from './log-block.ts';
+import { BLOCK_ROWS, paddedParts } from './log-block.ts';
 import type { OnProgress } from './log-moments.ts';
 
 export interface ParallelOptions {
@@ -62,28 +63,39 @@ export function parallelAnalysis(
   }
   const random = seededRandom(seed);
   const rows = sampleRows(nRows, options.mask, maxRows, random);
-  const logs = centredLogs(columns, rows);
-  const observed = spectrum(logs, rows.length, columns.length, basis);
-  const total = observed.reduce((sum, value) => sum + value, 0);
-  const nulls = observed.map(() => new Float64Array(permutations));
-  for (let b = 0; b < permutations; b++) {
-    onProgress?.(b / permutations);
-    for (let part = 0; part < columns.length; part++) {
-      shuffle(logs.subarray(part * rows.length, (part + 1) * rows.length), random);
+  const padded = paddedParts(columns.length);
+  return withLab(f64Bytes(padded * rows.length, padded * padded), (lab) => {
+    const table: LogTable = {
+      math: lab.math,
+      basis,
+      n: rows.length,
+      nParts: columns.length,
+      logs: lab.f64(padded * rows.length),
+      cross: lab.f64(padded * padded),
+    };
+    fillCentredLogs(table.logs, columns, rows);
+    const observed = spectrum(table);
+    const total = observed.reduce((sum, value) => sum + value, 0);
+    const nulls = observed.map(() => new Float64Array(permutations));
+    for (let b = 0; b < permutations; b++) {
+      onProgress?.(b / permutations);
+      for (let part = 0; part < columns.length; part++) {
+        shuffle(table.logs.subarray(part * rows.length, (part + 1) * rows.length), random);
+      }
+      const values = spectrum(table);
+      const scale = total / values.reduce((sum, value) => sum + value, 0);
+      nulls.forEach((column, k) => (column[b] = scale * (values[k] ?? 0)));
     }
-    const values = spectrum(logs, rows.length, columns.length, basis);
-    const scale = total / values.reduce((sum, value) => sum + value, 0);
-    nulls.forEach((column, k) => (column[b] = scale * (values[k] ?? 0)));
-  }
-  const null95 = nulls.map((column) => quantiles(column, [0.95])[0]!);
-  return {
-    kept: countAbove(observed, null95),
-    eigenvalues: observed,
-    nullMean: nulls.map((column) => column.reduce((sum, value) => sum + value, 0) / permutations),
-    null95,
-    null95Shares: null95.map((value) => value / total),
-    rowsUsed: rows.length,
-  };
+    const null95 = nulls.map((column) => quantiles(column, [0.95])[0]!);
+    return {
+      kept: countAbove(observed, null95),
+      eigenvalues: observed,
+      nullMean: nulls.map((column) => column.reduce((sum, value) => sum + value, 0) / permutations),
+      null95,
+      null95Shares: null95.map((value) => value / total),
+      rowsUsed: rows.length,
+    };
+  });
 }
 
 /** All used rows, or a seeded sample of them in row order. */
@@ -113,9 +125,8 @@ function sampleRows(
 }
 
 /** ln x less its mean, one stretch per part, parts padded with zeros to a multiple of four. */
-function centredLogs(columns: readonly Float64Array[], rows: Uint32Array): Float64Array {
+function fillCentredLogs(logs: Float64Array, columns: readonly Float64Array[], rows: Uint32Array): void {
   const n = rows.length;
-  const logs = new Float64Array(paddedParts(columns.length) * n);
   columns.forEach((column, part) => {
     const stretch = logs.subarray(part * n, (part + 1) * n);
     rows.forEach((row, i) => {
@@ -126,14 +137,24 @@ function centredLogs(columns: readonly Float64Array[], rows: Uint32Array): Float
     const mean = stretch.reduce((sum, log) => sum + log, 0) / n;
     for (let i = 0; i < n; i++) stretch[i]! -= mean;
   });
-  return logs;
 }
 
-function spectrum(logs: Float64Array, n: number, nParts: number, basis: ComponentBasis): number[] {
+/** Centred logs in a lab, and what their eigenvalues are asked of. */
+interface LogTable {
+  math: DenseMath;
+  basis: ComponentBasis;
+  n: number;
+  nParts: number;
+  /** One stretch of n per part. */
+  logs: Float64Array;
+  cross: Float64Array;
+}
+
+function spectrum({ math, basis, n, nParts, logs, cross }: LogTable): number[] {
   const padded = paddedParts(nParts);
-  const cross = new Float64Array(padded * padded);
-  for (let from = 0; from < n; from += 256) {
-    addCrossProducts(logs, n, from, Math.min(from + 256, n), padded, cross);
+  cross.fill(0);
+  for (let from = 0; from < n; from += BLOCK_ROWS) {
+    math.addCrossProducts(logs.subarray(from), n, Math.min(BLOCK_ROWS, n - from), padded, cross);
   }
   const covariance = new Float64Array(nParts * nParts);
   for (let i = 0; i < nParts; i++) {

@@ -1,14 +1,8 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { requireColumns } from '#kernels/compositions/require-parts.ts';
 import type { Components } from './components.ts';
-import {
-  BLOCK_ROWS,
-  emptyLogBlock,
-  fillLogBlock,
-  paddedParts,
-  partColumns,
-  type LogBlock,
-} from './log-block.ts';
+import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
+import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, paddedParts, type LogBlock } from './log-block.ts';
 import type { OnProgress } from './log-moments.ts';
 
 export interface ScoreOptions {
@@ -43,21 +37,26 @@ export function scoreComponents(
   const { mask = null, from = 0, to = nRows, onProgress } = options;
   const scores = options.out ?? Array.from({ length: k }, () => new Float64Array(nRows).fill(NaN));
   requireScoring(columns, components, k, nRows, { scores, mask, from, to });
-  const views = partColumns(columns);
-  const block = emptyLogBlock(columns.length);
-  const table = scoreTable(components, k);
-  let reported = from;
-  for (let row = from; row < to;) {
-    if (row >= reported) {
-      onProgress?.((row - from) / (to - from));
-      reported = row + REPORT_ROWS;
+  const nParts = columns.length;
+  const outputs = paddedParts(k);
+  withLab(logBlockBytes(nParts) + f64Bytes(outputs * nParts, outputs * BLOCK_ROWS), (lab) => {
+    const block = emptyLogBlock(lab, nParts);
+    block.shift.set(components.logMean);
+    const table = scoreTable(lab, components, k);
+    const projected = lab.f64(outputs * BLOCK_ROWS);
+    let reported = from;
+    for (let row = from; row < to;) {
+      if (row >= reported) {
+        onProgress?.((row - from) / (to - from));
+        reported = row + REPORT_ROWS;
+      }
+      const next = fillLogBlock(columns, mask, row, to, block);
+      if (options.out && mask) for (const score of scores) score.fill(NaN, row, next);
+      block.math.project(block.logs, BLOCK_ROWS, block.count, nParts, table, outputs, projected);
+      spread(projected, block, row, next, scores);
+      row = next;
     }
-    const next = fillLogBlock(views, mask, row, to, components.logMean, block);
-    if (options.out && mask) for (const score of scores) score.fill(NaN, row, next);
-    for (let first = 0; first < k; first += 4)
-      scoreFour(block, table, columns.length, k, first, scores);
-    row = next;
-  }
+  });
   return [...scores];
 }
 
@@ -95,9 +94,8 @@ function requireScoring(
 }
 
 /** Weights of the first k components, four after four: a group's four stand together per part. */
-function scoreTable({ weights, eigenvalues, nParts }: Components, k: number): Float64Array {
-  const padded = paddedParts(k);
-  const table = new Float64Array(padded * nParts);
+function scoreTable(lab: Lab, { weights, eigenvalues, nParts }: Components, k: number): Float64Array {
+  const table = lab.f64(paddedParts(k) * nParts);
   for (let component = 0; component < k; component++) {
     const group = (component >> 2) * 4 * nParts;
     for (let part = 0; part < nParts; part++) {
@@ -107,78 +105,18 @@ function scoreTable({ weights, eigenvalues, nParts }: Components, k: number): Fl
   return table;
 }
 
-/** Scores of four components for a block, four rows at a time; rows past the count are not kept. */
-function scoreFour(
-  { logs, rows, count }: LogBlock,
-  table: Float64Array,
-  nParts: number,
-  k: number,
-  first: number,
+/** Scores of a block to their rows. */
+function spread(
+  projected: Float64Array,
+  { rows, count }: LogBlock,
+  from: number,
+  to: number,
   scores: readonly Float64Array[],
 ): void {
-  const group = first * nParts;
-  const kept = Math.min(4, k - first);
-  const tile = new Float64Array(16);
-  for (let i = 0; i < count; i += 4) {
-    let a0 = 0,
-      a1 = 0,
-      a2 = 0,
-      a3 = 0;
-    let b0 = 0,
-      b1 = 0,
-      b2 = 0,
-      b3 = 0;
-    let c0 = 0,
-      c1 = 0,
-      c2 = 0,
-      c3 = 0;
-    let d0 = 0,
-      d1 = 0,
-      d2 = 0,
-      d3 = 0;
-    for (let part = 0; part < nParts; part++) {
-      const at = part * BLOCK_ROWS + i;
-      const w = group + 4 * part;
-      const w0 = table[w]!;
-      const w1 = table[w + 1]!;
-      const w2 = table[w + 2]!;
-      const w3 = table[w + 3]!;
-      let value = logs[at]!;
-      a0 += value * w0;
-      a1 += value * w1;
-      a2 += value * w2;
-      a3 += value * w3;
-      value = logs[at + 1]!;
-      b0 += value * w0;
-      b1 += value * w1;
-      b2 += value * w2;
-      b3 += value * w3;
-      value = logs[at + 2]!;
-      c0 += value * w0;
-      c1 += value * w1;
-      c2 += value * w2;
-      c3 += value * w3;
-      value = logs[at + 3]!;
-      d0 += value * w0;
-      d1 += value * w1;
-      d2 += value * w2;
-      d3 += value * w3;
-    }
-    setFour(tile, 0, a0, a1, a2, a3);
-    setFour(tile, 4, b0, b1, b2, b3);
-    setFour(tile, 8, c0, c1, c2, c3);
-    setFour(tile, 12, d0, d1, d2, d3);
-    const last = Math.min(4, count - i);
-    for (let component = 0; component < kept; component++) {
-      const score = scores[first + component]!;
-      for (let r = 0; r < last; r++) score[rows[i + r]!] = tile[4 * r + component]!;
-    }
+  const isWhole = count === to - from;
+  for (const [component, score] of scores.entries()) {
+    const at = component * BLOCK_ROWS;
+    if (isWhole) score.set(projected.subarray(at, at + count), from);
+    else for (let i = 0; i < count; i++) score[rows[i]!] = projected[at + i]!;
   }
-}
-
-function setFour(tile: Float64Array, at: number, a: number, b: number, c: number, d: number): void {
-  tile[at] = a;
-  tile[at + 1] = b;
-  tile[at + 2] = c;
-  tile[at + 3] = d;
 }

@@ -1,3 +1,4 @@
+import { sortedAscending } from '#kernels/statistics/sort-ascending.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { requireFinite } from '#kernels/statistics/require-finite.ts';
 import type { Random } from '#kernels/random.ts';
@@ -92,7 +93,7 @@ export function dipTest(values: ArrayLike<number>): DipTest {
  */
 export function spreadTies(values: ArrayLike<number>, random: Random): Float64Array {
   requireFinite(values, 'values');
-  const sorted = Float64Array.from(values).sort();
+  const sorted = sortedAscending(values);
   const out = sorted.slice();
   for (let from = 0; from < sorted.length;) {
     const value = sorted[from]!;

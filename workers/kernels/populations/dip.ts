@@ -1,3 +1,4 @@
+import { sortedAscending } from '#kernels/statistics/sort-ascending.ts';
 import { requireFinite } from '#kernels/statistics/require-finite.ts';
 
 /** The dip and the interval the best-fitting unimodal distribution has its mode in. */
@@ -39,7 +40,7 @@ interface Hull {
  */
 export function dipStatistic(values: ArrayLike<number>): Dip {
   requireFinite(values, 'values');
-  return dipOfSorted(Float64Array.from(values).sort());
+  return dipOfSorted(sortedAscending(values));
 }
 
 /** `dipStatistic` of values already in ascending order. */

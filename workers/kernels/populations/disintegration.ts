@@ -1,3 +1,4 @@
+import { sortedAscending } from '#kernels/statistics/sort-ascending.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { requireFinite } from '#kernels/statistics/require-finite.ts';
 
@@ -53,7 +54,7 @@ export function disintegration(
       `expected a grade > 0, found ${values[row]} at row ${row}`,
       { row },
     );
-  const sorted = Float64Array.from(values).sort();
+  const sorted = sortedAscending(values);
   const first = Math.min(n - 2, Math.floor((1 - rules.tailShare) * n));
   const steps: TailStep[] = [];
   for (let i = first; i + 1 < n; i++) {

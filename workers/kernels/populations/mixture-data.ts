@@ -1,3 +1,4 @@
+import { sortedAscending } from '#kernels/statistics/sort-ascending.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { effectiveCount } from '#kernels/statistics/weighted-moments.ts';
 import { requireFinite, requireWeights } from '#kernels/statistics/require-finite.ts';
@@ -56,7 +57,7 @@ function merged(
   values: ArrayLike<number>,
   weightOf: (row: number) => number,
 ): { x: Float64Array; weight: Float64Array } {
-  const sorted = Float64Array.from(values).sort();
+  const sorted = sortedAscending(values);
   let count = 0;
   for (let i = 0; i < sorted.length; i++)
     if (i === 0 || sorted[i] !== sorted[i - 1]) sorted[count++] = sorted[i]!;

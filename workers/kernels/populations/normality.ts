@@ -1,3 +1,4 @@
+import { sortedAscending } from '#kernels/statistics/sort-ascending.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { logNormalCdf, normalCdf } from '#kernels/normal.ts';
 import { requireFinite } from '#kernels/statistics/require-finite.ts';
@@ -89,7 +90,7 @@ function standardised(values: ArrayLike<number>, atLeast: number): Float64Array 
   const n = values.length;
   if (n < atLeast)
     throw new KernelError('too-few-rows', `expected at least ${atLeast} values, found ${n}`, { n });
-  const sorted = Float64Array.from(values).sort();
+  const sorted = sortedAscending(values);
   if (sorted[0] === sorted[n - 1])
     throw new KernelError('constant', `expected values that vary, all are ${sorted[0]}`);
   const mean = sorted.reduce((sum, value) => sum + value / n, 0);

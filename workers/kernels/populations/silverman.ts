@@ -1,3 +1,4 @@
+import { sortedAscending } from '#kernels/statistics/sort-ascending.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { normalDensity } from '#kernels/normal.ts';
 import { seededRandom, type Random } from '#kernels/random.ts';
@@ -29,7 +30,7 @@ export function criticalBandwidth(values: ArrayLike<number>, modes: number, grid
   requireFinite(values, 'values');
   if (!(modes >= 1 && Number.isInteger(modes)))
     throw new KernelError('bad-parameter', `expected one mode or more, found ${modes}`);
-  const sorted = Float64Array.from(values).sort();
+  const sorted = sortedAscending(values);
   const range = sorted[sorted.length - 1]! - sorted[0]!;
   if (!(range > 0))
     throw new KernelError('constant', `expected values that vary, all are ${sorted[0]}`);
