@@ -73,6 +73,7 @@ export function testHostileInputs(cases: readonly HostileCase[]): void {
   it.each(named)('$name: finite answers, or a refusal with a reason', ({ kernel, missing }) => {
     const isNaNMissing = missing === 'missing';
     const count = kernel.length;
+    expect(count).toBeGreaterThan(0);
     const usual = (rows?: number) => Array.from({ length: count }, (_, j) => ordinary(j, rows));
     expect(faultIn(kernel(...usual()), isNaNMissing)).toBeNull();
     const faults: string[] = [];

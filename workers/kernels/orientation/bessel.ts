@@ -1,3 +1,5 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+
 /** Below this the power series is used, above it the asymptotic one. */
 const SWITCH = 20;
 
@@ -6,9 +8,11 @@ const SWITCH = 20;
  * library of the project has it.
  *
  * @param x >= 0.
+ * @throws {KernelError} `bad-parameter`.
  * @see Abramowitz & Stegun (1964), Handbook of Mathematical Functions, 9.6.12 and 9.7.1.
  */
 export function scaledBesselI0(x: number): number {
+  if (!(x >= 0)) throw new KernelError('bad-parameter', `expected an argument >= 0, found ${x}`);
   let term = 1;
   let sum = 1;
   if (x < SWITCH) {

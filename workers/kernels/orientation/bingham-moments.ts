@@ -1,3 +1,4 @@
+import { KernelError } from '#kernels/kernel-error.ts';
 import { scaledBesselI0 } from './bessel.ts';
 import { besselRatio } from './circular.ts';
 
@@ -29,8 +30,11 @@ const NODES = Array.from({ length: 257 }, (_, i) => {
  * around that axis the angle integrates to a Bessel function of a = (k2 - k1)(1 - z^2) / 2.
  *
  * @param k1, k2 Concentrations k1 <= k2 <= 0 along x1 and x2; x3 has 0.
+ * @throws {KernelError} `bad-parameter`.
  */
 export function binghamMoments(k1: number, k2: number): BinghamMoments {
+  if (!(k1 > -Infinity && k1 <= k2 && k2 <= 0))
+    throw new KernelError('bad-parameter', `expected k1 <= k2 <= 0, found ${k1}, ${k2}`);
   let [m0, m1, m2, m11, m22, m12] = [0, 0, 0, 0, 0, 0];
   for (const { sine2, weight } of NODES) {
     const a = ((k2 - k1) * sine2) / 2;

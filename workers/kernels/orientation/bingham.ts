@@ -79,6 +79,7 @@ function solve(s3: number, s2: number): Solution {
     const determinant = v11 * v22 - v12 * v12;
     const d1 = (v22 * g1 - v12 * g2) / determinant;
     const d2 = (v11 * g2 - v12 * g1) / determinant;
+    if (!(Number.isFinite(d1) && Number.isFinite(d2))) return now;
     let next = now;
     // halve until the likelihood rises; k1 <= k2 <= 0 holds at the solution, so keep to it
     for (let share = 1; share > 1e-10; share /= 2) {

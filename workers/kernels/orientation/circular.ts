@@ -98,9 +98,11 @@ export function vonMisesKappa(meanResultant: number): number {
  * I1(k) / I0(k), k >= 0, by its continued fraction 1/(2/k + 1/(4/k + ...)), evaluated backwards; for
  * large k by the asymptotic series.
  *
+ * @throws {KernelError} `bad-parameter`.
  * @see Abramowitz & Stegun (1964) 9.6.26 and 9.7.1.
  */
 export function besselRatio(k: number): number {
+  if (!(k >= 0)) throw new KernelError('bad-parameter', `expected an argument >= 0, found ${k}`);
   if (k > 700) return 1 - 1 / (2 * k) - 1 / (8 * k * k) - 1 / (8 * k ** 3) - 25 / (128 * k ** 4);
   let fraction = 0;
   for (let m = Math.ceil(k) + 60; m >= 1; m--) fraction = 1 / ((2 * m) / k + fraction);

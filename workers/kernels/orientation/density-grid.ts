@@ -29,7 +29,10 @@ export interface DensityGrid extends CountingCircle {
  */
 export function countingCircle(n: number, k = 3): CountingCircle {
   if (!(n >= 1)) throw new KernelError('too-few-rows', 'expected axes to count, found none');
-  if (!(k > 0)) throw new KernelError('bad-parameter', `expected k > 0, found ${k}`);
+  if (n === Infinity)
+    throw new KernelError('bad-parameter', 'expected a count of axes, found no end');
+  if (!(k > 0 && k < Infinity))
+    throw new KernelError('bad-parameter', `expected k > 0, found ${k}`);
   const area = (k * k) / (n + k * k);
   const halfAngleDeg = (Math.acos(1 - area) * 180) / Math.PI;
   return { area, halfAngleDeg, expected: n * area, sd: Math.sqrt(n * area * (1 - area)) };

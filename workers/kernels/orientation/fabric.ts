@@ -1,3 +1,4 @@
+import { KernelError } from '#kernels/kernel-error.ts';
 import { chiSquareTail } from '#kernels/tables/special-functions.ts';
 import type { Vector } from '#kernels/geometry/directions.ts';
 
@@ -16,15 +17,21 @@ export interface Fabric {
   random: number;
 }
 
+/** Sums and orders that differ by less differ by rounding. */
+const ROUNDING = 1e-6;
+
 /**
  * Fabric measures. With S3 = 0 the axes lie in one plane and K and C have no value; with S2 = S3 the
  * cluster is round and K has none.
  *
  * @param eigenvalues S1 >= S2 >= S3 >= 0, sum 1.
+ * @throws {KernelError} `bad-parameter`.
  * @see Woodcock (1977), GSA Bulletin 88, 1231-1236; Vollmer (1990), GSA Bulletin 102, 786-791 (from
  *   memory).
  */
-export function fabric([s1, s2, s3]: Vector): Fabric {
+export function fabric(eigenvalues: Vector): Fabric {
+  requireEigenvalues(eigenvalues);
+  const [s1, s2, s3] = eigenvalues;
   const flat = s3 < ZERO;
   const round = s2 - s3 < ZERO;
   return {
@@ -47,10 +54,14 @@ export interface UniformityTest {
  * chi-square with 5 degrees of freedom.
  *
  * @param eigenvalues Of the orientation tensor.
- * @param n Number of axes; the effective number when they are weighted.
+ * @param n Number of axes, > 0; the effective number when they are weighted.
+ * @throws {KernelError} `bad-parameter`.
  * @see Bingham (1974), Annals of Statistics 2, 1201-1225; Mardia (1972) (from memory).
  */
 export function axialUniformity(eigenvalues: Vector, n: number): UniformityTest {
+  requireEigenvalues(eigenvalues);
+  if (!(n > 0 && n < Infinity))
+    throw new KernelError('bad-parameter', `expected a number of axes > 0, found ${n}`);
   const statistic = 7.5 * n * eigenvalues.reduce((sum, s) => sum + (s - 1 / 3) ** 2, 0);
   return { statistic, df: 5, p: chiSquareTail(statistic, 5) };
 }
@@ -59,10 +70,22 @@ export function axialUniformity(eigenvalues: Vector, n: number): UniformityTest 
  * Rayleigh's test that directions (not axes) are uniform on the sphere: 3 R^2 / n against chi-square
  * with 3 degrees of freedom.
  *
- * @param resultant Length of the vector sum.
+ * @param resultant Length of the vector sum of n unit vectors, 0 to n.
+ * @throws {KernelError} `bad-parameter`.
  * @see Mardia & Jupp (2000), Directional Statistics, Wiley (from memory).
  */
 export function directionalUniformity(resultant: number, n: number): UniformityTest {
+  if (!(n > 0 && n < Infinity && resultant >= 0 && resultant <= n * (1 + ROUNDING))) {
+    const message = `expected a resultant of n > 0 directions, 0 to n, found ${resultant} of ${n}`;
+    throw new KernelError('bad-parameter', message);
+  }
   const statistic = (3 * resultant * resultant) / n;
   return { statistic, df: 3, p: chiSquareTail(statistic, 3) };
+}
+
+function requireEigenvalues([s1, s2, s3]: Vector): void {
+  const isOrdered = s1 + ROUNDING >= s2 && s2 + ROUNDING >= s3 && s3 >= -ROUNDING;
+  if (isOrdered && Math.abs(s1 + s2 + s3 - 1) <= ROUNDING) return;
+  const message = `expected eigenvalues S1 >= S2 >= S3 >= 0, sum 1, found ${s1}, ${s2}, ${s3}`;
+  throw new KernelError('bad-parameter', message);
 }

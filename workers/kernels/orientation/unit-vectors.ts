@@ -1,4 +1,4 @@
-import { dot, type Vector } from '#kernels/geometry/directions.ts';
+import { dot, requireVector, type Vector } from '#kernels/geometry/directions.ts';
 import { KernelError } from '#kernels/kernel-error.ts';
 
 /**
@@ -35,8 +35,11 @@ export function vectorAt(vectors: Float64Array, row: number): [number, number, n
  * need this before any vector sum, as steep poles point both ways.
  *
  * @returns New array.
+ * @throws {KernelError} As `checkUnitVectors`; `not-finite` at the axis.
  */
 export function flipToAxis(vectors: Float64Array, axis: Vector): Float64Array {
+  checkUnitVectors(vectors);
+  requireVector(axis);
   const flipped = vectors.slice();
   for (let row = 0; row < vectors.length / 3; row++) {
     if (dot(vectorAt(vectors, row), axis) >= 0) continue;
