@@ -27,6 +27,20 @@ export function guessKind(header: readonly string[], fileName: string, rows: rea
   return 'collar';
 }
 
+type Guessed = Pick<HeaderReading, 'certainty' | 'reason'> & { role: ColumnRole | 'skip' };
+
+/** A column named after what another kind of table calls it: a collar's depth is its hole's length, a structure's from its depth. */
+const STAND_INS: Partial<Record<TableKind, { named: ColumnRole; is: ColumnRole; reading: Pick<HeaderReading, 'certainty' | 'reason'> }>> = {
+  collar: { named: 'depth', is: 'length', reading: { certainty: 'sure', reason: 'the depth of a collar is the length of its hole' } },
+  structure: { named: 'from', is: 'depth', reading: { certainty: 'check', reason: 'read as the depth it was measured at' } },
+};
+
+function roleIn(kind: TableKind, { role, certainty, reason }: HeaderReading, readings: readonly HeaderReading[]): Guessed {
+  const standIn = STAND_INS[kind];
+  if (standIn && role === standIn.named && !readings.some((other) => other.role === standIn.is)) return { role: standIn.is, ...standIn.reading };
+  return { role: isRole(role) ? role : 'skip', certainty, reason };
+}
+
 /** What each column probably is, for a kind; a role is given once, to the first column that fits. */
 export function guessColumns(header: readonly string[], rows: readonly string[][], kind: TableKind): ColumnGuess[] {
   const used = new Set<ColumnRole>();
@@ -35,19 +49,19 @@ export function guessColumns(header: readonly string[], rows: readonly string[][
   return readings.map((reading, index) => {
     const text = header[index] ?? '';
     const firstValue = rows.map((cells) => (cells[index] ?? '').trim()).find((cell) => cell !== '') ?? '';
-    const role = isRole(reading.role) ? reading.role : 'skip';
+    const { role, certainty, reason } = roleIn(kind, reading, readings);
     const base = { index, header: text, analyte: null, unit: null, oxide: null, method: null, firstValue };
     const skipped = (reason: string): ColumnGuess => ({ ...base, role: 'skip', certainty: 'unknown', reason });
-    if (role === 'skip') return skipped(reading.reason);
+    if (role === 'skip') return skipped(reason);
     if (!ROLES_OF_KIND[kind].includes(role)) return skipped(`not used in a ${kind} table`);
     if (role === 'analyte') {
-      const { element, unit, oxide, method, certainty, reason } = reading;
+      const { element, unit, oxide, method } = reading;
       return { ...base, role, analyte: element, unit, oxide, method: method?.slice(0, 80) ?? null, certainty, reason };
     }
     if (used.has(role)) return skipped(`another column is ${role} already`);
     used.add(role);
     // Beside an x there is no doubt whether y is a coordinate.
     if (role === 'y' && hasEasting) return { ...base, role, certainty: 'sure', reason: 'stands beside x' };
-    return { ...base, role, certainty: reading.certainty, reason: reading.reason };
+    return { ...base, role, certainty, reason };
   });
 }

@@ -5,7 +5,7 @@ import { draftOfTable, joinDrafts } from './draft-tables.ts';
 import { knownHoles } from './hole-names.ts';
 import { type FoundProblem, ProblemList } from './problem-list.ts';
 import { sortedRows } from './row-order.ts';
-import { resolveDeterminations, settleConflicts, settlePending } from './settle.ts';
+import { resolveDeterminations, settleConflicts, settlePending, tellUnitBlocks, tellUpwardStations } from './settle.ts';
 import { TableDraft } from './table-draft.ts';
 import { TableReader } from './table-reader.ts';
 import type { TextEncoding } from './text-encoding.ts';
@@ -66,11 +66,13 @@ export async function readTable(
 
   const fileLeftOut = settlePending(reader, fileDraft, problems);
   resolveDeterminations(reader, fileDraft);
+  if (mapping.kind === 'survey') tellUpwardStations(reader, fileDraft, problems);
+  if (mapping.kind === 'assay') tellUnitBlocks(reader, fileDraft, problems);
   const base = baseTableId === null ? null : draftOfTable(store, baseTableId);
   const draft = base ? joinDrafts(base, fileDraft) : fileDraft;
   const leftOut = new Uint8Array(draft.rows);
   leftOut.set(fileLeftOut, base?.rows ?? 0);
-  settleConflicts(mapping.kind, draft, problems, leftOut);
+  settleConflicts(mapping.kind, reader, draft, problems, leftOut);
   await giveOriginals(source, problems);
 
   const order = sortedRows(draft).filter((i) => leftOut[i] === 0);

@@ -23,6 +23,7 @@ export interface CheckContext {
 /** Depths are logged to the half centimetre. */
 const ROUNDING_M = 0.005;
 const metres = (value: number): string => `${Number(value.toFixed(3))} m`;
+const signed = (value: number): string => String(value).replace('-', '\u2212');
 const aside = (role: ColumnRole, code: string, message: string): Finding => ({ role, code, message, severity: 'aside' });
 const warning = (role: ColumnRole, code: string, message: string): Finding => ({ role, code, message, severity: 'warning' });
 
@@ -37,7 +38,7 @@ const needsText = (role: ColumnRole): Check => (row) =>
 const within = (role: ColumnRole, low: number, high: number): Check => (row) => {
   const value = row.number(role);
   const isOut = value < low || value > high;
-  return isOut ? [aside(role, `${role}-out-of-range`, `expected ${role} between ${low} and ${high}°, found ${value}`)] : [];
+  return isOut ? [aside(role, `${role}-out-of-range`, `expected ${role} between ${signed(low)} and ${signed(high)}°, found ${signed(value)}`)] : [];
 };
 
 const knownHole: Check = (row, { holes }) => {

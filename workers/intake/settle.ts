@@ -4,6 +4,7 @@ import { conflictingRows } from './row-order.ts';
 import type { TableKind } from '#contract/files.ts';
 import type { TableDraft } from './table-draft.ts';
 import { determinationName, type TableReader } from './table-reader.ts';
+import { unitBlocks } from './unit-blocks.ts';
 
 /** Draft rows that gave way after all: 1 = left out. */
 export type LeftOut = Uint8Array;
@@ -35,12 +36,39 @@ export function settlePending(reader: TableReader, draft: TableDraft, problems: 
 }
 
 /** Sets aside rows that overlap or repeat another. */
-export function settleConflicts(kind: TableKind, draft: TableDraft, problems: ProblemList, leftOut: LeftOut): void {
+export function settleConflicts(kind: TableKind, reader: TableReader, draft: TableDraft, problems: ProblemList, leftOut: LeftOut): void {
   for (const { index, column, code, message } of conflictingRows(kind, draft)) {
     if (leftOut[index]) continue;
     leftOut[index] = 1;
-    const value = column === 'hole' || column === 'name' ? '' : String(draft.numberColumn(column).at(index));
-    problems.add({ row: draft.sourceRow.at(index), column, value, code, message, severity: 'aside', original: '' });
+    const value = column === 'hole' || column === 'name' ? draft.categoryColumn(column).textAt(index) : String(draft.numberColumn(column).at(index));
+    problems.add({ row: draft.sourceRow.at(index), column: reader.headerOf(column), value, code, message, severity: 'aside', original: '' });
+  }
+}
+
+/** Where most stations of a survey point down, those that point up are told: a lost sign turns a hole over. */
+export function tellUpwardStations(reader: TableReader, draft: TableDraft, problems: ProblemList): void {
+  const dips = draft.numberColumn('dip').view();
+  const upward = [...dips.keys()].filter((index) => (dips[index] ?? 0) > 0);
+  if (upward.length === 0 || upward.length * 2 >= dips.length) return;
+  for (const index of upward) {
+    const dip = dips[index] ?? 0;
+    problems.add({ row: draft.sourceRow.at(index), column: reader.headerOf('dip'), value: '', code: 'points-up', message: `points up at ${dip}° where most stations point down; is its sign right?`, severity: 'warning', original: '' });
+  }
+}
+
+/** Tells the rows of a hole or batch whose grades lie a thousand or ten thousand times off, apart from all others. */
+export function tellUnitBlocks(reader: TableReader, draft: TableDraft, problems: ProblemList): void {
+  const byBatch = draft.categories.get('batch');
+  const groups = byBatch ?? draft.categories.get('hole');
+  if (!groups) return;
+  for (const { analyte, header } of reader.plan.analytes) {
+    const column = draft.assays.get(analyte);
+    if (!column) continue;
+    for (const { group, rows, times, isLower } of unitBlocks(column.values.view(), column.qualifiers.view(), groups.codes.view())) {
+      const where = `${byBatch ? 'batch' : 'hole'} ${groups.texts()[group] ?? ''}`;
+      const message = `${analyte} of ${where} is about ${times.toLocaleString('en-GB')} times ${isLower ? 'lower' : 'higher'} than elsewhere; is it in another unit?`;
+      for (const index of rows) problems.add({ row: draft.sourceRow.at(index), column: header, value: '', code: 'unit-doubtful', message, severity: 'warning', original: '' });
+    }
   }
 }
 

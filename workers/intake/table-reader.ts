@@ -18,6 +18,9 @@ interface PendingCell {
 
 type Teller = (column: string, code: string, message: string, severity: FoundProblem['severity'], value: string) => void;
 
+/** A million parts in a million; more is no grade. */
+const WHOLE_PPM = 1e6;
+
 export const columnName = (role: ColumnRole): string => role.replaceAll('-', ' ');
 
 /** Determinations of one analyte in one file stay apart until the end; the first column has first say. */
@@ -82,6 +85,11 @@ export class TableReader implements RowValues {
     return this.#numbers.has(role) || this.#texts.has(role);
   }
 
+  /** Name of the column a role is read from. */
+  headerOf(role: ColumnRole): string {
+    return this.#headers.get(role) ?? role;
+  }
+
   /** Takes one record; blank ones are passed over. Answers whether it was kept. */
   read(row: number, cells: readonly string[]): boolean {
     if (cells.length === 1 && cells[0]?.trim() === '') return false;
@@ -98,7 +106,7 @@ export class TableReader implements RowValues {
     const isReadable = [this.#readPlain(cells, tell), this.#readAssays(cells, tell)].every(Boolean);
     const findings = isReadable ? checkRow(this.#kind, this, this.#context) : [];
     for (const { role, code, message, severity } of findings) {
-      tell(this.#headers.get(role) ?? role, code, message, severity, this.#written(role));
+      tell(this.headerOf(role), code, message, severity, this.#written(role));
     }
     if (!isReadable || findings.some(({ severity }) => severity === 'aside')) return false;
     this.#keep(row, cells);
@@ -146,12 +154,13 @@ export class TableReader implements RowValues {
 
   #readAssays(cells: readonly string[], tell: Teller): boolean {
     let isReadable = true;
-    this.plan.analytes.forEach(({ index, header }, place) => {
+    this.plan.analytes.forEach(({ index, header, unit, toPpm }, place) => {
       const text = (cells[index] ?? '').trim();
       const cell = readAssayCell(text, this.#mapping.decimalMark);
       this.#assays[place] = cell;
-      if (cell.kind !== 'refused') return;
-      tell(header, 'not-a-number', cell.message, 'aside', text);
+      if (cell.kind === 'refused') tell(header, 'not-a-number', cell.message, 'aside', text);
+      else if (cell.kind === 'told' && cell.value * toPpm > WHOLE_PPM) tell(header, 'over-the-whole', `${text} ${unit} is more than the whole sample; is the unit right?`, 'aside', text);
+      else return;
       isReadable = false;
     });
     return isReadable;

@@ -108,5 +108,5 @@ function groupByHole(structures: readonly PlacedStructure[]): Map<string, Placed
 function noteOfHoles(holes: readonly { name: string; notes: string[] }[]): string[] {
   const noted = holes.filter(({ notes }) => notes.length > 0);
   if (noted.length === 0) return [];
-  return [`${noted.length} ${noted.length === 1 ? 'hole has' : 'holes have'} survey notes, told on the hole’s page: ${noted.slice(0, 5).map(({ name }) => name).join(', ')}${noted.length > 5 ? '…' : ''}.`];
+  return [`${noted.length} ${noted.length === 1 ? 'hole has' : 'holes have'} survey notes, told on the hole’s page: ${noted.slice(0, 5).map(({ name }) => name).join(', ')}${noted.length > 5 ? ' and others' : ''}.`];
 }

@@ -39,9 +39,9 @@ const FAULTS: [label: string, name: string, lines: string[], found: Expected][] 
   ['an interval above the collar', 'assay.csv', [ASSAYS, 'TH-1,-2,2,10', 'TH-1,2,4,10'],
     { row: 2, column: 'From', code: 'interval-negative', message: 'expected from at or below the collar, found -2' }],
   ['an overlap', 'assay.csv', [ASSAYS, 'TH-1,0,2,10', 'TH-1,1.5,4,10', 'TH-1,4,6,10'],
-    { row: 3, column: 'from', code: 'interval-overlap', message: 'overlaps row 2 by 0.50 m', value: '1.5' }],
+    { row: 3, column: 'From', code: 'interval-overlap', message: 'overlaps row 2 by 0.50 m', value: '1.5' }],
   ['an interval given twice', 'assay.csv', [ASSAYS, 'TH-1,0,2,10', 'TH-2,0,2,10', 'TH-1,0,2,11'],
-    { row: 4, column: 'from', code: 'interval-repeated', message: 'repeats the interval of row 2' }],
+    { row: 4, column: 'From', code: 'interval-repeated', message: 'repeats the interval of row 2' }],
   ['an interval past the end of the hole', 'assay.csv', [ASSAYS, 'TH-1,0,2,10', 'TH-1,52,54,10'],
     { row: 3, column: 'To', code: 'past-end', message: 'lies wholly past the end of the hole at 50 m' }],
   ['text for a depth', 'assay.csv', [ASSAYS, 'TH-1,0,2,10', 'TH-1,two,4,10', 'TH-1,4,6,10'],
@@ -50,6 +50,8 @@ const FAULTS: [label: string, name: string, lines: string[], found: Expected][] 
     { row: 3, column: 'Cu_ppm', code: 'not-a-number', message: /expected .*“?lots”?/, value: 'lots' }],
   ['a lone negative grade', 'assay.csv', [ASSAYS, 'TH-1,0,2,10', 'TH-1,2,4,-7', 'TH-1,4,6,10'],
     { row: 3, column: 'Cu_ppm', code: 'negative-value', message: 'expected a grade, found -7, which is no limit of this column', value: '-7' }],
+  ['more than the whole sample', 'assay.csv', ['HoleID,From,To,S_pct', 'TH-1,0,2,10', 'TH-1,2,4,104', 'TH-1,4,6,10'],
+    { row: 3, column: 'S_pct', code: 'over-the-whole', message: '104 % is more than the whole sample; is the unit right?', value: '104' }],
   ['a depth left empty', 'assay.csv', [ASSAYS, 'TH-1,0,2,10', 'TH-1,2,,10', 'TH-1,4,6,10'],
     { row: 3, column: 'To', code: 'number-missing', message: 'expected a number for to, found an empty cell' }],
   ['a row too short', 'assay.csv', [ASSAYS, 'TH-1,0,2,10', 'TH-1,2', 'TH-1,4,6,10'],
@@ -59,13 +61,13 @@ const FAULTS: [label: string, name: string, lines: string[], found: Expected][] 
   ['a log without its code', 'lithology.csv', [LOGS, 'TH-1,0,2,BAS', 'TH-1,2,4,', 'TH-1,4,6,BAS'],
     { row: 3, column: 'Lithology', code: 'text-missing', message: 'expected a code, found an empty cell' }],
   ['a dip over 90°', 'survey.csv', [SURVEYS, 'TH-1,0,90,-60', 'TH-1,30,90,-95'],
-    { row: 3, column: 'Dip', code: 'dip-out-of-range', message: 'expected dip between -90 and 90°, found -95' }],
+    { row: 3, column: 'Dip', code: 'dip-out-of-range', message: 'expected dip between −90 and 90°, found −95' }],
   ['an azimuth over 360°', 'survey.csv', [SURVEYS, 'TH-1,0,400,-60', 'TH-1,30,90,-60'],
     { row: 2, column: 'Azimuth', code: 'azimuth-out-of-range', message: 'expected azimuth between 0 and 360°, found 400' }],
   ['a station given twice', 'survey.csv', [SURVEYS, 'TH-1,0,90,-60', 'TH-1,0,91,-60'],
-    { row: 3, column: 'depth', code: 'station-repeated', message: 'repeats the station of row 2' }],
+    { row: 3, column: 'Depth', code: 'station-repeated', message: 'repeats the station of row 2' }],
   ['a collar given twice', 'collar.csv', ['HoleID,Easting,Northing,Elevation,Length', 'TH-1,1,2,3,50', 'TH-1,1,2,3,60'],
-    { row: 3, column: 'hole', code: 'collar-repeated', message: 'repeats the collar of row 2' }],
+    { row: 3, column: 'HoleID', code: 'collar-repeated', message: 'repeats the collar of row 2', value: 'TH-1' }],
   ['a hole of no length', 'collar.csv', ['HoleID,Easting,Northing,Elevation,Length', 'TH-1,1,2,3,0', 'TH-2,1,2,3,60'],
     { row: 2, column: 'Length', code: 'length-not-positive', message: 'expected a length above 0 m, found 0' }],
 ];
@@ -109,6 +111,20 @@ describe('IN-06 a row that does not hold is set aside with what, where and why; 
     expect((await desk.problems(id)).map(({ row }) => row)).toEqual([2, 3]);
     expect(await desk.revisions()).toEqual(before);
     await desk.stillAnswers();
+  });
+
+  test('a station that points up among stations that point down is told and loads', async () => {
+    const { check, problems } = await desk.checked('survey.csv', csv(SURVEYS, 'TH-1,0,90,-60', 'TH-1,30,90,58', 'TH-2,0,90,-55'));
+    expect(problems).toEqual([expect.objectContaining({ row: 3, column: 'Dip', code: 'points-up', severity: 'warning', message: 'points up at 58° where most stations point down; is its sign right?' })]);
+    expect(check).toMatchObject({ rows: 3, rowsToLoad: 3, warnings: 1 });
+  });
+
+  test('a hole whose grades lie ten thousand times off is told row by row and loads', async () => {
+    const rows = (hole: string, count: number, grade: (row: number) => number): string[] => Array.from({ length: count }, (_, i) => `${hole},${i},${i + 1},${grade(i)}`);
+    const { check, problems } = await desk.checked('assay.csv', csv(ASSAYS, ...rows('TH-1', 20, (i) => 2_000 + 300 * i), ...rows('TH-2', 12, (i) => 0.2 + i / 20)));
+    expect(problems.map(({ row }) => row)).toEqual(Array.from({ length: 12 }, (_, i) => 22 + i));
+    expect(problems[0]).toMatchObject({ column: 'Cu_ppm', code: 'unit-doubtful', severity: 'warning', message: 'Cu of hole TH-2 is about 10,000 times lower than elsewhere; is it in another unit?' });
+    expect(check).toMatchObject({ rows: 32, rowsToLoad: 32, warnings: 12 });
   });
 
   test('a quotation mark closed only rows later is told, since it takes those rows in', async () => {

@@ -15,6 +15,15 @@ describe('guessing columns', () => {
     expect(guess[3]?.reason).toBe('not used in a survey table');
   });
 
+  it('takes the depth of a collar as its length, and the from of a structure as its depth', () => {
+    const collar = guessColumns(['HOLEID', 'EAST', 'NORTH', 'RL', 'DEPTH'], [['A', '1', '2', '3', '90']], 'collar');
+    expect(collar[4]).toMatchObject({ role: 'length', certainty: 'sure' });
+    const both = guessColumns(['HOLEID', 'DEPTH', 'LENGTH'], [['A', '90', '90']], 'collar');
+    expect(both.map(({ role }) => role)).toEqual(['hole', 'skip', 'length']);
+    const structure = guessColumns(['Hole', 'From', 'Alpha'], [['A', '10', '45']], 'structure');
+    expect(structure[1]).toMatchObject({ role: 'depth', certainty: 'check' });
+  });
+
   it.each([
     ['collar.csv', ['hole_id', 'x', 'y', 'z', 'length_m'], 'collar'],
     ['a.csv', ['hole_id', 'from_m', 'to_m', 'Cu_ppm'], 'assay'],
