@@ -1,6 +1,6 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom, type Random } from '#kernels/random.ts';
-import { meansOf } from './code-space.ts';
+import { meansOf, requireCoordinates } from './code-space.ts';
 
 /** Spread of chemistry over two levels of a code hierarchy. */
 export interface NestedVariance {
@@ -34,7 +34,7 @@ export interface NestedInput {
  *
  * @param options.draws Permutations, 999 unless told.
  * @throws {KernelError} `too-few-groups` under two codes; `too-few-rows` at a code without rows;
- *   `shape`.
+ *   `shape`; `not-finite` with { row, col }.
  * @see Anderson (2001), Austral Ecology 26, 32-46 (from memory).
  */
 export function nestedVariance(
@@ -85,7 +85,8 @@ interface Sums extends NestedInput {
 }
 
 function checkedSums(input: NestedInput): Sums {
-  const { codeOf, parentOf } = input;
+  const { coordinates, codeOf, parentOf } = input;
+  requireCoordinates(coordinates, codeOf.length);
   const sizes = sizesOf(codeOf, parentOf.length);
   if (parentOf.length < 2)
     throw new KernelError('too-few-groups', `expected 2 or more codes, found ${parentOf.length}`);
