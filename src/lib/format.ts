@@ -73,11 +73,12 @@ export const formatDepth = (metres: number): string =>
 export const formatInterval = (fromM: number, toM: number): string =>
   `${formatDepth(fromM)} ${MISSING} ${formatDepth(toM)}${THIN_SPACE}m`;
 
-/** A share of 1 as a percentage: whole from 10 %, one decimal below; what is there is never "0 %". */
+/** A share of 1 as a percentage: whole from 10 %, one decimal below; what is there is never "0 %", what lacks something never "100 %". */
 export function formatShare(share: number): string {
   if (!Number.isFinite(share)) return MISSING;
   const percent = share * 100;
   if (percent > 0 && percent < 0.05) return `<${formatFixed(0.1, 1)}${THIN_SPACE}%`;
+  if (percent >= 99.5 && percent < 100) return percent < 99.95 ? `${formatFixed(percent, 1)}${THIN_SPACE}%` : `>${formatFixed(99.9, 1)}${THIN_SPACE}%`;
   const decimals = percent === 0 || Math.abs(percent) >= 9.95 ? 0 : 1;
   return `${formatFixed(percent, decimals)}${THIN_SPACE}%`;
 }

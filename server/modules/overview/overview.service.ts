@@ -33,7 +33,12 @@ export interface OverviewSources {
 
 const LATELY = 6;
 const km = (metres: number): string => `${Math.round(metres).toLocaleString('en-GB')} m`;
-const shareOf = (part: number, whole: number): string => (whole > 0 ? `${((100 * part) / whole).toFixed(1)} %` : '–');
+function shareOf(part: number, whole: number): string {
+  if (!(whole > 0)) return '–';
+  const percent = (100 * part) / whole;
+  if (percent >= 100) return '100 %';
+  return percent > 99.9 ? '>99.9 %' : `${percent.toFixed(1)} %`;
+}
 
 export function createOverview(sources: OverviewSources) {
   const { db, jobs, snapshots, intake, suites, components, groupings, screens, domains, geomet, codes } = sources;

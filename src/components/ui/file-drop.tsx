@@ -16,6 +16,8 @@ interface Props {
   className?: string;
 }
 
+const isSheet = (name: string): boolean => /\.(xlsx?|xlsm|ods)$/i.test(name);
+
 /** A bare trough to lay files in: drop them, or browse; several at once. */
 export function FileDrop({
   label,
@@ -37,7 +39,7 @@ export function FileDrop({
       endings.some((ending) => name.toLowerCase().endsWith(ending)),
     );
     const bad = files.filter((file) => !good.includes(file)).map(({ name }) => name);
-    setRefused(bad.length > 0 ? `Expected ${endings.join(', ')}; found ${bad.join(', ')}` : '');
+    setRefused(bad.length > 0 ? `Expected ${endings.join(', ')}; found ${bad.join(', ')}.${bad.some(isSheet) ? ' Save the sheet as CSV and bring that in.' : ''}` : '');
     if (good.length > 0) onFiles(isSingle ? good.slice(0, 1) : good);
   };
   const onDrag = (event: DragEvent, isInside: boolean) => {

@@ -12,7 +12,7 @@ function filesSentence(uploads: readonly Upload[]): string {
   const wanting = waiting.filter((upload) => attentionOf(upload) !== null).length;
   if (waiting.length === 0) return 'No file waits.';
   const wait = `${countOf(waiting.length, 'file')} ${waiting.length === 1 ? 'waits' : 'wait'} to be loaded`;
-  return wanting === 0 ? `${wait}.` : `${wait}; ${formatCount(wanting)} ${wanting === 1 ? 'needs' : 'need'} a look first.`;
+  return wanting === 0 ? `${wait}.` : `${wait}; ${waiting.length === 1 ? 'it' : formatCount(wanting)} ${wanting === 1 ? 'needs' : 'need'} a look first.`;
 }
 
 /** How intake stands, in two sentences: what is in force, what lacks, what waits. */

@@ -17,6 +17,9 @@ const CODE_WORDS = new Map([
   ['negative-value', 'negative grade'],
   ['read-as-below', 'read as below limit'],
   ['limit-unknown', 'limit unknown'],
+  ['over-the-whole', 'more than the whole'],
+  ['points-up', 'station points up'],
+  ['unit-doubtful', 'unit in doubt'],
 ]);
 
 /** A problem's stable code in words. */

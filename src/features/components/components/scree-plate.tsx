@@ -34,11 +34,7 @@ export function ScreePlate({ run, stale }: Props) {
       qualifier={run.shares.length > MOST_BARS ? `first ${MOST_BARS} of ${run.shares.length} components` : 'by component'}
       stale={stale}
       help={HELP}
-      caption={
-        <span className="block truncate" title={run.suggestion}>
-          {run.suggestion}
-        </span>
-      }
+      caption={run.suggestion}
       exports={figureExports(figure.drawn, { fileName: `${deposit.name}-scree`, caption: `${run.suggestion} Snapshot ${run.snapshotNumber}`, table: () => table })}
       className="max-lg:h-80"
     >

@@ -20,7 +20,7 @@ export function BringPlate({ depositId }: { depositId: number }) {
   const shown = files.filter(({ state }) => state !== 'kept');
   const hasEnded = shown.some((file) => !isUnderWay(file));
   return (
-    <Plate title="Bring files in" qualifier="nothing is loaded yet by this" tools={hasEnded && <Button size="tiny" onClick={clear}>Clear the list</Button>}>
+    <Plate title="Bring files in" qualifier="you look each file over before it loads" tools={hasEnded && <Button size="tiny" onClick={clear}>Clear the list</Button>}>
       <FileDrop
         label="Drop CSV files here"
         hint="Several at once, any of the kinds below. Separator, encoding, kind and columns are found out and shown to you."

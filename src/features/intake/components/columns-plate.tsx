@@ -8,7 +8,7 @@ import { Plate } from '#src/components/ui/plate.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
 import { Segmented } from '#src/components/ui/segmented.tsx';
 import { Select } from '#src/components/ui/select.tsx';
-import { countOf } from '#src/lib/format.ts';
+import { countOf, formatCount } from '#src/lib/format.ts';
 import { certaintyOf } from '../certainty.ts';
 import { hasAnalytes } from '../kinds.ts';
 import { columnsWithoutUnit, withColumn, withRole, withUnitForAll } from '../mapping.ts';
@@ -52,12 +52,13 @@ export function ColumnsPlate({ upload, draft, fixedBecause, className }: Props) 
     [mapping, problems, upload, isChecked],
   );
   const isOpen = ({ certainty, problem }: (typeof rows)[number]) => certainty.isOpen || problem !== undefined;
+  const lacking = problems.filter(({ index }) => index === null).length;
   const open = rows.filter(isOpen).length;
   const seen = rows.filter((row) => shown === 'all' || (shown === 'open' ? isOpen(row) : row.column.role === 'skip'));
   return (
     <Plate
       title="What each column is"
-      qualifier={<span aria-live="polite">{countOf(rows.length, 'column')}, {open === 0 ? 'none to look at' : `${open} to look at`}{savedWord(draft, fixedBecause)}</span>}
+      qualifier={<span aria-live="polite">{countOf(rows.length, 'column')}, {toLookAt(open, lacking)}{savedWord(draft, fixedBecause)}</span>}
       tools={<Segmented label="Columns shown" segments={SHOWN} value={shown} onPick={setShown} />}
       {...(className ? { className } : {})}
     >
@@ -108,6 +109,11 @@ export function ColumnsPlate({ upload, draft, fixedBecause, className }: Props) 
       </datalist>
     </Plate>
   );
+}
+
+function toLookAt(open: number, lacking: number): string {
+  if (open > 0) return `${formatCount(open)} to look at`;
+  return lacking > 0 ? 'a needed one is not named' : 'none to look at';
 }
 
 function savedWord({ isDirty, isSaving, problems, error }: MappingDraft, fixedBecause: string | undefined): string {

@@ -1,14 +1,14 @@
 import { useQuery } from '@tanstack/react-query';
 import { memo, useMemo, type ReactNode } from 'react';
 import type * as z from 'zod';
-import type { PreviewRow, Upload, previewRows } from '#contract/files.ts';
+import type { PreviewRow, RowProblem, Upload, previewRows } from '#contract/files.ts';
 import { CELL_LOOKS, CellLegend, LookWord, type CellLook } from '#src/components/ui/cell-mark.tsx';
 import { Skeleton } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { cx } from '#src/lib/cx.ts';
 import { formatCount } from '#src/lib/format.ts';
 import { useSettled } from '#src/lib/use-settled.ts';
-import { previewQuery } from '../api/intake-queries.ts';
+import { previewQuery, problemsQuery } from '../api/intake-queries.ts';
 import { mappingProblems } from '../mapping.ts';
 import type { MappingDraft } from '../use-mapping-draft.ts';
 
@@ -32,6 +32,9 @@ export function PreviewPlate({ depositId, upload, draft, collarRevision }: Props
     ...previewQuery(depositId, upload.id, settled, collarRevision),
     enabled: problems.length === 0 && isReadable,
   });
+  const isChecked = upload.check !== null && !draft.isDirty;
+  const found = useQuery({ ...problemsQuery(depositId, upload.id, { page: 1 }), enabled: isChecked });
+  const preview = useMemo(() => data && withProblems(data, upload, isChecked ? (found.data?.rows ?? []) : []), [data, found.data, isChecked, upload]);
   const last = data?.rows.at(-1)?.row;
   const isPale = problems.length > 0 && data !== undefined;
   return (
@@ -45,9 +48,9 @@ export function PreviewPlate({ depositId, upload, draft, collarRevision }: Props
       isFlush
     >
       <div className="flex h-full min-h-0 flex-col gap-1.5 px-3 pb-2">
-        {data && (
+        {preview && (
           <div role="group" aria-label="Preview, scrolls" tabIndex={0} className={cx('relative min-h-0 flex-1 overflow-auto max-lg:max-h-96', isPale && 'opacity-40')}>
-            <PreviewTable preview={data} fileName={upload.fileName} />
+            <PreviewTable preview={preview} fileName={upload.fileName} />
           </div>
         )}
         {!data && (problems.length > 0 ? <p className="py-2 text-ink-2">The first rows are shown here once every needed column is named.</p> : <Skeleton lines={8} />)}
@@ -58,6 +61,25 @@ export function PreviewPlate({ depositId, upload, draft, collarRevision }: Props
 }
 
 type Preview = z.infer<typeof previewRows.response>;
+
+/** What shows only once all rows are read (overlaps, repeats, doubtful units) marked in the rows it touches. */
+function withProblems(preview: Preview, { mapping }: Upload, problems: readonly RowProblem[]): Preview {
+  if (problems.length === 0) return preview;
+  const headers = new Map(mapping.columns.map(({ index, header }) => [index, header]));
+  return {
+    ...preview,
+    rows: preview.rows.map((line) => {
+      const own = problems.filter(({ row }) => row === line.row);
+      if (own.length === 0) return line;
+      const cells = line.cells.map((cell, place) => {
+        const problem = own.find(({ column }) => column === headers.get(preview.columns[place]?.index ?? -1));
+        if (!problem || cell.note !== null) return cell;
+        return problem.severity === 'aside' ? { ...cell, mark: 'refused' as const, note: problem.message } : { ...cell, note: problem.message };
+      });
+      return { ...line, cells, aside: line.aside || own.some(({ severity }) => severity === 'aside') };
+    }),
+  };
+}
 
 const HEAD = 'sticky top-0 z-1 border-b border-rule-firm bg-sheet px-2 py-0.5 align-bottom text-caption font-semibold text-ink-2';
 

@@ -51,7 +51,7 @@ function InlineSelect<Value extends string>({ label, ...select }: InlineProps<Va
   return (
     <div className="flex items-center gap-1.5 text-small text-ink-2">
       <span aria-hidden>{label}</span>
-      <Select label={label} isLabelHidden controlSize="tiny" className="w-[6.25rem]" {...select} />
+      <Select label={label} isLabelHidden controlSize="tiny" className="w-[8.5rem]" {...select} />
     </div>
   );
 }

@@ -154,10 +154,10 @@ it('FileDrop takes several files and names the ones it refuses', async () => {
   const { user } = renderPage(
     <FileDrop label="Drop CSV files here" endings={['.csv']} onFiles={onFiles} />,
   );
-  const files = ['a.csv', 'b.CSV', 'c.pdf'].map((name) => new File(['x'], name));
+  const files = ['a.csv', 'b.CSV', 'c.pdf', 'd.xlsx'].map((name) => new File(['x'], name));
   await user.upload(screen.getByLabelText('Drop CSV files here'), files);
   expect(onFiles).toHaveBeenCalledExactlyOnceWith(files.slice(0, 2));
-  expect(screen.getByRole('alert')).toHaveTextContent('Expected .csv; found c.pdf');
+  expect(screen.getByRole('alert')).toHaveTextContent('Expected .csv; found c.pdf, d.xlsx. Save the sheet as CSV and bring that in.');
 });
 
 it('ConfirmDialog does it only on the verb', async () => {

@@ -142,6 +142,13 @@ describe('the rows of a file', () => {
     await waitFor(() => expect(sent.at(-1)?.url.search).toContain('code=hole-unknown'));
   });
 
+  it('marks in the preview what showed only once all rows were read', async () => {
+    const repeat = { row: 2, column: 'hole_id', value: 'TFD-031', code: 'collar-repeated', message: 'repeats the collar of row 9', severity: 'aside' };
+    openFile(checked, { 'GET /deposits/1/uploads/8/problems': { ...listed, rows: [repeat] } });
+    expect(await screen.findByRole('cell', { name: 'TFD-031, row set aside' })).toHaveAttribute('title', 'repeats the collar of row 9');
+    expect(screen.getByRole('rowheader', { name: '2, set aside' })).toBeInTheDocument();
+  });
+
   it('loads the rows that hold, added to the table in force when asked to', async () => {
     const job = { id: 30, depositId: 1, kind: 'load-file', title: 'Load december.csv', state: 'queued', progress: 0, phase: '', error: null, result: null, startedBy: { id: 2, name: 'T' }, createdAt: '2026-11-30T09:00:00Z', startedAt: null, endedAt: null };
     const { user, sent } = openFile(checked, {
