@@ -24,14 +24,16 @@ export interface ConcentrateGrade {
  * recovery / concentrate metal; grade = head x recovery / mass pull.
  *
  * @returns Null when the head holds less metal than the least given: the ratio has no use there.
- * @throws {KernelError} `bad-parameter` at a negative grade, a recovery outside (0, 1] for the metal
+ * @throws {KernelError} `bad-parameter` at a negative or infinite grade, a recovery outside (0, 1] for the metal
  *   or [0, 1] for the element, or a concentrate grade that is not > 0.
  */
 export function concentrateGrade(input: ConcentrateInput): ConcentrateGrade | null {
   const { headPpm, metalHeadPpm, metalConcentratePpm, recovery, metalRecovery, leastMetalHeadPpm } =
     input;
   const areGrades =
-    headPpm >= 0 && metalHeadPpm >= 0 && metalConcentratePpm > 0 && leastMetalHeadPpm >= 0;
+    [headPpm, metalHeadPpm, metalConcentratePpm, leastMetalHeadPpm].every(
+      (grade) => grade >= 0 && grade < Infinity,
+    ) && metalConcentratePpm > 0;
   const areRecoveries = recovery >= 0 && recovery <= 1 && metalRecovery > 0 && metalRecovery <= 1;
   if (!areGrades || !areRecoveries) {
     const found = `grades ${headPpm}, ${metalHeadPpm}, ${metalConcentratePpm} ppm, recoveries ${recovery}, ${metalRecovery}`;
@@ -51,7 +53,7 @@ export function concentrateGrade(input: ConcentrateInput): ConcentrateGrade | nu
  *
  * @param elementPpm, metalPpm n values each, NaN where not assayed.
  * @param leastMetalPpm Rows with less metal, or none, give NaN.
- * @throws {KernelError} `shape`; `bad-parameter` at a least grade < 0.
+ * @throws {KernelError} `shape`; `bad-parameter` at a least grade < 0, with { row } at an infinite one.
  */
 export function ratioToMetal(
   elementPpm: Float64Array,
@@ -68,6 +70,10 @@ export function ratioToMetal(
     throw new KernelError('bad-parameter', `expected a least grade >= 0, found ${leastMetalPpm}`);
   return elementPpm.map((value, row) => {
     const metal = metalPpm[row]!;
+    if (Math.abs(value) === Infinity || Math.abs(metal) === Infinity) {
+      const message = `expected grades or NaN, found ${value} and ${metal} in row ${row}`;
+      throw new KernelError('bad-parameter', message, { row });
+    }
     return metal > 0 && metal >= leastMetalPpm ? value / metal : NaN;
   });
 }

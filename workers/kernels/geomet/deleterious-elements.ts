@@ -1,3 +1,5 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+
 import {
   flagZones,
   overLimit,
@@ -71,7 +73,18 @@ export function deleteriousZones(
   return { byElement, isFlagged, flaggedMetres: markedMetres(lengths, isFlagged), totalMetres };
 }
 
-/** Metres of the intervals marked 1. */
+/**
+ * Metres of the intervals marked 1.
+ *
+ * @throws {KernelError} `shape`; `bad-parameter` with { row } at a length that is none.
+ */
 export function markedMetres(lengthsM: Float64Array, marks: Uint8Array): number {
+  if (marks.length !== lengthsM.length)
+    throw new KernelError('shape', `expected ${lengthsM.length} marks, found ${marks.length}`);
+  const row = lengthsM.findIndex((length) => !(length >= 0 && length < Infinity));
+  if (row >= 0) {
+    const message = `expected a length >= 0 m, found ${lengthsM[row]} in row ${row}`;
+    throw new KernelError('bad-parameter', message, { row });
+  }
   return lengthsM.reduce((sum, length, row) => sum + (marks[row] === 1 ? length : 0), 0);
 }

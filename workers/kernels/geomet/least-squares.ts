@@ -1,3 +1,5 @@
+import { KernelError } from '#kernels/kernel-error.ts';
+
 /**
  * Least squares on some columns of a matrix by Householder reflections; a column that hangs on those
  * before it gets 0. Own code, since it runs many times for every interval on tiny matrices, where the
@@ -6,6 +8,7 @@
  * @param matrix Row-major (m, nCols), m = rhs.length. Not modified.
  * @param columns Columns to use, in this order.
  * @returns One value per column used.
+ * @throws {KernelError} `not-finite` where a column used or the right side is not.
  * @see Golub & Van Loan (2013), Matrix Computations, Johns Hopkins, section 5.3.
  */
 export function leastSquares(
@@ -17,6 +20,8 @@ export function leastSquares(
   const [m, n] = [rhs.length, columns.length];
   const r = columns.map((j) => Float64Array.from({ length: m }, (_, i) => matrix[i * nCols + j]!));
   const scale = r.map((column) => Math.hypot(...column));
+  if (!(scale.every(Number.isFinite) && Number.isFinite(Math.hypot(...rhs))))
+    throw new KernelError('not-finite', 'expected finite columns and right side, found some not');
   const right = rhs.slice();
   const isFree = new Uint8Array(n);
   for (let k = 0; k < Math.min(m, n); k++) {

@@ -44,8 +44,8 @@ export interface RecipeResult {
  * of the rules does not matter.
  *
  * @param columns Columns the conditions name, n values each.
- * @param lengthsM n interval lengths in metres.
- * @throws {KernelError} `bad-parameter` at a rule without code or integer priority, or an override
+ * @param lengthsM n interval lengths in metres, >= 0.
+ * @throws {KernelError} `bad-parameter` with { row } at a length that is none, at a rule without code or integer priority, or an override
  *   without reason, outside the table, or of a row overridden twice; else as `evaluateCondition`.
  */
 export function evaluateRecipe(
@@ -57,6 +57,11 @@ export function evaluateRecipe(
 ): RecipeResult {
   const n = lengthsM.length;
   checkRecipe(rules, overrides, n);
+  const bad = lengthsM.findIndex((length) => !(length >= 0 && length < Infinity));
+  if (bad >= 0) {
+    const message = `expected a length >= 0 m, found ${lengthsM[bad]} in row ${bad}`;
+    throw new KernelError('bad-parameter', message, { row: bad });
+  }
   const levels = codeLevels([...rules, ...overrides].map(({ code }) => code));
   const codeOf = new Map(levels.map((level, code) => [level, code]));
   const matches = rules.map(({ when }, i) => {

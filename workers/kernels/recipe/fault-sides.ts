@@ -20,7 +20,8 @@ export const FAULT_SIDES = ['above', 'below'] as const;
  * due east.
  *
  * @param points Row-major, shape (n, 3), east, north, up in metres; a row with a NaN gives NaN.
- * @throws {KernelError} `shape`; `bad-parameter` at a fault whose point or attitude is none.
+ * @throws {KernelError} `shape`; `bad-parameter` at a fault whose point or attitude is none, with { row }
+ *   at an infinite coordinate.
  */
 export function distancesToFault(points: Float64Array, fault: FaultPlane): Float64Array {
   if (points.length % 3 !== 0) {
@@ -37,6 +38,10 @@ export function distancesToFault(points: Float64Array, fault: FaultPlane): Float
   const distances = new Float64Array(points.length / 3);
   for (let row = 0; row < distances.length; row++) {
     const [x, y, z] = [points[3 * row]!, points[3 * row + 1]!, points[3 * row + 2]!];
+    if (Math.abs(x) + Math.abs(y) + Math.abs(z) === Infinity) {
+      const message = `expected a position, found ${x}, ${y}, ${z} in row ${row}`;
+      throw new KernelError('bad-parameter', message, { row });
+    }
     distances[row] = dot(normal, [x - fault.x, y - fault.y, z - fault.z]);
   }
   return distances;
