@@ -4,9 +4,8 @@ import { endpoint } from './endpoint.ts';
 import { TableKind } from './files.ts';
 import { ANY_MEMBER } from './roles.ts';
 
-/** What one analyte of the snapshot can bear. Shares are of the assayed intervals. */
-export const AnalyteSummary = z.object({
-  analyte: z.string(),
+/** What one analyte of one table can bear. Shares are of that table's rows. */
+const AnalyteReading = z.object({
   method: z.string().nullable(),
   originalUnit: z.string(),
   n: z.number().int(),
@@ -21,9 +20,20 @@ export const AnalyteSummary = z.object({
   reason: z.string(),
   /** Four-acid digestion caution, or null. */
   caution: z.string().nullable(),
+});
+
+/** One analyte of the snapshot, read in its assays, or in the surface samples where it has no others. */
+export const AnalyteSummary = AnalyteReading.extend({
+  analyte: z.string(),
   supports: z.array(z.enum(['drill', 'surface'])),
+  /** The surface samples' own reading of an analyte that is assayed too. */
+  onSurface: AnalyteReading.nullable().default(null),
 });
 export type AnalyteSummary = z.infer<typeof AnalyteSummary>;
+
+/** Analytes of one support, each as that support's rows read it. */
+export const analytesOf = (analytes: readonly AnalyteSummary[], support: 'drill' | 'surface'): AnalyteSummary[] =>
+  analytes.flatMap((summary) => (summary.supports.includes(support) ? [support === 'surface' && summary.onSurface ? { ...summary, ...summary.onSurface } : summary] : []));
 
 export const CodeMetres = z.object({ code: z.string(), metres: z.number(), intervals: z.number().int() });
 export type CodeMetres = z.infer<typeof CodeMetres>;

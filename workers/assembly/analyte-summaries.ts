@@ -63,16 +63,19 @@ function summariesOf(columns: readonly AnalyteColumn[]): AnalyteSummary[] {
     return {
       analyte: column.name, method: column.method, originalUnit: column.originalUnit, n: nAnalysed, missingShare: nRows > 0 ? nMissing / nRows : 0,
       belowShare: nAnalysed > 0 ? nBelow / nAnalysed : 0, aboveShare: nAnalysed > 0 ? nAbove / nAnalysed : 0, limitsPpm: limitsOf(column), ...medianAndMax(column),
-      decision: decision ? DECISIONS[decision.decision] : 'keep', reason: decision?.reason ?? 'fewer than three analytes: no log-ratio suite can be made', caution: decision?.cautions.join('; ') || null, supports: [column.support],
+      decision: decision ? DECISIONS[decision.decision] : 'keep', reason: decision?.reason ?? 'fewer than three analytes: no log-ratio suite can be made', caution: decision?.cautions.join('; ') || null, supports: [column.support], onSurface: null,
     };
   });
 }
 
-/** Sums up each analyte of the assays and the surface samples; one found in both is told by its assays. */
+/** Sums up each analyte of the assays and the surface samples; one found in both is told by its assays, its surface reading beside them. */
 export function summariseAnalytes(store: ColumnStore, assayTableId: number | null, surfaceTableId: number | null): AnalyteSummary[] {
   const drill = summariesOf(columnsOf(store, assayTableId, 'drill'));
   const surface = summariesOf(columnsOf(store, surfaceTableId, 'surface'));
   const names = new Set(drill.map(({ analyte }) => analyte));
-  const both = drill.map((summary) => (surface.some(({ analyte }) => analyte === summary.analyte) ? { ...summary, supports: [...summary.supports, 'surface' as const] } : summary));
+  const both = drill.map((summary): AnalyteSummary => {
+    const onSurface = surface.find(({ analyte }) => analyte === summary.analyte);
+    return onSurface ? { ...summary, supports: [...summary.supports, 'surface'], onSurface } : summary;
+  });
   return [...both, ...surface.filter(({ analyte }) => !names.has(analyte))].sort((a, b) => (a.analyte < b.analyte ? -1 : 1));
 }

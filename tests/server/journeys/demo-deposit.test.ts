@@ -75,6 +75,10 @@ describe('JO-01 from tables to codes by a program with a token of its own', { ti
     expect(new Set(found.map(({ code }) => code))).toEqual(new Set(['past-end', 'hole-unknown', 'not-a-number', 'interval-overlap', 'negative-value']));
     loneNegatives = found.find(({ code }) => code === 'negative-value')?.count ?? 0;
     expect(snapshot.rows - snapshot.surfaceRows).toBeGreaterThanOrEqual(demo.truth.length - loneNegatives);
+    // An analyte of both is read in each by its own rows.
+    const copper = snapshot.analytes.find(({ analyte }) => analyte === 'Cu');
+    expect(copper).toMatchObject({ supports: ['drill', 'surface'], onSurface: { n: snapshot.surfaceRows } });
+    expect(copper?.n).toBeGreaterThan(1_000);
     expect(snapshot.faults.length).toBeGreaterThan(0);
   });
 

@@ -31,7 +31,7 @@ export const deposit = (myRole: Role) => ({
 
 export const analyte = (name: string, over: Partial<AnalyteSummary> = {}): AnalyteSummary => ({
   analyte: name, method: null, originalUnit: 'ppm', n: 8, missingShare: 0, belowShare: 0, aboveShare: 0, limitsPpm: [], medianPpm: 100, maxPpm: 1000,
-  decision: 'keep', reason: 'measured above its limit in every row', caution: null, supports: ['drill'], ...over,
+  decision: 'keep', reason: 'measured above its limit in every row', caution: null, supports: ['drill'], onSurface: null, ...over,
 });
 
 export const snapshot: Snapshot = {

@@ -64,10 +64,10 @@ function BelowRun({ analyte, belowShare }: AnalyteSummary) {
   );
 }
 
-/** The reason on two lines at most, with a mark where the digestion asks for care; all of it on hover and in the CSV. */
+/** The reason, with a mark where the digestion asks for care. */
 function Because(row: AnalyteSummary) {
   return (
-    <span className="line-clamp-2 min-w-56 text-caption text-ink-2" title={reasonsOf(row)}>
+    <span className="block min-w-56 text-caption text-ink-2">
       {row.reason}
       {row.caution !== null && <span className="text-warn">; {row.caution}</span>}
     </span>
@@ -83,12 +83,13 @@ export function AnalytePlate({ analytes, chosen, onChosen, snapshotNumber }: Pro
   }, [analytes, chosen, onChosen]);
   const advised = recommended(analytes);
   const sure = analytes.filter(({ decision }) => decision === 'keep').map(({ analyte }) => analyte);
+  const isTicked = (names: readonly string[]): boolean => names.join() === chosen.join();
   const tools = (
     <>
-      <Button size="tiny" onClick={() => onChosen(advised)}>
+      <Button size="tiny" unavailable={isTicked(advised) && 'These are ticked'} onClick={() => onChosen(advised)}>
         Take the {formatCount(advised.length)} advised
       </Button>
-      <Button size="tiny" unavailable={sure.length === 0 && 'No analyte is measured without a caution'} onClick={() => onChosen(sure)}>
+      <Button size="tiny" unavailable={sure.length === 0 ? 'No analyte is measured without a caution' : isTicked(sure) && 'These are ticked'} onClick={() => onChosen(sure)}>
         Only the {formatCount(sure.length)} without care
       </Button>
       <Button size="tiny" kind="bare" unavailable={chosen.length === 0 && 'None is ticked'} onClick={() => onChosen([])}>

@@ -1,6 +1,6 @@
 import { useQuery } from '@tanstack/react-query';
 import { useCallback, useMemo, useState } from 'react';
-import type { AnalyteSummary, Snapshot } from '#contract/snapshots.ts';
+import { analytesOf, type AnalyteSummary, type Snapshot } from '#contract/snapshots.ts';
 import type { Suite } from '#contract/suites.ts';
 import { PageHead } from '#src/components/layout/page-head.tsx';
 import { LinkButton } from '#src/components/ui/button.tsx';
@@ -61,7 +61,7 @@ function Chooser({ snapshot, suites }: { snapshot: Snapshot; suites: readonly Su
   const supports = supportsOf(snapshot);
   const [view, setView] = useUrlState(SUITE_VIEW);
   const support = supports.includes(view.support) ? view.support : (supports[0] ?? 'drill');
-  const analytes = useMemo(() => snapshot.analytes.filter(({ supports: own }) => own.includes(support)), [snapshot, support]);
+  const analytes = useMemo(() => analytesOf(snapshot.analytes, support), [snapshot, support]);
   const [picked, setPicked] = useState<Partial<Record<Support, string[]>>>({});
   const chosen = picked[support] ?? recommended(analytes);
   const choose = useCallback((names: string[]) => setPicked((before) => ({ ...before, [support]: names })), [support]);

@@ -44,6 +44,17 @@ it('ticks what is advised, counts live, and makes the suite of what is ticked', 
   expect(sent.find(({ key }) => key === 'POST /deposits/1/suites')?.body).toEqual({ name: 'Without chromium', note: '', replacementFraction: 0.65, support: 'drill', analytes: ['Cu', 'Na', 'Zn'] });
 });
 
+it('reads an analyte of the surface samples by their own rows', async () => {
+  const reading = analyte('Cu', { n: 130, medianPpm: 44.4, belowShare: 0.25, reason: '25 % below detection' });
+  const both = [analyte('Cu', { supports: ['drill', 'surface'], onSurface: reading }), analyte('Na'), analyte('Zn')];
+  const { user } = open('geologist', { 'GET /deposits/1/snapshot': { snapshot: { ...snapshot, analytes: both }, assembling: false } });
+  await user.click(await screen.findByRole('radio', { name: 'Surface samples' }));
+  const row = screen.getByRole('row', { name: /Take Cu/ });
+  expect(row).toHaveTextContent('44.4');
+  expect(row).toHaveTextContent('25 % below detection');
+  expect(screen.getByText(/n = 130 rows at most/)).toBeInTheDocument();
+});
+
 it('asks for three analytes at least, and shows only those of the support', async () => {
   const { user } = open();
   await user.click(await screen.findByRole('radio', { name: 'Surface samples' }));
