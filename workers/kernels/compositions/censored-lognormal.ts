@@ -58,11 +58,18 @@ export function fitCensoredLognormal(
 /**
  * Geometric mean of a lognormal below a limit, exp(mu - sigma phi(z) / Phi(z)),
  * z = (ln limit - mu) / sigma: always under the limit.
+ *
+ * @throws {KernelError} `bad-parameter` unless limit and logSd are finite and > 0, logMean finite.
  */
 export function meanBelowLimit(
   { logMean, logSd }: Pick<CensoredLognormal, 'logMean' | 'logSd'>,
   limit: number,
 ): number {
+  const isLognormal = Number.isFinite(logMean) && logSd > 0 && logSd < Infinity;
+  if (!isLognormal || !(limit > 0 && limit < Infinity)) {
+    const message = `expected a limit > 0 of a lognormal, found ${limit}, mean ${logMean}, sd ${logSd} of logs`;
+    throw new KernelError('bad-parameter', message);
+  }
   const z = (Math.log(limit) - logMean) / logSd;
   return Math.exp(logMean - logSd * lowerTailRatio(z));
 }

@@ -36,7 +36,8 @@ export function profilePart(values: Float64Array, states: Uint8Array): PartProfi
       });
     }
     counts[state]! += 1;
-    if (state === VALUE_STATE.below && values[row]! > 0) limits.add(values[row]!);
+    const value = values[row]!;
+    if (state === VALUE_STATE.below && value > 0 && value < Infinity) limits.add(value);
   }
   const [nMeasured = 0, nBelow = 0, nAbove = 0, nMissing = 0, nNotAnalysed = 0] = counts;
   return {

@@ -116,7 +116,8 @@ function replacementNotes(nUnknown: number, nClipped: number, smallest: number):
  * becomes "below `limit`". Use it where the limit changed between campaigns.
  *
  * @returns New values and states; nothing else changes.
- * @throws {KernelError} `shape`; `bad-parameter` for a limit that is not > 0.
+ * @throws {KernelError} `shape`; `bad-parameter` for a limit that is not > 0; `not-finite` with { row }
+ *   at an infinite value.
  */
 export function harmoniseLimit(
   values: Float64Array,
@@ -131,6 +132,10 @@ export function harmoniseLimit(
   const out = { values: values.slice(), states: states.slice(), nChanged: 0 };
   for (let row = 0; row < values.length; row++) {
     const [value, state] = [values[row]!, states[row]!];
+    if (Math.abs(value) === Infinity) {
+      const message = `expected values or NaN, found ${value} at row ${row}`;
+      throw new KernelError('not-finite', message, { row });
+    }
     const isUnder =
       state <= VALUE_STATE.below &&
       (value < limit || (state === VALUE_STATE.below && !isLimit(value)));

@@ -69,7 +69,8 @@ export interface PartToScreen {
  * missing share, precision and digestion.
  *
  * @returns One decision per analyte, in order.
- * @throws {KernelError} `too-few-parts` when fewer than three analytes are given.
+ * @throws {KernelError} `too-few-parts` when fewer than three analytes are given; `bad-parameter` at an
+ *   error of duplicates that is none.
  * @see Martin-Fernandez, Barcelo-Vidal & Pawlowsky-Glahn (2003), Math. Geol. 35 (small shares).
  */
 export function screenParts(
@@ -79,6 +80,11 @@ export function screenParts(
   if (parts.length < 3) {
     const message = `expected at least 3 analytes, found ${parts.length}`;
     throw new KernelError('too-few-parts', message, { found: parts.length });
+  }
+  for (const { element, cvOfDuplicates = null } of parts) {
+    if (cvOfDuplicates === null || (cvOfDuplicates >= 0 && cvOfDuplicates < Infinity)) continue;
+    const message = `expected an error of duplicates >= 0 of ${element}, found ${cvOfDuplicates}`;
+    throw new KernelError('bad-parameter', message);
   }
   return parts.map((part) => screenPart(part, limits));
 }

@@ -31,8 +31,19 @@ export function variation(parts: Float64Array, nCols: number): Variation {
  * T_ij = S_ii + S_jj - 2 S_ij.
  *
  * @param covariance Row-major (nCols, nCols), symmetric.
+ * @throws {KernelError} `shape`; `not-finite` with { row, col }.
  */
 export function variationOfCovariance(covariance: Float64Array, nCols: number): Variation {
+  if (!(nCols >= 1) || covariance.length !== nCols * nCols) {
+    const message = `expected ${nCols} x ${nCols} covariances, found ${covariance.length}`;
+    throw new KernelError('shape', message);
+  }
+  const bad = covariance.findIndex((value) => !Number.isFinite(value));
+  if (bad >= 0) {
+    const [row, col] = [Math.floor(bad / nCols), bad % nCols];
+    const message = `expected finite covariances, found ${covariance[bad]} in row ${row}, column ${col}`;
+    throw new KernelError('not-finite', message, { row, col });
+  }
   const matrix = new Float64Array(nCols * nCols);
   let sum = 0;
   for (let i = 0; i < nCols; i++) {
