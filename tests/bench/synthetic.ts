@@ -13,10 +13,10 @@ export function lognormalParts(nRows: number, nParts: number): Float64Array[] {
   });
 }
 
-/** `k` round clouds that touch, as scores of rocks do; shape (nColumns, nRows). */
+/** `k` round clouds of spread 1 that overlap, as scores of rocks do; shape (nColumns, nRows). */
 export function clouds(nRows: number, nColumns: number, k: number): Float64Array[] {
   const random = seededRandom(11);
-  const centres = Array.from({ length: k }, () => Array.from({ length: nColumns }, () => 4 * random.normal()));
+  const centres = Array.from({ length: k }, () => Array.from({ length: nColumns }, () => 1.2 * random.normal()));
   const columns = Array.from({ length: nColumns }, () => new Float64Array(new SharedArrayBuffer(8 * nRows)));
   for (let row = 0; row < nRows; row++) {
     const centre = centres[random.below(k)] ?? [];

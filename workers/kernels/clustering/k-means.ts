@@ -53,11 +53,14 @@ export interface KMeansResult {
   notes: string[];
 }
 
-/** Starts are compared after one iteration on this many rows of the sample ... */
-const HEAT_ROWS = 3000;
-/** ... and at least this many of them go on to rest on all of it, more when the sample is small. */
+/** Starts are compared after some iterations on this many rows of the sample ... */
+const HEAT = { rows: 3000, iterations: 4 };
+/** ... at least this many of them run on all of it, more when the sample is small ... */
 const FINALISTS = 5;
 const FINALIST_ROWS = 50_000;
+const RUN_ITERATIONS = 12;
+/** ... and the best share of those goes on to rest. */
+const LAST_SHARE = 0.4;
 /** Passes of single-row exchanges over the sample at most. */
 const EXCHANGE_PASSES = 20;
 /** How much coarser than the final tolerance a restart may stop (squared distances). */
@@ -142,10 +145,12 @@ function wholeNumber(name: string, value: number, from: number, to: number): voi
 /** Mean variance of the p columns. */
 function meanVariance(points: Float64Array, p: number): number {
   const n = points.length / p;
-  const mean = new Float64Array(p);
-  for (let i = 0; i < points.length; i++) mean[i % p]! += points[i]! / n;
   let squares = 0;
-  for (let i = 0; i < points.length; i++) squares += (points[i]! - mean[i % p]!) ** 2;
+  for (let j = 0; j < p; j++) {
+    let mean = 0;
+    for (let at = j; at < points.length; at += p) mean += points[at]! / n;
+    for (let at = j; at < points.length; at += p) squares += (points[at]! - mean) ** 2;
+  }
   return squares / (n * p);
 }
 
@@ -162,40 +167,42 @@ function sampleOf(
   };
 }
 
-/** Restarts compared on a few rows of the sample, then the best few brought to rest on all of it. */
+/** Restarts compared on a few rows of the sample, then fewer and fewer on all of it, the last to rest. */
 function bestSampleCentres(plan: Plan): Float64Array {
   const { packed, k, seed, restarts, maxIterations, minMove, onProgress } = plan;
   const p = packed.p;
   const sample = sampleOf(plan, Math.max(plan.sampleSize, k));
-  const heatRows = sampleOf(plan, Math.min(plan.sampleSize, Math.max(HEAT_ROWS, 30 * k)));
+  const heatRows = sampleOf(plan, Math.min(plan.sampleSize, Math.max(HEAT.rows, 30 * k)));
+  const run = (rows: typeof sample, centres: Float64Array, most: number): LloydResult =>
+    lloyd({ ...rows, p, centres, maxIterations: Math.min(maxIterations, most), minMove });
   const tried: LloydResult[] = [];
   const minMoveSquared = START_LOOSENESS * minMove * minMove;
-  for (const start of kMeansStarts({
-    points: sample.points,
-    p,
-    k,
-    seed,
-    restarts,
-    minMoveSquared,
-  })) {
-    tried.push(lloyd({ ...heatRows, p, centres: start, maxIterations: 1, minMove }));
+  for (const start of kMeansStarts({ points: sample.points, p, k, seed, restarts, minMoveSquared })) {
+    tried.push(run(heatRows, start, HEAT.iterations));
     onProgress((0.4 * tried.length) / restarts);
   }
   const nFinalists = Math.max(FINALISTS, Math.floor(FINALIST_ROWS / (sample.points.length / p)));
-  const finalists = tried.sort((a, b) => a.inertia - b.inertia).slice(0, nFinalists);
-  let best: Pick<LloydResult, 'inertia' | 'centres'> = {
-    inertia: Infinity,
-    centres: new Float64Array(0),
-  };
-  for (const [done, heat] of finalists.entries()) {
-    const rested = lloyd({ ...sample, p, centres: heat.centres, maxIterations, minMove });
-    const gained = exchangeRows({ ...sample, ...rested, p, maxPasses: EXCHANGE_PASSES });
-    if (rested.inertia - gained < best.inertia)
-      best = { inertia: rested.inertia - gained, centres: rested.centres };
-    onProgress(0.4 + (0.1 * (done + 1)) / finalists.length);
-  }
-  return best.centres;
+  const finalists = tried.sort(byInertia).slice(0, nFinalists);
+  const runs = finalists.map(({ centres }, done) => {
+    onProgress(0.4 + (0.05 * done) / finalists.length);
+    return run(sample, centres, RUN_ITERATIONS);
+  });
+  const last = distinct(runs.sort(byInertia)).slice(0, Math.ceil(nFinalists * LAST_SHARE));
+  const rested = last.map((finalist, done) => {
+    onProgress(0.45 + (0.05 * done) / last.length);
+    const result = run(sample, finalist.centres, maxIterations);
+    const gained = exchangeRows({ ...sample, ...result, p, maxPasses: EXCHANGE_PASSES });
+    return { centres: result.centres, inertia: result.inertia - gained };
+  });
+  return rested.sort(byInertia)[0]!.centres;
 }
+
+const byInertia = (a: { inertia: number }, b: { inertia: number }): number => a.inertia - b.inertia;
+
+/** Without those that came to rest where the one before them did. */
+const distinct = (sorted: readonly LloydResult[]): LloydResult[] =>
+  sorted.filter(({ inertia }, i) => i === 0 || inertia > sorted[i - 1]!.inertia * (1 + 1e-9));
+
 
 /** Lloyd on samples of growing size, at last on all rows. */
 function polish(plan: Plan, start: Float64Array): LloydResult {

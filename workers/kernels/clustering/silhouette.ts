@@ -40,8 +40,12 @@ export function silhouette(
   labels: Labels,
   options: SilhouetteOptions = {},
 ): Silhouette {
+  return silhouetteOf(groupedPoints(columns, labels), options);
+}
+
+/** {@link silhouette} of rows already gathered by group. */
+export function silhouetteOf(all: GroupedPoints, options: SilhouetteOptions = {}): Silhouette {
   const { sampleSize = 3000, seed = 1, onProgress } = options;
-  const all = groupedPoints(columns, labels);
   const sampled = all.n > sampleSize;
   const used = sampled ? drawn(all, sampleSize, seed) : all;
   const sums = distanceSums(used, onProgress);

@@ -1,7 +1,8 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import { groupedPoints } from './group-moments.ts';
 import { kMeans, type KMeansInput } from './k-means.ts';
-import { silhouette } from './silhouette.ts';
-import { groupValidity } from './validity.ts';
+import { silhouetteOf } from './silhouette.ts';
+import { validityOf } from './validity.ts';
 
 /** Input of `sweepGroups`: that of `kMeans` with a range of k. */
 export interface SweepInput extends Omit<KMeansInput, 'k'> {
@@ -71,14 +72,9 @@ export function sweepGroups({
       k,
       onProgress: (share) => onProgress?.(done + (0.8 * share) / span),
     });
-    const widths = silhouette(input.columns, labels, {
-      sampleSize: silhouetteRows,
-      seed: input.seed,
-    });
-    const { simplifiedSilhouette, calinskiHarabasz, daviesBouldin } = groupValidity(
-      input.columns,
-      labels,
-    );
+    const grouped = groupedPoints(input.columns, labels);
+    const widths = silhouetteOf(grouped, { sampleSize: silhouetteRows, seed: input.seed });
+    const { simplifiedSilhouette, calinskiHarabasz, daviesBouldin } = validityOf(grouped);
     rows.push({
       k,
       inertia,

@@ -26,7 +26,11 @@ export interface GroupValidity {
  * @see Caliński & Harabasz (1974), Commun. Stat. 3; Davies & Bouldin (1979), IEEE PAMI 1 (from memory).
  */
 export function groupValidity(columns: readonly Float64Array[], labels: Labels): GroupValidity {
-  const grouped = groupedPoints(columns, labels);
+  return validityOf(groupedPoints(columns, labels));
+}
+
+/** {@link groupValidity} of rows already gathered by group. */
+export function validityOf(grouped: GroupedPoints): GroupValidity {
   const { n, k } = grouped;
   const { within, between } = sumsOfSquares(grouped);
   const severalGroups = k > 1;
