@@ -2,8 +2,17 @@ import { KernelError } from './kernel-error.ts';
 
 const SQRT_2PI = Math.sqrt(2 * Math.PI);
 
-/** Density of the standard normal. */
+function requireNumber(z: number): void {
+  if (Number.isNaN(z)) throw new KernelError('not-finite', 'expected a normal score, found NaN');
+}
+
+/**
+ * Density of the standard normal; 0 at the infinities.
+ *
+ * @throws {KernelError} `not-finite` at NaN.
+ */
 export function normalDensity(z: number): number {
+  requireNumber(z);
   return Math.exp(-0.5 * z * z) / SQRT_2PI;
 }
 
@@ -28,14 +37,25 @@ function erfcPositive(x: number): number {
   return Math.exp(-x * x) / (fraction * Math.sqrt(Math.PI));
 }
 
-/** Distribution function of the standard normal, accurate in both tails. */
+/**
+ * Distribution function of the standard normal, accurate in both tails; 0 and 1 at the infinities.
+ *
+ * @throws {KernelError} `not-finite` at NaN.
+ */
 export function normalCdf(z: number): number {
+  requireNumber(z);
   const tail = 0.5 * erfcPositive(Math.abs(z) / Math.SQRT2);
   return z <= 0 ? tail : 1 - tail;
 }
 
-/** ln of the normal distribution function, finite far into the lower tail. */
+/**
+ * ln of the normal distribution function, finite far into the lower tail, down to negative infinity,
+ * whose own it is.
+ *
+ * @throws {KernelError} `not-finite` at NaN.
+ */
 export function logNormalCdf(z: number): number {
+  requireNumber(z);
   if (z > -30) return Math.log(normalCdf(z));
   const z2 = z * z;
   return -0.5 * z2 - Math.log(-z * SQRT_2PI) + Math.log1p(-1 / z2 + 3 / (z2 * z2));

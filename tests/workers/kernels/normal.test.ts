@@ -65,3 +65,13 @@ describe('standard normal', () => {
     }
   });
 });
+
+it('takes the infinities to their limits and refuses NaN; -0 is 0', () => {
+  expect([-Infinity, Infinity].map(normalDensity)).toEqual([0, 0]);
+  expect([-Infinity, -0, Infinity].map(normalCdf)).toEqual([0, 0.5, 1]);
+  expect([-Infinity, Infinity].map(logNormalCdf)).toEqual([-Infinity, 0]);
+  expect([-0, 1].map(normalQuantile)).toEqual([-Infinity, Infinity]);
+  for (const of of [normalDensity, normalCdf, logNormalCdf])
+    expect(() => of(NaN)).toThrow(expect.objectContaining({ code: 'not-finite' }));
+  expect(() => normalQuantile(NaN)).toThrow(expect.objectContaining({ code: 'bad-parameter' }));
+});
