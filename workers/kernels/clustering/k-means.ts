@@ -1,8 +1,9 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import { copyInto, withLab, type Lab } from '#kernels/dense/lab.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { exchangeRows } from './exchange.ts';
 import { drawRows, kMeansStarts } from './k-means-starts.ts';
-import { lloyd, type LloydResult } from './lloyd.ts';
+import { groupBytes, lloyd, lloydOf, type LloydResult } from './lloyd.ts';
 import {
   hasDistinctRows,
   packedWeights,
@@ -11,6 +12,7 @@ import {
   type OnProgress,
   type PackedPoints,
 } from './points.ts';
+import { evenStride, rowTableBytes, unpadded } from './row-table.ts';
 
 /** Input of `kMeans`. */
 export interface KMeansInput {
@@ -68,7 +70,11 @@ const START_LOOSENESS = 100;
 /** Growth from one sample to the next on the way to all rows. */
 const SAMPLE_GROWTH = 10;
 
+/** Most groups that can be asked for. */
+const MOST_GROUPS = 250;
+
 interface Plan extends Required<Omit<KMeansInput, 'columns' | 'weights' | 'onProgress'>> {
+  /** Rows padded to an even number of coordinates. */
   packed: PackedPoints;
   weights: Float64Array | null;
   /** Move of a centre that counts as none. */
@@ -86,13 +92,16 @@ interface Plan extends Required<Omit<KMeansInput, 'columns' | 'weights' | 'onPro
  * @see Lloyd (1982); Arthur & Vassilvitskii (2007) (from memory).
  */
 export function kMeans(input: KMeansInput): KMeansResult {
-  const plan = planOf(input);
-  const centres = bestSampleCentres(plan);
-  const final = polish(plan, centres);
-  return numbered(plan, final, input.columns[0]?.length ?? 0);
+  const nRows = input.columns[0]?.length ?? 0;
+  const p = input.columns.length;
+  return withLab(rowTableBytes(nRows, p) + groupBytes(nRows, Math.min(input.k, MOST_GROUPS), p), (lab) => {
+    const plan = planOf(lab, input);
+    const centres = bestSampleCentres(plan);
+    return numbered(plan, polish(lab, plan, centres), nRows, p);
+  });
 }
 
-function planOf(input: KMeansInput): Plan {
+function planOf(lab: Lab, input: KMeansInput): Plan {
   const {
     k,
     seed,
@@ -101,13 +110,15 @@ function planOf(input: KMeansInput): Plan {
     maxIterations = 300,
     tolerance = 1e-6,
   } = input;
-  wholeNumber('k', k, 1, 250);
+  wholeNumber('k', k, 1, MOST_GROUPS);
   wholeNumber('restarts', restarts, 1, 1000);
   wholeNumber('sampleSize', sampleSize, 1, Infinity);
   wholeNumber('maxIterations', maxIterations, 1, Infinity);
   if (!(tolerance >= 0))
     throw new KernelError('bad-parameter', `expected tolerance >= 0, found ${tolerance}`);
-  const packed = packPoints(input.columns);
+  const stride = evenStride(input.columns.length);
+  const room = lab.f64((input.columns[0]?.length ?? 0) * stride);
+  const packed = packPoints(input.columns, { stride, room });
   if (!hasDistinctRows(packed, k)) {
     throw new KernelError(
       'too-few-rows',
@@ -117,7 +128,7 @@ function planOf(input: KMeansInput): Plan {
   }
   const weights = packedWeights(input.weights, packed, input.columns[0]?.length ?? 0);
   const spread = sampleOf({ packed, weights, seed }, sampleSize).points;
-  const minMove = Math.sqrt(tolerance * meanVariance(spread, packed.p));
+  const minMove = Math.sqrt((tolerance * totalVariance(spread, stride)) / input.columns.length);
   return {
     k,
     seed,
@@ -142,8 +153,8 @@ function wholeNumber(name: string, value: number, from: number, to: number): voi
   }
 }
 
-/** Mean variance of the p columns. */
-function meanVariance(points: Float64Array, p: number): number {
+/** Sum of the variances of the columns. */
+function totalVariance(points: Float64Array, p: number): number {
   const n = points.length / p;
   let squares = 0;
   for (let j = 0; j < p; j++) {
@@ -151,7 +162,7 @@ function meanVariance(points: Float64Array, p: number): number {
     for (let at = j; at < points.length; at += p) mean += points[at]! / n;
     for (let at = j; at < points.length; at += p) squares += (points[at]! - mean) ** 2;
   }
-  return squares / (n * p);
+  return squares / n;
 }
 
 /** A seeded sample of rows with their weights; everything when it fits. */
@@ -205,33 +216,27 @@ const distinct = (sorted: readonly LloydResult[]): LloydResult[] =>
 
 
 /** Lloyd on samples of growing size, at last on all rows. */
-function polish(plan: Plan, start: Float64Array): LloydResult {
-  const { packed, maxIterations, minMove, onProgress } = plan;
-  const p = packed.p;
+function polish(lab: Lab, plan: Plan, start: Float64Array): LloydResult {
+  const { packed, weights, maxIterations, minMove, onProgress } = plan;
+  const { points, n, p } = packed;
   let centres = start;
-  for (let size = plan.sampleSize * SAMPLE_GROWTH; size < packed.n; size *= SAMPLE_GROWTH) {
+  for (let size = plan.sampleSize * SAMPLE_GROWTH; size < n; size *= SAMPLE_GROWTH) {
     centres = lloyd({ ...sampleOf(plan, size), p, centres, maxIterations, minMove }).centres;
   }
+  const rows = { points, n, stride: p, weights: weights && copyInto(lab, weights) };
   const report = (share: number) => onProgress(0.5 + 0.5 * share);
-  return lloyd({
-    points: packed.points,
-    p,
-    centres,
-    weights: plan.weights,
-    maxIterations,
-    minMove,
-    onProgress: report,
-  });
+  return lloydOf(lab, rows, { centres, maxIterations, minMove, onProgress: report });
 }
 
 /** Labels 1..K by descending weight, ties by first occurrence; spread over all input rows. */
 function numbered(
   plan: Plan,
-  { labels, centres, inertia, iterations, converged }: LloydResult,
+  { labels, centres: padded, inertia, iterations, converged }: LloydResult,
   nRows: number,
+  p: number,
 ): KMeansResult {
   const { packed, weights, k } = plan;
-  const p = packed.p;
+  const centres = unpadded(padded, p);
   const size = new Array<number>(k).fill(0);
   const weight = new Array<number>(k).fill(0);
   const first = new Array<number>(k).fill(Infinity);

@@ -1,4 +1,4 @@
-import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
+import { copyInto, f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
 import { NO_LABEL, type DenseMath, type RowGroups, type RowTable } from '#kernels/dense/dense-math.ts';
 import { squaredDistance } from '#kernels/dense/squared-distance.ts';
 import { evenStride, rowTableBytes, rowTableOf, unpadded } from './row-table.ts';
@@ -51,58 +51,75 @@ interface State {
  *   this kind (both from memory).
  */
 export function lloyd(input: LloydInput): LloydResult {
-  const { points, p, centres, maxIterations, minMove, onProgress } = input;
+  const { points, p, centres, weights } = input;
   const n = points.length / p;
-  const k = centres.length / p;
-  return withLab(rowTableBytes(n, p) + groupBytes(n, k, evenStride(p)), (lab) => {
-    const state = startState(lab, input);
-    const { math, rows, groups, slack } = state;
-    let converged = false;
-    let iterations = 0;
-    while (!converged && iterations < maxIterations) {
-      const changed = math.assign(rows, groups, slack);
-      const reseeded = reseedEmpty(state);
-      const largestMove = moveCentres(state);
-      iterations += 1;
-      converged = !reseeded && (changed === 0 || largestMove <= minMove);
-      onProgress?.(iterations / maxIterations);
-    }
-    math.assign(rows, groups, slack);
-    reseedEmpty(state);
-    const { inertia, moved } = settle(state);
-    return {
-      labels: groups.labels.slice(),
-      centres: unpadded(groups.centres, p),
-      lead: groups.lead.map((value, i) => value - slack[groups.labels[i]!]! - 2 * moved),
-      inertia,
-      iterations,
-      converged,
-    };
+  return withLab(rowTableBytes(n, p) + groupBytes(n, centres.length / p, p), (lab) => {
+    const result = lloydOf(lab, rowTableOf(lab, points, p, weights), {
+      ...input,
+      centres: rowTableOf(lab, centres, p, null).points,
+    });
+    return { ...result, centres: unpadded(result.centres, p) };
   });
 }
 
-/** Bytes of the groups of {@link startState}. */
-const groupBytes = (n: number, k: number, stride: number): number =>
-  f64Bytes(n, n / 8, k * stride, k * stride, k, k, k);
-
-function startState(lab: Lab, { points, p, centres, weights }: LloydInput): State {
-  const rows = rowTableOf(lab, points, p, weights);
-  const { n, stride } = rows;
-  const k = centres.length / p;
+/** {@link lloyd} of rows that are in a lab, with room for `groupBytes` more; centres have their stride. */
+export function lloydOf(
+  lab: Lab,
+  rows: RowTable,
+  { centres, maxIterations, minMove, onProgress }: Pick<LloydInput, 'centres' | 'maxIterations' | 'minMove' | 'onProgress'>,
+): LloydResult {
+  const { math } = lab;
+  const state = startState(lab, rows, centres);
+  const { groups, slack } = state;
+  let converged = false;
+  let iterations = 0;
+  while (!converged && iterations < maxIterations) {
+    const changed = math.assign(rows, groups, slack);
+    const reseeded = reseedEmpty(state);
+    const largestMove = moveCentres(state);
+    iterations += 1;
+    converged = !reseeded && (changed === 0 || largestMove <= minMove);
+    onProgress?.(iterations / maxIterations);
+  }
+  math.assign(rows, groups, slack);
+  reseedEmpty(state);
+  const { inertia, moved } = settle(state);
   return {
-    math: lab.math,
-    rows,
-    groups: {
-      k,
-      centres: rowTableOf(lab, centres, p, null).points,
-      labels: lab.u8(n).fill(NO_LABEL),
-      lead: lab.f64(n).fill(-Infinity),
-      sums: lab.f64(k * stride),
-      mass: lab.f64(k),
-      counts: lab.u32(k),
-    },
-    slack: lab.f64(k),
+    labels: groups.labels.slice(),
+    centres: groups.centres.slice(),
+    lead: leads(state, moved),
+    inertia,
+    iterations,
+    converged,
   };
+}
+
+/** Bytes of a lab for k groups of n rows of p coordinates. */
+export function groupBytes(n: number, k: number, p: number): number {
+  const centreValues = k * evenStride(p);
+  return f64Bytes(n, n / 8, 2 * centreValues, centreValues, k, k, k);
+}
+
+function startState(lab: Lab, rows: RowTable, centres: Float64Array): State {
+  const { n, stride } = rows;
+  const k = centres.length / stride;
+  const groups: RowGroups = {
+    k,
+    centres: copyInto(lab, centres),
+    labels: lab.u8(n).fill(NO_LABEL),
+    lead: lab.f64(n).fill(-Infinity),
+    sums: lab.f64(centres.length),
+    mass: lab.f64(k),
+    counts: lab.u32(k),
+  };
+  return { math: lab.math, rows, groups, slack: lab.f64(k) };
+}
+
+/** Leads of the rows after the last moves. */
+function leads({ groups: { lead, labels }, slack }: State, moved: number): Float64Array {
+  const out = new Float64Array(lead.length);
+  for (let i = 0; i < out.length; i++) out[i] = lead[i]! - slack[labels[i]!]! - 2 * moved;
+  return out;
 }
 
 /** Moves row i from its group to another. */

@@ -1,4 +1,4 @@
-import { f64Bytes, type Lab } from '#kernels/dense/lab.ts';
+import { copyInto, f64Bytes, type Lab } from '#kernels/dense/lab.ts';
 import type { MixtureRoom, MixtureTables } from '#kernels/dense/dense-math.ts';
 import { isAxial, type MixtureDensity } from './mixture-model.ts';
 import { packedSize } from './packed-cholesky.ts';
@@ -30,17 +30,12 @@ export function mixtureBlock(lab: Lab, k: number, p: number): MixtureRoom {
 
 /** A density copied into a lab. */
 export function densityTables(lab: Lab, { model, whiteners, logScales }: MixtureDensity): MixtureTables {
-  const copied = (values: Float64Array): Float64Array => {
-    const copy = lab.f64(values.length);
-    copy.set(values);
-    return copy;
-  };
   return {
     k: model.k,
     isAxial: isAxial(model.family),
-    means: copied(model.means),
-    whiteners: copied(whiteners),
-    logScales: copied(logScales),
+    means: copyInto(lab, model.means),
+    whiteners: copyInto(lab, whiteners),
+    logScales: copyInto(lab, logScales),
   };
 }
 

@@ -15,6 +15,14 @@ export interface PackedPoints {
 /** Progress of a long loop, 0 to 1; may throw to cancel. */
 export type OnProgress = (share: number) => void;
 
+/** Where rows are packed. */
+export interface PackingOptions {
+  /** Coordinates per row once padded with zeros, at least as many as columns. */
+  stride?: number;
+  /** Room for all rows, zero where rows are padded. */
+  room?: Float64Array;
+}
+
 /**
  * Packs columns into rows. A row with a missing coordinate (NaN) is left out and counted; an
  * infinite one, or one beyond 1e150, is refused.
@@ -23,10 +31,9 @@ export type OnProgress = (share: number) => void;
  * @throws {KernelError} `too-few-parts` without columns; `shape` when lengths differ; `not-finite`
  *   with { row, col }; `too-few-rows` when no row is complete.
  */
-export function packPoints(columns: readonly Float64Array[]): PackedPoints {
-  const p = columns.length;
+export function packPoints(columns: readonly Float64Array[], options: PackingOptions = {}): PackedPoints {
   const nRows = columns[0]?.length ?? 0;
-  if (p === 0) throw new KernelError('too-few-parts', 'expected at least one column, found none');
+  if (columns.length === 0) throw new KernelError('too-few-parts', 'expected at least one column, found none');
   for (const [col, column] of columns.entries()) {
     if (column.length !== nRows) {
       throw new KernelError(
@@ -36,16 +43,16 @@ export function packPoints(columns: readonly Float64Array[]): PackedPoints {
       );
     }
   }
-  const whole = packAll(columns, nRows);
-  if (whole && nRows > 0) return { points: whole, n: nRows, p, rowOf: null, nDropped: 0 };
+  const p = options.stride ?? columns.length;
+  const points = options.room ?? new Float64Array(nRows * p);
+  if (nRows > 0 && packAll(columns, points, p)) return { points, n: nRows, p, rowOf: null, nDropped: 0 };
   const rowOf = completeRows(columns, nRows);
   const n = rowOf.length;
-  if (n === 0) throw new KernelError('too-few-rows', `none of ${nRows} rows is complete in all ${p} columns`, { nRows });
-  const points = new Float64Array(n * p);
+  if (n === 0) throw new KernelError('too-few-rows', `none of ${nRows} rows is complete in all ${columns.length} columns`, { nRows });
   for (const [col, column] of columns.entries()) {
     for (let i = 0; i < n; i++) points[i * p + col] = column[rowOf[i]!]!;
   }
-  return { points, n, p, rowOf, nDropped: nRows - n };
+  return { points: points.subarray(0, n * p), n, p, rowOf, nDropped: nRows - n };
 }
 
 /** Rows packed at a time, so that a block of every column stays in cache. */
@@ -53,21 +60,22 @@ const BLOCK = 2048;
 /** Larger coordinates cannot be squared and summed. */
 const LARGEST = 1e150;
 
-/** All rows packed; null as soon as a coordinate is missing or too large. */
-function packAll(columns: readonly Float64Array[], nRows: number): Float64Array | null {
-  const p = columns.length;
-  const points = new Float64Array(nRows * p);
+/** Packs all rows; false as soon as a coordinate is missing or too large. */
+function packAll(columns: readonly Float64Array[], points: Float64Array, stride: number): boolean {
+  const nRows = columns[0]?.length ?? 0;
   for (let start = 0; start < nRows; start += BLOCK) {
     const end = Math.min(nRows, start + BLOCK);
-    for (let col = 0; col < p; col++) if (!copyBlock(columns[col]!, points, col, p, start, end)) return null;
+    for (const [col, column] of columns.entries()) {
+      if (!copyBlock(column, points, col, stride, start, end)) return false;
+    }
   }
-  return points;
+  return true;
 }
 
 /** Copies part of a column to its places in the rows; false when it holds an unusable value. */
-function copyBlock(column: Float64Array, points: Float64Array, col: number, p: number, start: number, end: number): boolean {
+function copyBlock(column: Float64Array, points: Float64Array, col: number, stride: number, start: number, end: number): boolean {
   let usable = true;
-  for (let i = start, to = start * p + col; i < end; i++, to += p) {
+  for (let i = start, to = start * stride + col; i < end; i++, to += stride) {
     const value = column[i]!;
     points[to] = value;
     usable &&= Math.abs(value) <= LARGEST;

@@ -1,4 +1,4 @@
-import { f64Bytes, type Lab } from '#kernels/dense/lab.ts';
+import { copyInto, f64Bytes, type Lab } from '#kernels/dense/lab.ts';
 import type { RowTable } from '#kernels/dense/dense-math.ts';
 
 /** Coordinates per row once padded to an even number with a zero, which changes no distance. */
@@ -14,11 +14,7 @@ export function rowTableOf(lab: Lab, points: Float64Array, p: number, weights: F
   const padded = lab.f64(n * stride);
   if (stride === p) padded.set(points);
   else for (let i = 0; i < n; i++) for (let j = 0; j < p; j++) padded[i * stride + j] = points[i * p + j]!;
-  const table: RowTable = { points: padded, n, stride, weights: null };
-  if (!weights) return table;
-  const kept = lab.f64(n);
-  kept.set(weights);
-  return { ...table, weights: kept };
+  return { points: padded, n, stride, weights: weights && copyInto(lab, weights) };
 }
 
 /** Padded rows as rows of p coordinates. */

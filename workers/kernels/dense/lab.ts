@@ -31,6 +31,13 @@ const KEPT_BYTES = 2 ** 26;
 export const f64Bytes = (...lengths: number[]): number =>
   lengths.reduce((sum, length) => sum + 8 * length + ALIGNMENT, 0);
 
+/** A copy of values in a lab. */
+export function copyInto(lab: Lab, values: Float64Array): Float64Array {
+  const copy = lab.f64(values.length);
+  copy.set(values);
+  return copy;
+}
+
 const module = WebAssembly.validate(SIMD_BINARY) ? new WebAssembly.Module(SIMD_BINARY) : null;
 const spare: OwnedLab[] = [];
 
