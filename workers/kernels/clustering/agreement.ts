@@ -20,13 +20,19 @@ export interface LabelCrosstab {
  *
  * @param a Labels 1..K per row, 0 = unassigned; `b` likewise for the same rows.
  * @param weights Optional interval lengths (m); without them every row counts 1.
- * @throws {KernelError} `shape` when lengths differ; `bad-parameter` for a label out of range.
+ * @throws {KernelError} `shape` when lengths differ; `bad-parameter` for a label out of range, with
+ *   { row } at a weight that is negative or not finite.
  */
 export function crosstabLabels(a: Labels, b: Labels, weights?: Float64Array): LabelCrosstab {
   if (a.length !== b.length)
     throw new KernelError('shape', `${a.length} labels against ${b.length}`);
   if (weights && weights.length !== a.length)
     throw new KernelError('shape', `${weights.length} weights for ${a.length} rows`);
+  const bad = weights?.findIndex((weight) => !(weight >= 0 && weight < Infinity)) ?? -1;
+  if (bad >= 0) {
+    const message = `expected a weight >= 0, found ${weights?.[bad]} in row ${bad}`;
+    throw new KernelError('bad-parameter', message, { row: bad });
+  }
   const inA = compactLabels(a);
   const inB = compactLabels(b);
   const nCols = inB.labelOf.length;

@@ -23,8 +23,17 @@ export interface PartUnderError {
 /** Largest sd of ln ppm: a coefficient of variation of 1, √ln 2. */
 const LARGEST_LOG_SD = Math.sqrt(Math.LN2);
 
-/** Standard deviation of ln x that gives x the standard deviation s0 + k x, and whether it was capped. */
+/**
+ * Standard deviation of ln x that gives x the standard deviation s0 + k x, and whether it was capped.
+ *
+ * @param x ppm, > 0.
+ * @throws {KernelError} `not-positive`; `bad-parameter` unless s0 and k are finite and >= 0.
+ */
 export function logErrorSd(x: number, { s0, k }: AssayError): { sd: number; capped: boolean } {
+  if (!(x > 0 && x < Infinity))
+    throw new KernelError('not-positive', `expected ppm > 0, found ${x}`);
+  if (!(s0 >= 0 && s0 < Infinity && k >= 0 && k < Infinity))
+    throw new KernelError('bad-parameter', `expected s0 and k >= 0, found ${s0} and ${k}`);
   const sd = Math.sqrt(Math.log1p(((s0 + k * x) / x) ** 2));
   return sd > LARGEST_LOG_SD * (1 + 1e-12)
     ? { sd: LARGEST_LOG_SD, capped: true }

@@ -34,7 +34,8 @@ interface Stretch {
  * recursion in each sequence, β' = β exp(-gap / fade). With β = 0 every row has its likeliest group.
  *
  * @returns 1..K per row (0 where the membership is missing) and the maximum, summed over sequences.
- * @throws {KernelError} `shape`; `bad-parameter` for β, the fade or a probability.
+ * @throws {KernelError} `shape`; `bad-parameter` for β, the fade, a probability, a depth or a
+ *   transition.
  * @see Viterbi (1967), IEEE Trans. Inf. Theory 13; Rabiner (1989), Proc. IEEE 77; Besag (1986), JRSS B
  *   48 (from memory).
  */
@@ -133,6 +134,15 @@ function prepared(input: ChainInput) {
       );
     return Math.log(Math.max(p, LEAST));
   });
+  const bad = fromM.findIndex((from, row) => !Number.isFinite(from) || !Number.isFinite(toM[row]));
+  if (bad >= 0) {
+    const message = `expected depths, found ${fromM[bad]} to ${toM[bad]} m in row ${bad}`;
+    throw new KernelError('bad-parameter', message, { row: bad });
+  }
+  if (logTransition && !logTransition.every(Number.isFinite)) {
+    const message = `expected finite ln probabilities of steps, found ${logTransition.join(', ')}`;
+    throw new KernelError('bad-parameter', message);
+  }
   // Rewards fade over core that was not sampled; touching intervals keep them whole.
   const fade = fromM.map((from, row) =>
     row === 0 ? 1 : Math.exp(-Math.max(0, from - toM[row - 1]!) / fadeM),
@@ -162,11 +172,14 @@ function stretchesOf(membership: Float64Array, k: number, sequence: ArrayLike<nu
  * ln probabilities of a step from group to group, each count raised by 1.
  *
  * @param counts Row-major, shape (k, k): steps down the hole (`contiguity(...).transitions`).
- * @throws {KernelError} `shape`.
+ * @throws {KernelError} `shape`; `bad-parameter` at a count that is negative or not finite.
  */
 export function logTransitions(counts: Float64Array, k: number): Float64Array {
   if (counts.length !== k * k)
     throw new KernelError('shape', `${counts.length} counts do not fill ${k} x ${k}`);
+  const bad = counts.findIndex((count) => !(count >= 0 && count < Infinity));
+  if (bad >= 0)
+    throw new KernelError('bad-parameter', `expected a count >= 0, found ${counts[bad]}`);
   return counts.map((count, at) => {
     const row = at - (at % k);
     const total = counts.subarray(row, row + k).reduce((sum, value) => sum + value + 1, 0);

@@ -130,7 +130,7 @@ function addLabelled(
   const counts = new Float64Array(k);
   for (let row = from, previous = -1; row < to; row++) {
     const group = groupOf[labels[row]!]!;
-    if (!(lengthM[row]! > 0))
+    if (!(lengthM[row]! > 0 && lengthM[row]! < Infinity))
       throw new KernelError(
         'bad-parameter',
         `expected a length > 0 m, found ${lengthM[row]} in row ${row}`,

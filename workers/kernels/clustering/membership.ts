@@ -21,7 +21,8 @@ export interface MembershipInput {
  * Variance of a coordinate within groups, pooled over groups and coordinates: W / ((n - K) p).
  *
  * @param inertia W, total squared distance to the centroids (weighted: with weights of mean 1).
- * @throws {KernelError} `too-few-rows` unless n > K.
+ * @throws {KernelError} `too-few-rows` unless n > K; `bad-parameter` at a W that is negative or not
+ *   finite.
  */
 export function withinVariance(inertia: number, n: number, k: number, p: number): number {
   if (!(n > k))
@@ -30,6 +31,8 @@ export function withinVariance(inertia: number, n: number, k: number, p: number)
       `expected more than ${k} rows for ${k} groups, found ${n}`,
       { n, k },
     );
+  if (!(inertia >= 0 && inertia < Infinity))
+    throw new KernelError('bad-parameter', `expected a total W >= 0, found ${inertia}`);
   return inertia / ((n - k) * p);
 }
 
@@ -43,20 +46,34 @@ export function withinVariance(inertia: number, n: number, k: number, p: number)
 export function ownMembership(input: MembershipInput): Float64Array {
   const { points, n, p, rowOf, centres, k, halfPrecision, nRows } = prepared(input);
   const out = new Float64Array(nRows).fill(NaN);
-  const room = rowTableBytes(BLOCK_ROWS, p) + rowTableBytes(k, p) + f64Bytes(BLOCK_ROWS, BLOCK_ROWS, BLOCK_ROWS);
+  const room =
+    rowTableBytes(BLOCK_ROWS, p) +
+    rowTableBytes(k, p) +
+    f64Bytes(BLOCK_ROWS, BLOCK_ROWS, BLOCK_ROWS);
   for (let from = 0; from < n; from += BLOCK_ROWS) {
     const block = points.subarray(from * p, Math.min(from + BLOCK_ROWS, n) * p);
     withLab(room, (lab) => {
       const rows = rowTableOf(lab, block, p, null);
       const [nearestSq, nextSq] = [lab.f64(rows.n), lab.f64(rows.n)];
-      lab.math.nearestTwo(rows, rowTableOf(lab, centres, p, null).points, k, lab.u8(rows.n), nearestSq, nextSq);
+      lab.math.nearestTwo(
+        rows,
+        rowTableOf(lab, centres, p, null).points,
+        k,
+        lab.u8(rows.n),
+        nearestSq,
+        nextSq,
+      );
       for (let i = 0; i < rows.n; i++) {
         const least = nearestSq[i]!;
         let total = 0;
-        if (k > 1 && (nextSq[i]! - least) * halfPrecision > 40) total = 1; // the rest is below 1e-17
+        if (k > 1 && (nextSq[i]! - least) * halfPrecision > 40)
+          total = 1; // the rest is below 1e-17
         else
           for (let c = 0; c < k; c++)
-            total += relativeLikelihood(squaredDistance(block, i, centres, c, p) - least, halfPrecision);
+            total += relativeLikelihood(
+              squaredDistance(block, i, centres, c, p) - least,
+              halfPrecision,
+            );
         out[rowOf ? rowOf[from + i]! : from + i] = 1 / total;
       }
     });

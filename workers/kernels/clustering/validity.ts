@@ -7,9 +7,9 @@ export interface GroupValidity {
   within: number;
   /** Squared distances of group means to the overall mean by rows, B; W + B is the total. */
   between: number;
-  /** (B / (k - 1)) / (W / (n - k)), higher is better; null with one group or n = k, infinite when W = 0. */
+  /** (B / (k - 1)) / (W / (n - k)), higher is better; null with one group, n = k or W = 0. */
   calinskiHarabasz: number | null;
-  /** Mean over groups of the worst (S_i + S_j) / d_ij, lower is better; null with one group. */
+  /** Mean over groups of the worst (S_i + S_j) / d_ij, lower is better; null with one group or equal means. */
   daviesBouldin: number | null;
   /** Silhouette with distances to group means in place of mean distances to rows; null with one group. */
   simplifiedSilhouette: number | null;
@@ -34,7 +34,8 @@ export function validityOf(grouped: GroupedPoints): GroupValidity {
   const { n, k } = grouped;
   const { within, between } = sumsOfSquares(grouped);
   const severalGroups = k > 1;
-  const calinskiHarabasz = severalGroups && n > k ? between / (k - 1) / (within / (n - k)) : null;
+  const hasRatio = severalGroups && n > k && within > 0;
+  const calinskiHarabasz = hasRatio ? between / (k - 1) / (within / (n - k)) : null;
   return {
     within,
     between,
@@ -59,7 +60,7 @@ function sumsOfSquares({ points, n, p, group, sizes, centroids }: GroupedPoints)
   return { within, between };
 }
 
-function daviesBouldin({ points, n, p, group, k, sizes, centroids }: GroupedPoints): number {
+function daviesBouldin({ points, n, p, group, k, sizes, centroids }: GroupedPoints): number | null {
   const scatter = new Float64Array(k);
   for (let i = 0; i < n; i++)
     scatter[group[i]!]! +=
@@ -76,7 +77,7 @@ function daviesBouldin({ points, n, p, group, k, sizes, centroids }: GroupedPoin
     }
     sum += worst;
   }
-  return sum / k;
+  return Number.isFinite(sum) ? sum / k : null;
 }
 
 function simplifiedSilhouette({ points, n, p, group, k, centroids }: GroupedPoints): number {

@@ -97,6 +97,19 @@ it('cross-tabulates with weights and keeps the margins', () => {
   });
 });
 
+it('has no ratio where groups have no spread or one mean', () => {
+  const spots = [Float64Array.of(0, 0, 4, 4)];
+  expect(groupValidity(spots, [1, 1, 2, 2])).toMatchObject({
+    within: 0,
+    calinskiHarabasz: null,
+    daviesBouldin: 0,
+  });
+  expect(groupValidity([Float64Array.of(-1, 1, -2, 2)], [1, 1, 2, 2])).toMatchObject({
+    calinskiHarabasz: 0,
+    daviesBouldin: null,
+  });
+});
+
 it.each([
   ['shape', () => silhouette(six, [1, 2])],
   ['shape', () => crosstabLabels([1], [1, 2])],
