@@ -5,7 +5,8 @@ import { ANY_MEMBER } from './roles.ts';
 
 /** One line of the append-only audit record. `hash` covers the entry and the hash before it. */
 export const AuditEntry = z.object({
-  id: z.number().int(),
+  /** Place in the chain of its deposit, from 1. */
+  number: z.number().int(),
   at: Instant,
   who: z.string(),
   /** Stable verb, for example `domain.created`. */

@@ -46,6 +46,13 @@ function faultIn(answer: unknown, isNaNMissing: boolean): string | null {
   return null;
 }
 
+/** True where an answer says something: a finite number stands in it. */
+function holdsNumber(answer: unknown): boolean {
+  if (typeof answer === 'number') return Number.isFinite(answer);
+  if (answer === null || typeof answer !== 'object') return false;
+  return Object.values(answer instanceof Map ? [...answer.values()] : answer).some(holdsNumber);
+}
+
 /** What is wrong with a call, or null: it answers without fault, or refuses with a reason. */
 export function faultOf(call: () => unknown, isNaNMissing: boolean): string | null {
   try {
@@ -75,7 +82,9 @@ export function testHostileInputs(cases: readonly HostileCase[]): void {
     const count = kernel.length;
     expect(count).toBeGreaterThan(0);
     const usual = (rows?: number) => Array.from({ length: count }, (_, j) => ordinary(j, rows));
-    expect(faultIn(kernel(...usual()), isNaNMissing)).toBeNull();
+    const answer = kernel(...usual());
+    expect(faultIn(answer, isNaNMissing)).toBeNull();
+    expect(answer).toSatisfy(holdsNumber);
     const faults: string[] = [];
     const tryOut = (what: string, columns: Float64Array[]) => {
       const fault = faultOf(() => kernel(...columns), isNaNMissing);

@@ -6,6 +6,7 @@ import type { JobStarted } from '#contract/jobs.ts';
 import { transact } from '#server/db/transact.ts';
 import type { Actor } from '#server/lib/actor.ts';
 import { AppError, orNotFound } from '#server/lib/errors.ts';
+import { inFigures } from '#server/lib/figures.ts';
 import type { AnalysisDeps } from '#server/modules/components/components.service.ts';
 import type { DomainsService } from '#server/modules/domains/domains.service.ts';
 import { recipeSha256 } from '#server/modules/domains/recipe.ts';
@@ -62,7 +63,7 @@ export function createCodes(deps: CodesDeps, groupings: GroupingsService, domain
         deposit_id: depositId, created_by: startedBy.id, created_at: clock().toISOString(), number, snapshot_id: snapshotId, grouping_id: groupingId, zone_run_id: zoneRunId,
         recipe: JSON.stringify(recipe), recipe_sha256: recipeHash, sha256, size_bytes: sizeBytes, file_name: `codes-${number}.csv`, result: JSON.stringify({ ...result, byCode }),
       });
-      await record.add(trx, { actor: startedBy, depositId, action: 'codes.made', subject: `code set ${id}`, sentence: `${startedBy.name} made codes ${number}: ${result.rows} rows, SHA-256 ${sha256.slice(0, 12)}…` });
+      await record.add(trx, { actor: startedBy, depositId, action: 'codes.made', subject: `code set ${id}`, sentence: `${startedBy.name} made codes ${number}: ${inFigures(result.rows)} rows, SHA-256 ${sha256.slice(0, 12)}…` });
       return { kind: 'code-set', id };
     },
   });

@@ -6,6 +6,7 @@ import type { JobStarted } from '#contract/jobs.ts';
 import type { Actor } from '#server/lib/actor.ts';
 import type { Clock } from '#server/lib/clock.ts';
 import { orNotFound } from '#server/lib/errors.ts';
+import { inFigures } from '#server/lib/figures.ts';
 import type { JobsService } from '#server/modules/jobs/jobs.service.ts';
 import type { RecordService } from '#server/modules/record/record.service.ts';
 import { tablesOf } from '#server/modules/snapshots/snapshot-tables.ts';
@@ -41,7 +42,7 @@ export function createComponents({ db, clock, jobs, record, snapshots }: Analysi
       const runId = await componentsRepository(trx).insert({
         deposit_id: depositId, created_by: startedBy.id, created_at: clock().toISOString(), suite_id: suiteId, snapshot_id: snapshotId, table_id: tableId, seed, result: JSON.stringify(result),
       });
-      const sentence = `${startedBy.name} ran components on ${result.parts.length} analytes of ${result.nFit + result.nScoredOnly} rows`;
+      const sentence = `${startedBy.name} ran components on ${result.parts.length} analytes of ${inFigures(result.nFit + result.nScoredOnly)} rows`;
       await record.add(trx, { actor: startedBy, depositId, action: 'components.run', subject: `component run ${runId}`, sentence });
       return { kind: 'component-run', id: runId };
     },

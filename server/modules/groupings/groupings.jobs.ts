@@ -1,4 +1,5 @@
 import { orNotFound } from '#server/lib/errors.ts';
+import { inFigures } from '#server/lib/figures.ts';
 import type { AnalysisDeps, ComponentsService } from '#server/modules/components/components.service.ts';
 import { tablesOf } from '#server/modules/snapshots/snapshot-tables.ts';
 import type { GroupingInput, GroupingOutput } from '#workers/tasks/grouping.ts';
@@ -49,7 +50,7 @@ export function registerGroupingJobs({ clock, jobs, record, snapshots }: Analysi
         },
         result.groups.map(({ label, intervals, metres }) => ({ label, name: `Group ${label}`, slot: label, intervals, metres, version: 1 })),
       );
-      await record.add(trx, { actor: startedBy, depositId, action: 'grouping.run', subject: `grouping ${id}`, sentence: `${startedBy.name} grouped ${result.n} rows into ${k}` });
+      await record.add(trx, { actor: startedBy, depositId, action: 'grouping.run', subject: `grouping ${id}`, sentence: `${startedBy.name} grouped ${inFigures(result.n)} rows into ${k}` });
       return { kind: 'grouping', id };
     },
   });

@@ -2,6 +2,7 @@ import { createHash } from 'node:crypto';
 import * as z from 'zod';
 import { Id } from '#contract/common.ts';
 import { AppError, orNotFound } from '#server/lib/errors.ts';
+import { inFigures } from '#server/lib/figures.ts';
 import { enqueueAssembly } from '#server/modules/snapshots/enqueue-assembly.ts';
 import type { CheckFileInput, CheckFileOutput } from '#workers/tasks/check-file.ts';
 import type { LoadFileInput, LoadFileOutput } from '#workers/tasks/load-file.ts';
@@ -62,7 +63,7 @@ export function registerIntakeJobs({ clock, jobs, record, files, uploads, revisi
         table_id: tableId, content_sha256: content, loaded_by: startedBy.id, loaded_at: clock().toISOString(),
       });
       await inside.uploads.update(trx, uploadId, { state: 'loaded', file_check: JSON.stringify(check), revision_id: revisionId });
-      const sentence = `${startedBy.name} loaded ${kind} revision ${number} from ${row.file_name}: ${rowsAdded} rows, ${check.rowsAside} set aside`;
+      const sentence = `${startedBy.name} loaded ${kind} revision ${number} from ${row.file_name}: ${inFigures(rowsAdded)} rows, ${inFigures(check.rowsAside)} set aside`;
       await record.add(trx, { actor: startedBy, depositId, action: 'revision.loaded', subject: `revision ${revisionId}`, sentence });
       return { kind: 'revision', id: revisionId };
     },

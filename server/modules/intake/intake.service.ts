@@ -9,6 +9,7 @@ import type { Actor } from '#server/lib/actor.ts';
 import type { Clock } from '#server/lib/clock.ts';
 import { toCsv } from '#server/lib/csv.ts';
 import { AppError, orNotFound } from '#server/lib/errors.ts';
+import { inFigures } from '#server/lib/figures.ts';
 import type { JobsService } from '#server/modules/jobs/jobs.service.ts';
 import type { RecordService } from '#server/modules/record/record.service.ts';
 import { enqueueAssembly } from '#server/modules/snapshots/enqueue-assembly.ts';
@@ -74,7 +75,7 @@ export function createIntake({ db, clock, compute, jobs, record, files, uploads,
         state: 'mapped', encoding: inspected.encoding, row_count: inspected.rowCount, guess: JSON.stringify(inspected.guess), header_signature: inspected.headerSignature,
         mapping: JSON.stringify(mapping), mapping_remembered: earlier ? 1 : 0, file_check: null, revision_id: null,
       });
-      await record.add(trx, { actor, depositId, action: 'upload.received', subject: `upload ${id}`, sentence: `${actor.name} brought in ${fileName}, ${inspected.rowCount} rows` });
+      await record.add(trx, { actor, depositId, action: 'upload.received', subject: `upload ${id}`, sentence: `${actor.name} brought in ${fileName}, ${inFigures(inspected.rowCount)} rows` });
       return id;
     });
   }

@@ -1,6 +1,7 @@
 import type { Knex } from 'knex';
 import type { Deposit, Overview, Stage } from '#contract/deposits.ts';
 import type { DomainList } from '#contract/domains.ts';
+import type { Screen } from '#contract/screens.ts';
 import type { Snapshot } from '#contract/snapshots.ts';
 import type { AuditRow } from '#server/modules/record/audit-chain.ts';
 import type { CodesService } from '#server/modules/codes/codes.service.ts';
@@ -31,13 +32,20 @@ export interface OverviewSources {
   codes: CodesService;
 }
 
-const LATELY = 6;
+const LATELY = 10;
 const km = (metres: number): string => `${Math.round(metres).toLocaleString('en-GB')} m`;
 function shareOf(part: number, whole: number): string {
   if (!(whole > 0)) return '–';
   const percent = (100 * part) / whole;
   if (percent >= 100) return '100 %';
   return percent > 99.9 ? '>99.9 %' : `${percent.toFixed(1)} %`;
+}
+
+/** Mixed grades that matter: in the groups domains are made of, or, before there are groups, anywhere. */
+function mixedCellsOf(screen: Screen | null): number {
+  const mixed = screen?.cells.filter(({ verdict }) => verdict === 'mixed') ?? [];
+  const groups = new Set(screen?.subsets.flatMap(({ kind, key }) => (kind === 'group' ? [key] : [])));
+  return groups.size === 0 ? mixed.length : mixed.filter(({ subsetKey }) => groups.has(subsetKey)).length;
 }
 
 export function createOverview(sources: OverviewSources) {
@@ -63,7 +71,7 @@ export function createOverview(sources: OverviewSources) {
       componentsStale: f.runs[0]?.isStale ?? null,
       groupingStale: f.grouping?.isStale ?? null,
       screenStale: f.screen?.isStale ?? null,
-      mixedCells: f.screen?.cells.filter(({ verdict }) => verdict === 'mixed').length ?? 0,
+      mixedCells: mixedCellsOf(f.screen),
       domains: f.domainList.domains.length,
       unassignedIntervals: f.domainList.unassigned.intervals,
       domainsStale: f.domainList.isStale,
@@ -152,7 +160,7 @@ function waitingOf(s: Standing): Overview['waiting'] {
   if (s.componentsStale === false && s.groupingStale === null) add('groups', 'note', 'Group the intervals', 'Sweep the number of groups first');
   if (s.groupingStale) add('groups', 'stale', 'Run groups again', 'They lack the tables loaded since');
   if (s.screenStale) add('populations', 'stale', 'Screen again', 'The matrix lacks the tables loaded since');
-  if (s.mixedCells > 0) add('populations', 'bad', `Look at ${s.mixedCells} mixed ${s.mixedCells === 1 ? 'population' : 'populations'}`, 'Grades that are more than one population');
+  if (s.mixedCells > 0) add('populations', 'warn', `Look at ${s.mixedCells} mixed ${s.mixedCells === 1 ? 'grade' : 'grades'}`, 'Each is more than one population in its group');
   if (s.groupingStale === false && s.domains === 0) add('domains', 'note', 'Accept candidate domains', 'From groups that hold one population');
   if (s.evidenceMissing > 0) add('domains', 'warn', `Test ${s.evidenceMissing} ${s.evidenceMissing === 1 ? 'domain' : 'domains'}`, 'Evidence is missing or older than the domain');
   if (s.domains > 0 && s.unassignedIntervals > 0) add('domains', 'warn', `${s.unassignedIntervals.toLocaleString('en-GB')} intervals have no domain`, 'They go out as UNASSIGNED');

@@ -37,7 +37,7 @@ export interface RecordService {
 }
 
 const asEntry = (row: AuditRow): AuditEntry => ({
-  id: row.id,
+  number: row.number,
   at: row.at,
   who: row.who,
   action: row.action,

@@ -12,7 +12,7 @@ export function AdminPage() {
     <>
       <PageHead
         title="Administration"
-        finding="Accounts and deposits of this instance. People belong to deposits by their leads' invitation."
+        finding="Accounts and deposits of this instance. People belong to deposits by their leads’ invitation."
       />
       <div className="grid gap-3">
         <UserPlate />

@@ -1,4 +1,5 @@
 import { Link } from 'react-router-dom';
+import { LinkButton } from '#src/components/ui/button.tsx';
 import { PageHead } from '#src/components/layout/page-head.tsx';
 import { Brand } from '#src/components/layout/mark.tsx';
 import { Mailbox } from '#src/features/auth/components/mailbox.tsx';
@@ -16,6 +17,7 @@ export function MailboxPage() {
         <PageHead
           title="Mailbox of the demonstration"
           finding="Nothing leaves this instance: every message it would send is kept here."
+          actions={<LinkButton to="/deposits">Back to the deposits</LinkButton>}
         />
         <Mailbox />
       </main>

@@ -22,6 +22,8 @@ export interface FingerprintProps extends ChartBasics {
 const STEPS = 9;
 const ROW_PX = 17;
 const LEGEND_PX = 24;
+/** A column narrower than this cannot be read: the least telling elements give way. */
+const LEAST_COLUMN_PX = 11;
 
 /** Step 1 to 9 of the diverging scale; 5 holds the centre, 1 and 9 lie beyond `reach`. */
 export function divergingStep(value: number, reach: number): number {
@@ -48,6 +50,15 @@ export function rowOrder(groups: readonly Category[], values: readonly (readonly
   return order.sort((a, b) => value(b) - value(a));
 }
 
+/** The elements that fit, those that part the groups most, in the order given. */
+export function tellingElements(elements: readonly string[], values: readonly (readonly number[])[], count: number): number[] {
+  const all = elements.map((_name, col) => col);
+  if (count >= elements.length) return all;
+  const reachOf = (col: number) => Math.max(0, ...values.map((row) => Math.abs(row[col] ?? 0)).filter(Number.isFinite));
+  const kept = new Set([...all].sort((a, b) => reachOf(b) - reachOf(a)).slice(0, count));
+  return all.filter((col) => kept.has(col));
+}
+
 /** Group by element medians against a stated centre, brown poorer, green richer, outer steps signed. */
 export function FingerprintHeat(props: FingerprintProps) {
   const { groups, elements, values, lowWord = 'poorer', highWord = 'richer than the whole' } = props;
@@ -59,21 +70,24 @@ export function FingerprintHeat(props: FingerprintProps) {
   return (
     <ChartFrame {...props} usualHeight={20 + groups.length * ROW_PX + LEGEND_PX} interactive>
       {(box) => {
-        const width = (box.width - left - 2) / Math.max(1, elements.length);
+        const cols = tellingElements(elements, values, Math.max(4, Math.floor((box.width - left - 2) / LEAST_COLUMN_PX)));
+        const width = (box.width - left - 2) / Math.max(1, cols.length);
+        const note = cols.length < elements.length ? `${cols.length} of ${elements.length} analytes, those that part the groups most` : null;
+        const legendPx = note === null ? LEGEND_PX : LEGEND_PX + 15;
         const isSteep = widestHead > width - 2;
         const head = isSteep ? Math.ceil(widestHead * 0.82) + 10 : 20;
-        const height = Math.max(12, Math.min(26, (box.height - head - LEGEND_PX) / Math.max(1, groups.length)));
+        const height = Math.max(12, Math.min(26, (box.height - head - legendPx) / Math.max(1, groups.length)));
         const cell = { width, height };
         return (
           <g>
-            {elements.map((name, col) => (
+            {cols.map((col, place) => (
               <ColumnHead
-                key={name}
-                x={left + (col + 0.5) * cell.width}
+                key={col}
+                x={left + (place + 0.5) * cell.width}
                 width={cell.width}
                 height={head}
                 isSteep={isSteep}
-                name={name}
+                name={elements[col] ?? ''}
                 isSorted={byElement === col}
                 onSort={() => setByElement(byElement === col ? null : col)}
               />
@@ -87,12 +101,17 @@ export function FingerprintHeat(props: FingerprintProps) {
                   isChosen={props.selectedGroup === group}
                   onClick={props.onGroup === undefined ? undefined : () => props.onGroup?.(group)}
                 />
-                {elements.map((name, col) => (
-                  <Cell key={name} x={left + col * cell.width} {...cell} value={values[group]?.[col] ?? NaN} reach={reach} />
+                {cols.map((col, place) => (
+                  <Cell key={col} x={left + place * cell.width} {...cell} value={values[group]?.[col] ?? NaN} reach={reach} />
                 ))}
               </g>
             ))}
             <ScaleLegend box={box} left={left} top={head + groups.length * cell.height + 6} words={[lowWord, highWord]} />
+            {note !== null && (
+              <text x={0} y={head + groups.length * cell.height + LEGEND_PX + 9} style={tickText}>
+                {note}
+              </text>
+            )}
           </g>
         );
       }}

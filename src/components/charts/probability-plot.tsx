@@ -2,16 +2,16 @@ import { useMemo } from 'react';
 import type { PointerEvent } from 'react';
 import { plotArea, XAxis, YAxis } from './axes.tsx';
 import { markPath, slotColours } from './category-marks.tsx';
-import { captionText, halo, strongLabel } from './chart-styles.ts';
+import { captionText, halo, LABEL_PX, strongLabel } from './chart-styles.ts';
 import { ChartFrame } from './chart-frame.tsx';
 import type { Box, ChartBasics, PlotArea } from './chart-types.ts';
+import { overlaps, type Rect } from './label-placement.ts';
 import { componentDash, mixtureCdf } from './mixture.ts';
 import type { MixtureComponent } from './mixture.ts';
 import { plottingPositions, probabilityGrid, probabilityTicks, thinByPlace } from './probability-scale.ts';
 import type { PlottedValue } from './probability-scale.ts';
 import { fromShare, toShare } from './scatter-points.ts';
 import { legendHeight, SvgLegend } from './svg-legend.tsx';
-import { LABEL_PX } from './chart-styles.ts';
 import { textWidth } from './text-width.ts';
 import { logTicks, niceDomain } from './ticks.ts';
 import { normalQuantile } from '#kernels/normal.ts';
@@ -94,8 +94,7 @@ function Drawing({ box, plotted, props }: { box: Box; plotted: readonly PlottedV
         strokeWidth={0.6}
         opacity={0.85}
       />
-      <Populations components={components} area={area} at={at} yDomain={yDomain} zDomain={zDomain} />
-      {evenOdds !== undefined && evenOdds !== null && <EvenOdds area={area} y={at.y(evenOdds.value)} label={evenOdds.label} />}
+      <Populations components={components} area={area} at={at} yDomain={yDomain} zDomain={zDomain} evenOdds={evenOdds ?? null} />
       {lit !== undefined && <circle cx={at.x(lit.z)} cy={at.y(lit.value)} r={6} fill="none" stroke="var(--ink)" strokeWidth={1.6} />}
       {props.onHover !== undefined && (
         <rect {...rectOf(area)} fill="transparent" onPointerMove={onMove} onPointerLeave={() => props.onHover?.(null)} />
@@ -127,10 +126,13 @@ interface PopulationsProps {
   at: Place;
   yDomain: readonly [number, number];
   zDomain: readonly [number, number];
+  evenOdds: { value: number; label: string } | null;
 }
 
-/** Each population as a straight line, named beside it, and the fitted sum as a copper curve. */
-function Populations({ components, area, at, yDomain, zDomain }: PopulationsProps) {
+type Line = readonly (readonly [number, number])[];
+
+/** Each population as a straight line, named beside it, the fitted sum as a copper curve, and where two are equally likely. */
+function Populations({ components, area, at, yDomain, zDomain, evenOdds }: PopulationsProps) {
   if (components.length === 0) return null;
   const steps = Array.from({ length: 81 }, (_value, i) => fromShare(i / 80, 'log', yDomain));
   const sum = steps
@@ -138,16 +140,20 @@ function Populations({ components, area, at, yDomain, zDomain }: PopulationsProp
     .filter(([z]) => z >= zDomain[0] && z <= zDomain[1]);
   const line = ({ mean, sd }: MixtureComponent) =>
     steps.map((value) => [(Math.log(value) - mean) / sd, value] as const).filter(([z]) => z >= zDomain[0] && z <= zDomain[1]);
-  const path = (points: readonly (readonly [number, number])[]) => `M${points.map(([z, value]) => `${at.x(z).toFixed(1)} ${at.y(value).toFixed(1)}`).join('L')}`;
+  const lines = components.map(line);
+  const oddsY = evenOdds === null ? null : at.y(evenOdds.value);
+  const oddsLabel = evenOdds === null || oddsY === null || oddsY < area.top || oddsY > area.top + area.height ? null : clearest(evenOdds.label, oddsY, area, [...lines, sum], at);
+  const oddsBand = oddsY === null ? [] : [{ x: area.left, y: oddsY - 3, width: area.width, height: 6 }];
+  const path = (points: Line) => `M${points.map(([z, value]) => `${at.x(z).toFixed(1)} ${at.y(value).toFixed(1)}`).join('L')}`;
   return (
     <g fill="none">
       {components.map((component, index) => (
-        <path key={component.label} d={path(line(component))} stroke="var(--ink)" strokeWidth={1.5} strokeDasharray={componentDash(index)} />
+        <path key={component.label} d={path(lines[index] ?? [])} stroke="var(--ink)" strokeWidth={1.5} strokeDasharray={componentDash(index)} />
       ))}
       {components.length > 1 && <path d={path(sum)} stroke="var(--copper)" strokeWidth={1.7} />}
       {components.length > 1 &&
-        components.map((component) => {
-          const place = nameFor(line(component), sum, at, area);
+        components.map((component, index) => {
+          const place = nameFor(lines[index] ?? [], sum, at, area, oddsLabel ? [...oddsBand, oddsLabel] : oddsBand);
           return (
             place && (
               <text key={component.label} {...place} dy="0.35em" textAnchor="middle" style={{ ...strongLabel, ...halo }}>
@@ -156,12 +162,29 @@ function Populations({ components, area, at, yDomain, zDomain }: PopulationsProp
             )
           );
         })}
+      {evenOdds !== null && oddsLabel !== null && oddsY !== null && (
+        <>
+          <line x1={area.left} x2={area.left + area.width} y1={oddsY} y2={oddsY} stroke="var(--copper)" strokeDasharray="1.5 3" />
+          <text x={oddsLabel.x} y={oddsY - 5} style={{ ...captionText, ...halo, fill: 'var(--copper)', fontWeight: 600 }}>
+            {evenOdds.label}
+          </text>
+        </>
+      )}
     </g>
   );
 }
 
-/** Beside a population's line, where it is furthest from the sum and away from the edges. */
-function nameFor(line: readonly (readonly [number, number])[], sum: readonly (readonly [number, number])[], at: Place, area: PlotArea) {
+/** Room for words above a level line: at its left end or its right, whichever fewer lines cross. */
+function clearest(label: string, y: number, area: PlotArea, lines: readonly Line[], at: Place): Rect {
+  const width = textWidth(label, LABEL_PX) * 1.05;
+  const crossings = (rect: Rect) => lines.flat().filter(([z, value]) => overlaps({ x: at.x(z) - 2, y: at.y(value) - 2, width: 4, height: 4 }, rect)).length;
+  const left = { x: area.left + 6, y: y - 18, width, height: 16 };
+  const right = { ...left, x: area.left + area.width - width - 6 };
+  return crossings(right) < crossings(left) ? right : left;
+}
+
+/** Beside a population's line, where it is furthest from the sum, away from the edges and from other words. */
+function nameFor(line: Line, sum: Line, at: Place, area: PlotArea, taken: readonly Rect[]) {
   let best: { x: number; y: number } | null = null;
   let widest = 0;
   for (const [z, value] of line) {
@@ -169,23 +192,13 @@ function nameFor(line: readonly (readonly [number, number])[], sum: readonly (re
     if (x < area.left + 24 || x > area.left + area.width - 24 || y < area.top + 22 || y > area.top + area.height - 22) continue;
     const gap = sum.reduce((least, [sz, sv]) => Math.min(least, Math.hypot(at.x(sz) - x, at.y(sv) - y)), Infinity);
     if (gap < widest) continue;
-    widest = gap;
     const above = sum.every(([sz, sv]) => Math.abs(at.x(sz) - x) > 8 || at.y(sv) >= y);
-    best = { x, y: above ? y - 13 : y + 13 };
+    const middle = above ? y - 13 : y + 13;
+    if (taken.some((other) => overlaps({ x: x - 7, y: middle - 8, width: 14, height: 16 }, other))) continue;
+    widest = gap;
+    best = { x, y: middle };
   }
   return best;
-}
-
-function EvenOdds({ area, y, label }: { area: PlotArea; y: number; label: string }) {
-  if (y < area.top || y > area.top + area.height) return null;
-  return (
-    <g>
-      <line x1={area.left} x2={area.left + area.width} y1={y} y2={y} stroke="var(--copper)" strokeDasharray="1.5 3" />
-      <text x={area.left + 6} y={y - 5} style={{ ...captionText, ...halo, fill: 'var(--copper)', fontWeight: 600 }}>
-        {label}
-      </text>
-    </g>
-  );
 }
 
 function Censored({ area, at, share, label }: { area: PlotArea; at: Place; share: number; label: string }) {

@@ -53,13 +53,7 @@ const USUAL: readonly (readonly [RegExp, RockPattern])[] = [
   [/^(SOIL|COV|OVB|ALV|TRN)/i, 'humps'],
 ];
 
-/** The pattern of one code: by its usual meaning, else by its place in the list. */
-export function patternFor(code: string, index: number): RockPattern {
-  const usual = USUAL.find(([start]) => start.test(code));
-  return usual?.[1] ?? ROCK_PATTERNS[index % ROCK_PATTERNS.length] ?? 'dots';
-}
-
-/** Patterns for a list of codes, no two alike; codes beyond the last pattern get none. */
+/** Patterns for all codes of a deposit, in one order everywhere, no two alike; codes beyond the last pattern get none. */
 export function assignPatterns(codes: readonly string[]): Map<string, RockPattern | null> {
   const free = new Set(ROCK_PATTERNS);
   const found = new Map<string, RockPattern | null>();

@@ -59,5 +59,5 @@ export function testWords({ cramersVCorrected, chiSquare, df, permutationP, nomi
   if (chiSquare === null) return 'one level: nothing to test';
   const v = cramersVCorrected === null ? '–' : cramersVCorrected.toFixed(2);
   const p = permutationP !== null ? `p ${permutationP < 0.002 ? '≤ 0.001' : permutationP.toFixed(3)} by shifts` : nominalP !== null ? `nominal p ${nominalP < 0.001 ? '< 0.001' : nominalP.toFixed(3)}` : (nominalPWithheld ?? 'p withheld');
-  return `${strength}: V ${v}, χ² ${chiSquare.toFixed(0)} (${df ?? '–'} df), ${p}`;
+  return `${strength === 'none' ? 'no' : strength} tie: V ${v}, χ² ${chiSquare.toFixed(0)} (${df ?? '–'} df), ${p}`;
 }

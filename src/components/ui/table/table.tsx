@@ -70,7 +70,7 @@ export function Table<Row extends object>(props: TableProps<Row>) {
     <div
       ref={scroller}
       {...(isScrolling ? { tabIndex: 0, role: 'group', 'aria-label': `${caption}, scrolls` } : {})}
-      className={cx('relative min-w-0 overflow-auto', className)}
+      className={cx('scroll-edge relative min-w-0 overflow-auto', className)}
       style={maxHeightRem ? { maxHeight: `${maxHeightRem}rem` } : undefined}
     >
       <table

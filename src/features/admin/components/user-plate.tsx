@@ -115,10 +115,10 @@ const userColumns = (
           <Button
             size="tiny"
             unavailable={unavailable}
-            aria-label={`${user.isAdministrator ? 'Take administration from' : 'Make administrator:'} ${user.name}`}
+            aria-label={`${user.isAdministrator ? 'No longer administrator:' : 'Make administrator:'} ${user.name}`}
             onClick={() => flip(user, 'isAdministrator')}
           >
-            {user.isAdministrator ? 'Take administration' : 'Make administrator'}
+            {user.isAdministrator ? 'No longer administrator' : 'Make administrator'}
           </Button>
           <Button
             size="tiny"

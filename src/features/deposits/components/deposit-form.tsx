@@ -74,7 +74,7 @@ export function DepositFields({
         <TextArea
           label="About it"
           isOptional
-          rows={2}
+          rows={3}
           error={errors.description}
           {...register('description')}
         />
@@ -91,7 +91,7 @@ export function DepositFields({
                 {
                   value: 'epsg',
                   label: 'A projected grid with an EPSG code',
-                  hint: 'Coordinates can then be placed on a map of the world.',
+                  hint: 'Kept with the deposit, so that everyone knows what its coordinates mean.',
                 },
               ]}
             />

@@ -108,10 +108,12 @@ function EvidencePlates({ evidence, domain }: { evidence: DomainEvidence; domain
   return (
     <>
       <SplitsPlate evidence={evidence} />
-      <div className="grid gap-3 lg:grid-cols-2 xl:grid-cols-3">
-        <OrientationPlate evidence={evidence} />
+      <div className="grid gap-3 lg:grid-cols-2 lg:items-start xl:grid-cols-3">
+        <div className="grid gap-3 xl:contents">
+          <OrientationPlate evidence={evidence} />
+          <WhyPlate domain={domain} evidence={evidence} />
+        </div>
         <BeforeAfterPlate evidence={evidence} domain={domain} />
-        <WhyPlate domain={domain} evidence={evidence} />
       </div>
     </>
   );

@@ -44,6 +44,7 @@ export function DomainsStage() {
   if (!list.data || !groupings.data) return <><PageHead title="Domains" /><Skeleton lines={8} /></>;
 
   const { domains } = list.data;
+  const isAllTaken = grouping !== null && grouping.groups.every(({ label }) => domains.some(({ groupLabels }) => groupLabels.includes(label)));
   const waiting = domains.filter(({ hasEvidence, evidenceIsStale }) => !hasEvidence || evidenceIsStale);
   const isOpen = view.new && grouping !== null && !mayCreate;
   const cannotGather = mayGather ?? (domains.length === 0 ? 'Accept a domain first' : isRunning ? 'Evidence is being gathered' : list.data.isStale ? 'The groups are stale: run Groups again first' : undefined);
@@ -53,7 +54,7 @@ export function DomainsStage() {
       <Button icon={FlaskConical} kind={waiting.length > 0 && domains.length > 0 ? 'main' : 'plain'} unavailable={cannotGather} isBusy={gather.isPending} onClick={startGathering}>
         {waiting.length > 0 && waiting.length < domains.length ? `Test ${countOf(waiting.length, 'domain')}` : 'Gather evidence'}
       </Button>
-      <Button icon={Plus} kind={waiting.length > 0 && domains.length > 0 ? 'plain' : 'main'} unavailable={mayCreate} onClick={() => setView({ new: true }, { push: true })}>Accept groups</Button>
+      <Button icon={Plus} kind={waiting.length > 0 && domains.length > 0 ? 'plain' : 'main'} unavailable={mayCreate ?? (isAllTaken && !view.new && 'Every group belongs to a domain; take one back or edit it to move a group')} onClick={() => setView({ new: true }, { push: true })}>Accept groups</Button>
     </>
   );
   return (

@@ -23,7 +23,7 @@ const planeOf = ({ meanPlane }: OrientationSet): string => (meanPlane ? `${forma
 const COLUMNS: Column<OrientationSet>[] = [
   { header: 'Confidence', rowHeader: true, cell: ({ confidence }) => confidence, value: ({ confidence }) => confidence },
   { header: 'n', align: 'right', cell: ({ n }) => formatCount(n), value: ({ n }) => n },
-  { header: 'Mean', align: 'right', cell: planeOf, value: planeOf },
+  { header: 'Mean plane', unit: 'dip / direction, °', align: 'right', cell: planeOf, value: planeOf },
   { header: 'α95', unit: '°', align: 'right', cell: ({ alpha95 }) => fixed(alpha95, 1), value: ({ alpha95 }) => alpha95 },
   { header: 'S1', align: 'right', cell: ({ eigenvalues }) => fixed(eigenvalues?.[0] ?? null, 2), value: ({ eigenvalues }) => eigenvalues?.[0] ?? null },
   { header: 'K', align: 'right', cell: ({ woodcockK }) => fixed(woodcockK, 2), value: ({ woodcockK }) => woodcockK },

@@ -1,11 +1,14 @@
+import { useQuery } from '@tanstack/react-query';
 import { useMemo } from 'react';
 import type { CategorySplit, DomainEvidence } from '#contract/domains.ts';
 import { ShareRun } from '#src/components/charts/share-run.tsx';
-import { patternFor } from '#src/components/charts/rock-patterns.tsx';
+import { assignPatterns, type RockPattern } from '#src/components/charts/rock-patterns.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import type { Column } from '#src/components/ui/table/column.ts';
 import { tableExports } from '#src/components/ui/table/table-tools.tsx';
+import { snapshotQuery } from '#src/lib/deposit-queries.ts';
 import { countOf, formatMetres } from '#src/lib/format.ts';
+import { useDepositId } from '#src/lib/use-deposit.ts';
 import { categoryName, testWords } from '../model.ts';
 
 interface Row {
@@ -35,23 +38,25 @@ const SHOWN = 6;
 
 /** What the domain is made of: its metres by rock, weathering and side of each fault, against elsewhere. */
 export function SplitsPlate({ evidence }: { evidence: DomainEvidence }) {
+  const { data: answer } = useQuery(snapshotQuery(useDepositId()));
+  const patterns = useMemo(() => assignPatterns((answer?.snapshot?.lithologies ?? []).map(({ code }) => code)), [answer]);
   const rows = useMemo(() => evidence.splits.flatMap(({ category, levels }) => levels.map((level): Row => ({ category, ...level }))), [evidence]);
   return (
-    <Plate title="What the domain is made of" qualifier={`${countOf(evidence.intervals, 'interval')}, ${formatMetres(evidence.metres)}`} help={HELP} exports={tableExports('domain-splits', EXPORTED, rows)} caption={`Shares by metres, tests by intervals · snapshot ${evidence.snapshotNumber}`}>
+    <Plate title="What the domain is made of" qualifier={`${countOf(evidence.intervals, 'interval')}, ${formatMetres(evidence.metres)}`} help={HELP} exports={tableExports('domain-splits', EXPORTED, rows)} caption={`Shares by metres, tests by intervals · ● more or less common here than elsewhere · snapshot ${evidence.snapshotNumber}`}>
       <div className="grid gap-x-6 gap-y-4 md:grid-cols-2 lg:grid-cols-4">
-        {evidence.splits.map((split) => <Split key={split.category} split={split} />)}
+        {evidence.splits.map((split) => <Split key={split.category} split={split} patterns={patterns} />)}
       </div>
     </Plate>
   );
 }
 
-function Split({ split }: { split: CategorySplit }) {
+function Split({ split, patterns }: { split: CategorySplit; patterns: ReadonlyMap<string, RockPattern | null> }) {
   const { category, levels, notLogged } = split;
   const name = categoryName(category);
   const shown = levels.filter(({ share }) => share > 0).slice(0, SHOWN);
   const hidden = levels.filter(({ share }) => share > 0).length - shown.length;
   const marked = (level: (typeof levels)[number]): string => (Math.abs(level.adjustedResidual ?? 0) > 3 ? `${level.level} ●` : level.level);
-  const parts = shown.map((level, i) => ({ label: marked(level), share: level.share, pattern: category === 'lithology' ? patternFor(level.level, i) : null }));
+  const parts = shown.map((level) => ({ label: marked(level), share: level.share, pattern: category === 'lithology' ? (patterns.get(level.level) ?? null) : null }));
   return (
     <section>
       <h3 className="mb-1 text-caption font-semibold text-ink-2">{name}</h3>

@@ -67,7 +67,7 @@ export function ColumnsPlate({ upload, draft, fixedBecause, className }: Props) 
         {fixedBecause && <p className="pb-2 text-caption text-ink-3">{fixedBecause}</p>}
         <FileProblems draft={draft} />
         <UnitsForAll draft={draft} />
-        <div role="group" aria-label="Columns, scrolls" tabIndex={0} className="relative min-h-0 flex-1 overflow-auto max-lg:max-h-[32rem]">
+        <div role="group" aria-label="Columns, scrolls" tabIndex={0} className="scroll-edge relative min-h-0 flex-1 overflow-auto max-lg:max-h-[32rem]">
           <table className="w-full border-separate border-spacing-0 text-small">
             <caption className="sr-only">Columns of {upload.fileName} and what each is</caption>
             <thead>

@@ -49,7 +49,7 @@ export function PreviewPlate({ depositId, upload, draft, collarRevision }: Props
     >
       <div className="flex h-full min-h-0 flex-col gap-1.5 px-3 pb-2">
         {preview && (
-          <div role="group" aria-label="Preview, scrolls" tabIndex={0} className={cx('relative min-h-0 flex-1 overflow-auto max-lg:max-h-96', isPale && 'opacity-40')}>
+          <div role="group" aria-label="Preview, scrolls" tabIndex={0} className={cx('scroll-edge relative min-h-0 flex-1 overflow-auto max-lg:max-h-96', isPale && 'opacity-40')}>
             <PreviewTable preview={preview} fileName={upload.fileName} />
           </div>
         )}

@@ -13,7 +13,7 @@ interface Props {
 /** Subset × variable: the map of the page. Each cell is pressed to draw it. */
 export function VerdictMatrix({ screen, picked, onPick }: Props) {
   return (
-    <div className="max-h-[26rem] overflow-auto">
+    <div className="scroll-edge max-h-[max(26rem,calc(100dvh-24rem))] overflow-auto">
       <table className="w-full border-separate border-spacing-x-[3px] border-spacing-y-0">
         <caption className="sr-only">Mixing verdict of each variable in each subset</caption>
         <thead className="sticky top-0 z-10 bg-sheet text-caption text-ink-2">

@@ -17,6 +17,12 @@ import { auditQuery, PAGE_SIZE } from '../api/record-queries.ts';
 
 const VIEW = { text: urlText(), page: urlNumber(1) };
 
+/** The name stands in its own column already. */
+const withoutName = (sentence: string, who: string): string => (sentence.startsWith(`${who} `) ? sentence.slice(who.length + 1) : sentence);
+
+/** `zone-rules.changed` as "zone rules changed". */
+const inWords = (action: string): string => action.replaceAll(/[.-]/g, ' ');
+
 const COLUMNS: Column<AuditEntry>[] = [
   {
     header: 'When',
@@ -31,15 +37,15 @@ const COLUMNS: Column<AuditEntry>[] = [
     value: ({ at }) => at,
   },
   { header: 'Who', widthRem: 9, isSortable: false, cell: ({ who }) => who, rowHeader: true },
-  { header: 'What', isSortable: false, cell: ({ sentence }) => sentence },
-  { header: 'Kind', widthRem: 11, isSortable: false, isMono: true, cell: ({ action }) => action },
+  { header: 'What', isSortable: false, cell: ({ sentence, who }) => withoutName(sentence, who) },
+  { header: 'Kind', widthRem: 11, isSortable: false, cell: ({ action }) => inWords(action) },
   {
     header: 'Entry',
     widthRem: 4,
     align: 'right',
     isSortable: false,
-    cell: ({ id }) => formatCount(id),
-    value: ({ id }) => id,
+    cell: ({ number }) => formatCount(number),
+    value: ({ number }) => number,
   },
   {
     header: 'Hash',
@@ -103,7 +109,7 @@ export function AuditPlate({ depositId }: { depositId: number }) {
           caption="Audit record"
           columns={COLUMNS}
           rows={data.rows}
-          rowKey={({ id }) => id}
+          rowKey={({ number }) => number}
           empty={
             <Empty>
               {text

@@ -5,7 +5,7 @@ import { describe, expect, it, vi } from 'vitest';
 import type { ChartHandle } from '#src/components/charts/chart-types.ts';
 import { DensityRidges } from '#src/components/charts/density-ridges.tsx';
 import { standaloneSvg } from '#src/components/charts/export-chart.ts';
-import { divergingStep, FingerprintHeat, rowOrder, stepSign } from '#src/components/charts/fingerprint-heat.tsx';
+import { divergingStep, FingerprintHeat, rowOrder, stepSign, tellingElements } from '#src/components/charts/fingerprint-heat.tsx';
 import { Histogram } from '#src/components/charts/histogram.tsx';
 import { HoleStrip } from '#src/components/charts/hole-strip.tsx';
 import { LineChart } from '#src/components/charts/line-chart.tsx';
@@ -37,6 +37,11 @@ describe('fingerprints', () => {
     await userEvent.keyboard('{Enter}');
     expect(names()).toEqual(['Dyke', 'Stringer']);
   });
+  it('keep the elements that part the groups most where not all fit, in the order given', () => {
+    const values = [[0.1, 2, -0.5], [0.2, Number.NaN, 0.9]];
+    expect(tellingElements(['Cu', 'Zn', 'As'], values, 2)).toEqual([1, 2]);
+    expect(tellingElements(['Cu', 'Zn', 'As'], values, 3)).toEqual([0, 1, 2]);
+  });
   it('hand the chosen group on', async () => {
     const onGroup = vi.fn();
     render(<FingerprintHeat {...words} groups={groups} elements={['Cu']} values={[[1], [2]]} onGroup={onGroup} />);
@@ -48,6 +53,13 @@ describe('fingerprints', () => {
 describe('distributions', () => {
   const values = [0.1, 0.2, 0.3, 0.9, 1.1, 1.4];
   const components = [{ label: 'A', share: 0.5, mean: -1.6, sd: 0.4 }, { label: 'B', share: 0.5, mean: 0.1, sd: 0.3 }];
+  it('write the names of populations clear of the line of even odds', () => {
+    const { container } = render(<ProbabilityPlot {...words} values={values} valueLabel="Cu, % (log scale)" components={components} componentWords={['A 50 %', 'B 50 %']} evenOdds={{ value: 0.5, label: 'even odds at 0.5 %' }} />);
+    const level = Number(screen.getByText('even odds at 0.5 %').getAttribute('y')) + 5;
+    const names = [...container.querySelectorAll('text')].filter(({ textContent }) => textContent === 'A' || textContent === 'B');
+    expect(names.length).toBeGreaterThan(0);
+    for (const name of names) expect(Math.abs(Number(name.getAttribute('y')) - level)).toBeGreaterThanOrEqual(11);
+  });
   it('name their populations, the even odds and what is censored', () => {
     render(<ProbabilityPlot {...words} values={values} valueLabel="Cu, % (log scale)" components={components} componentWords={['A 50 %', 'B 50 %']} evenOdds={{ value: 0.5, label: 'even odds at 0.5 %' }} censored={{ share: 0.1, label: '10 % below 0.05' }} />);
     for (const text of ['A 50 %', 'B 50 %', 'together', 'even odds at 0.5 %', '10 % below 0.05', 'Cu, % (log scale)']) expect(screen.getByText(text)).toBeInTheDocument();

@@ -2,7 +2,7 @@ import { schemeBrBG, lab, hcl } from 'd3';
 import { readFileSync } from 'node:fs';
 import { describe, expect, it } from 'vitest';
 import { markPath, runFill, slotColours } from '#src/components/charts/category-marks.tsx';
-import { assignPatterns, patternFor, ROCK_PATTERNS, rockFill } from '#src/components/charts/rock-patterns.tsx';
+import { assignPatterns, ROCK_PATTERNS, rockFill } from '#src/components/charts/rock-patterns.tsx';
 
 describe('category marks', () => {
   it('repeat their outline hollow from slot 9 on', () => {
@@ -25,8 +25,8 @@ describe('category marks', () => {
 });
 
 describe('rock patterns', () => {
-  it('give usual codes their usual mark, others by place', () => {
-    expect([patternFor('AND', 3), patternFor('MSX', 0), patternFor('QZ1', 5)]).toEqual(['vees', 'level', ROCK_PATTERNS[5]]);
+  it('give usual codes their usual mark, others the first that is free', () => {
+    expect([...assignPatterns(['QZ1', 'AND', 'MSX'])]).toEqual([['AND', 'vees'], ['MSX', 'level'], ['QZ1', 'plus']]);
   });
   it('give no two codes of a list the same mark', () => {
     const codes = ['AND', 'ANDB', 'DOL', 'Q1', 'Q2', 'Q3', 'Q4', 'Q5', 'Q6', 'Q7', 'Q8', 'Q9', 'Q10'];

@@ -4,8 +4,8 @@ import { RecordPage } from '#src/app/routes/record.tsx';
 import { renderPage, type Answer } from '#tests/support/render-page.tsx';
 
 const HASH = '9f2c41aa7be0d1f2c3b4a5968778695a4b3c2d1e0f9e8d7c6b5a493827160a3f';
-const entry = (id: number, sentence: string) => ({
-  id,
+const entry = (number: number, sentence: string) => ({
+  number,
   at: '2026-11-30T16:20:00Z',
   who: 'M. Ivers',
   action: 'domain.created',
@@ -30,9 +30,10 @@ const open = (answer: Answer, at = '/deposits/1/record') =>
 
 describe('the record', () => {
   it('DU-09 says that the chain holds, and by which entry', async () => {
-    open(page([entry(240, 'Accepted group 3 as domain 2110')], 240));
+    open(page([entry(240, 'M. Ivers accepted group 3 as domain 2110')], 240));
     expect(await screen.findByText('chain holds')).toBeInTheDocument();
-    expect(screen.getByText('Accepted group 3 as domain 2110')).toBeInTheDocument();
+    expect(screen.getByText('accepted group 3 as domain 2110')).toBeInTheDocument();
+    expect(screen.getByText('domain created')).toBeInTheDocument();
     expect(screen.getAllByText('9f2c 41aa 7be0').length).toBe(2);
   });
 
