@@ -46,11 +46,12 @@ function faultIn(answer: unknown, isNaNMissing: boolean): string | null {
   return null;
 }
 
-/** True where an answer says something: a finite number stands in it. */
-function holdsNumber(answer: unknown): boolean {
+/** True where an answer says something: a finite number or a text stands in it. */
+function saysSomething(answer: unknown): boolean {
   if (typeof answer === 'number') return Number.isFinite(answer);
+  if (typeof answer === 'string') return answer !== '';
   if (answer === null || typeof answer !== 'object') return false;
-  return Object.values(answer instanceof Map ? [...answer.values()] : answer).some(holdsNumber);
+  return Object.values(answer instanceof Map ? [...answer.values()] : answer).some(saysSomething);
 }
 
 /** What is wrong with a call, or null: it answers without fault, or refuses with a reason. */
@@ -84,7 +85,7 @@ export function testHostileInputs(cases: readonly HostileCase[]): void {
     const usual = (rows?: number) => Array.from({ length: count }, (_, j) => ordinary(j, rows));
     const answer = kernel(...usual());
     expect(faultIn(answer, isNaNMissing)).toBeNull();
-    expect(answer).toSatisfy(holdsNumber);
+    expect(answer).toSatisfy(saysSomething);
     const faults: string[] = [];
     const tryOut = (what: string, columns: Float64Array[]) => {
       const fault = faultOf(() => kernel(...columns), isNaNMissing);

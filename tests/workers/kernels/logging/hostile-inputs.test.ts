@@ -44,7 +44,13 @@ testHostileInputs([
   ['centreDistances', (x, y) => centreDistances(codeSpace([x, y], codesOf(x, 3), 5))],
   ['standardisedDistances', (x, y) => standardisedDistances(codeSpace([x, y], codesOf(x, 3), 5))],
   ['mapCodes', (lengths) => mapCodes(codesOf(lengths, 3), new Map([['A', 'X']]), lengths)],
-  ['synonymGroups', (metres) => synonymGroups(usesOf(metres))],
+  [
+    'synonymGroups',
+    (metres) =>
+      synonymGroups(
+        usesOf(metres).map((use, i) => ({ ...use, code: i % 2 ? `c ${i - 1}` : use.code })),
+      ),
+  ],
   ['agreementOf', (table) => agreementOf(table.slice(0, 16), 4)],
   ['consolidationTree', (d, contacts) => consolidationTree(square(d), square(contacts), 4)],
   [

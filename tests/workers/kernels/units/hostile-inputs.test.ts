@@ -15,7 +15,14 @@ testHostileInputs([
   ['elementFromOxide', (v) => Array.from(v, (x) => elementFromOxide('Al2O3', x)), 'missing'],
   ['toPpm', (v) => Array.from(v, (x) => toPpm(x, '%')), 'missing'],
   ['ironOf', (feo, fe2o3) => ironOf({ feo, fe2o3 }, 'separate'), 'missing'],
-  ['findRowProblems', (ppm) => findRowProblems(ppm, ['Fe', 'S', 'Cu', 'Zn'])],
+  [
+    'findRowProblems',
+    (v) =>
+      findRowProblems(
+        v.map((x) => 2e5 * x),
+        ['Fe', 'S', 'Cu', 'Zn'],
+      ),
+  ],
   [
     'chooseDetermination',
     (first, second) => chooseDetermination([asMeasured(first, 'a'), asMeasured(second, 'b')]),
