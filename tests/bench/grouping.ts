@@ -59,7 +59,8 @@ export const sweepScikitBench = (): Bench =>
 export const mixtureScikitBench = (): Bench =>
   againstScikit({
     work: 'mixture', workload: `Gaussian mixture k = ${K}, full`, nRows: 1_000_000, goal: 'ratio ≤ 0.33', reached: 'ln L',
-    ours: (columns) => gaussianMixture({ columns, k: K, family: 'full', seed: 1, starts: 1 }).logLik,
+    // The default tolerance goes on to a likelihood the peer never sees; this one still ends above the peer's.
+    ours: (columns) => gaussianMixture({ columns, k: K, family: 'full', seed: 1, starts: 1, tolerance: 1e-5 }).logLik,
   });
 
 export const silhouetteScikitBench = (): Bench =>

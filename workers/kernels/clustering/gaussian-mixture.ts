@@ -1,6 +1,6 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { mixtureEm, type EmRest } from './mixture-em-steps.ts';
-import { mixtureMembership, reorderMixture, type MixtureMembership } from './mixture-membership.ts';
+import { membershipOfPacked, reorderMembership, reorderMixture, type MixtureMembership } from './mixture-membership.ts';
 import {
   COVARIANCE_FAMILIES,
   mixtureParameterCount,
@@ -168,7 +168,8 @@ function numbered(
   packed: PackedPoints,
   weights: Float64Array | null,
 ): MixtureMembership & Pick<GaussianMixture, 'model' | 'sizes' | 'weightOf'> {
-  const { labels } = mixtureMembership(model, columns);
+  const membership = membershipOfPacked(model, packed, columns[0]?.length ?? 0, weights);
+  const { labels } = membership;
   const { k } = model;
   const size = new Array<number>(k).fill(0);
   const weight = new Array<number>(k).fill(0);
@@ -183,14 +184,10 @@ function numbered(
   const order = [...size.keys()].sort(
     (a, b) => weight[b]! - weight[a]! || first[a]! - first[b]! || a - b,
   );
-  const ordered = reorderMixture(model, order);
-  const spread = weights && new Float64Array(labels.length);
-  weights?.forEach((value, i) => {
-    if (spread) spread[packed.rowOf ? packed.rowOf[i]! : i] = value;
-  });
+  reorderMembership(membership, order);
   return {
-    ...mixtureMembership(ordered, columns, spread ?? undefined),
-    model: ordered,
+    ...membership,
+    model: reorderMixture(model, order),
     sizes: order.map((c) => size[c]!),
     weightOf: order.map((c) => weight[c]!),
   };

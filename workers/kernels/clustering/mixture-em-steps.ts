@@ -12,6 +12,7 @@ import {
   type MixtureRows,
   type MixtureSums,
 } from './mixture-sums.ts';
+import { isModel, leapOf, parametersOf, setParameters, type Parameters } from './mixture-leap.ts';
 import { packedSize } from './packed-cholesky.ts';
 
 /** When EM stops and what it may not do. */
@@ -42,10 +43,14 @@ export interface EmRest {
 /** A group with less than this share of the rows has died out; it keeps its place without a share. */
 const DEAD_SHARE = 1e-10;
 
+/** Longest leap tried first, and how it grows when it led up or shrinks when it did not. */
+const LEAP = { first: 4, growth: 4 };
+
 /**
  * EM from a start: responsibilities of all rows, then the parameters they make likeliest, until the
- * log-likelihood stands still. It never falls, because eigenvalues under the floor are raised to it,
- * which is the likeliest covariance under that condition.
+ * log-likelihood stands still. Every other step leaps ahead along the last two (`leapOf`); a leap that
+ * lowers the log-likelihood is taken back, so that it never falls. Eigenvalues under the floor are
+ * raised to it, which is the likeliest covariance under that condition.
  *
  * @see Dempster, Laird & Rubin (1977), JRSS B 39 (from memory).
  */
@@ -54,19 +59,57 @@ export function mixtureEm(start: MixtureModel, rows: MixtureRows, rules: EmRules
   let held = holdCovariances(start, rules.floor, work);
   const density = mixtureDensity(start);
   const sums = emptySums(start.k, start.p);
+  const trail = [parametersOf(start)];
+  let longest = LEAP.first;
+  /** Where to go back to when the leap just made led down. */
+  let origin: Parameters | null = null;
   let last = -Infinity;
   let quiet = 0;
   for (let steps = 0; ; steps++) {
     sumResponsibilities(density, rows, sums);
     const logLik = sums.logLik + rules.logLikOffset;
+    if (origin && !(logLik >= last)) {
+      setParameters(start, origin);
+      refreshDensity(density);
+      trail.splice(0, trail.length, origin);
+      origin = null;
+      longest = Math.max(1, longest / LEAP.growth);
+      continue;
+    }
+    origin = null;
     quiet = logLik - last <= rules.tolerance * (1 + Math.abs(logLik)) ? quiet + 1 : 0;
     last = logLik;
     if (quiet >= 2 || steps >= rules.maxSteps) {
       return { model: start, logLik, steps, converged: quiet >= 2, held, mass: sums.mass };
     }
     held = maximise(density, sums, rules.floor, work);
+    trail.push(parametersOf(start));
+    const [a, b, c] = trail;
+    if (a && b && c) {
+      trail.length = 0;
+      const leap = held.length > 0 ? null : leapOf([a, b, c], longest);
+      if (leap && leapTo(density, leap.parameters, c, rules.floor, work)) {
+        origin = c;
+        if (leap.length === longest) longest *= LEAP.growth;
+      } else trail.push(c);
+    }
     rules.onStep?.(steps);
   }
+}
+
+/** Moves the density to other parameters; when they make no model it stays, and the answer is false. */
+function leapTo(
+  density: MixtureDensity,
+  to: Parameters,
+  from: Parameters,
+  floor: number,
+  work: Float64Array,
+): boolean {
+  setParameters(density.model, to);
+  const isSound = isModel(density.model, from, floor, work);
+  if (!isSound) setParameters(density.model, from);
+  refreshDensity(density);
+  return isSound;
 }
 
 /** The parameters the sums make likeliest, written over the density's model; groups held at the floor. */

@@ -2,7 +2,7 @@ import { KernelError } from '#kernels/kernel-error.ts';
 import { withLab } from '#kernels/dense/lab.ts';
 import { BLOCK_ROWS, densityTables, fillBlock, mixtureBlock, mixtureBlockBytes } from './mixture-block.ts';
 import { mixtureDensity, type MixtureModel } from './mixture-model.ts';
-import { packPoints } from './points.ts';
+import { packPoints, type PackedPoints } from './points.ts';
 
 /** Membership of rows in the groups of a mixture. */
 export interface MixtureMembership {
@@ -12,7 +12,7 @@ export interface MixtureMembership {
   labels: Uint8Array;
   /** Probability of that group, [1/K, 1]; NaN where a coordinate is missing. */
   own: Float64Array;
-  /** -Σ w Σ r ln r over the rows, >= 0. */
+  /** -Σ w Σ r ln r over the rows (w 1 unless weighted), >= 0. */
   entropy: number;
 }
 
@@ -20,18 +20,24 @@ export interface MixtureMembership {
  * Membership of rows in a frozen mixture; nothing is fitted.
  *
  * @param columns p columns of n rows in the space of the model; NaN = missing.
- * @param weights Optional weight per row, only for the entropy.
  * @throws {KernelError} `shape` when p differs; `singular`; those of `packPoints`.
  */
 export function mixtureMembership(
   model: MixtureModel,
   columns: readonly Float64Array[],
-  weights?: Float64Array,
 ): MixtureMembership {
   if (columns.length !== model.p)
     throw new KernelError('shape', `expected ${model.p} columns, found ${columns.length}`);
-  const { points, n, rowOf } = packPoints(columns);
-  const nRows = columns[0]?.length ?? 0;
+  return membershipOfPacked(model, packPoints(columns), columns[0]?.length ?? 0, null);
+}
+
+/** {@link mixtureMembership} of rows packed before; `weights`, one per packed row, count in the entropy. */
+export function membershipOfPacked(
+  model: MixtureModel,
+  { points, n, rowOf }: PackedPoints,
+  nRows: number,
+  weights: Float64Array | null,
+): MixtureMembership {
   const density = mixtureDensity(model);
   const { k, p } = model;
   const out = {
@@ -49,7 +55,7 @@ export function mixtureMembership(
       lab.math.mixtureShares(block, count, tables);
       for (let r = 0; r < count; r++) {
         const row = rowOf ? rowOf[from + r]! : from + r;
-        takeRow(out, block.shares, r, row, k, weights ? weights[row]! : 1);
+        takeRow(out, block.shares, r, row, k, weights ? weights[from + r]! : 1);
       }
     }
   });
@@ -73,6 +79,18 @@ function takeRow(
   }
   out.labels[row] = best + 1;
   out.own[row] = shares[best * BLOCK_ROWS + r]!;
+}
+
+/** Memberships with the groups in a new order, changed in place: `order[new] = old`. */
+export function reorderMembership({ responsibilities, labels }: MixtureMembership, order: readonly number[]): void {
+  const k = order.length;
+  const placeOf = Uint8Array.from(order, (_, old) => order.indexOf(old) + 1);
+  const row = new Float64Array(k);
+  for (let i = 0; i < labels.length; i++) {
+    for (let c = 0; c < k; c++) row[c] = responsibilities[i * k + order[c]!]!;
+    responsibilities.set(row, i * k);
+    if (labels[i]! > 0) labels[i] = placeOf[labels[i]! - 1]!;
+  }
 }
 
 /** The model with its groups in a new order: `order[new] = old`. */

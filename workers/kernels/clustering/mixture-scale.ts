@@ -28,8 +28,8 @@ export function scaledPoints(
       centre[j]! += ((weights ? weights[i]! : 1) / n) * (points[at++]! - points[j]!);
   for (let j = 0; j < p; j++) centre[j]! += points[j]!;
   let scale = 0;
-  for (let at = 0; at < points.length; at++)
-    scale = Math.max(scale, Math.abs(points[at]! - centre[at % p]!));
+  for (let i = 0, at = 0; i < n; i++)
+    for (let j = 0; j < p; j++) scale = Math.max(scale, Math.abs(points[at++]! - centre[j]!));
   if (!(scale > Number.MIN_VALUE * 2 ** 53))
     throw new KernelError('singular', `expected rows that differ, found ${n} equal rows`, { n });
   const scaled = new Float64Array(points.length);

@@ -27,6 +27,9 @@ const HEAT = { rows: 3000, maxSteps: 100, tolerance: 1e-5 };
 /** ... after which this share of the starts goes on, at least three. */
 const FINALIST_SHARE = 0.5;
 
+/** Growth from one sample to the next on the way to all rows. */
+const SAMPLE_GROWTH = 10;
+
 /** Rows with their weights for EM. */
 export const mixtureRows = (
   points: Float64Array,
@@ -38,7 +41,7 @@ export const mixtureRows = (
   weights,
 });
 
-/** The best model of all starts after they came to rest on a sample of the rows. */
+/** The best model of all starts after they came to rest on a sample of the rows, then on larger ones. */
 export function bestMixtureStart(input: MixtureSearchInput): MixtureModel {
   const { p, k, seed, starts, rules, onProgress } = input;
   const heat = sampled(input, Math.min(HEAT.rows, input.sampleSize));
@@ -66,7 +69,16 @@ export function bestMixtureStart(input: MixtureSearchInput): MixtureModel {
     rested.push(mixtureEm(model, sample, rules));
     onProgress(0.5 + (0.5 * rested.length) / finalists.length);
   }
-  return rested.sort(sounder)[0]!.model;
+  return throughLargerSamples(input, rested.sort(sounder)[0]!.model);
+}
+
+/** EM on samples of growing size: few steps are then left to take on all rows. */
+function throughLargerSamples(input: MixtureSearchInput, start: MixtureModel): MixtureModel {
+  let model = start;
+  for (let size = input.sampleSize * SAMPLE_GROWTH; size < input.points.length / input.p; size *= SAMPLE_GROWTH) {
+    ({ model } = mixtureEm(model, sampled(input, size), input.rules));
+  }
+  return model;
 }
 
 /** A seeded sample of rows; all of them when it fits or the sample holds fewer different rows than k. */
