@@ -22,8 +22,14 @@ export function toDegrees(radians: number): number {
   return radians / RADIANS_PER_DEGREE;
 }
 
-/** An angle brought into [0, 360); 360 becomes 0. */
+/**
+ * An angle brought into [0, 360); 360 becomes 0.
+ *
+ * @throws {KernelError} `not-finite`.
+ */
 export function wrapAzimuth(degrees: number): number {
+  if (!Number.isFinite(degrees))
+    throw new KernelError('not-finite', `expected an angle, found ${degrees}`);
   const wrapped = ((degrees % 360) + 360) % 360;
   return wrapped === 360 ? 0 : wrapped;
 }

@@ -156,7 +156,8 @@ export function gammaFromLine(
 ): number {
   const { axis, normal } = ellipseAxes(hole, angles, convention);
   const [along, across] = [dot(line, axis), dot(line, cross(normal, axis))];
-  if (!(Math.hypot(along, across) > 1e-9)) {
+  const length = Math.hypot(along, across);
+  if (!(length > 1e-9 && length < Infinity)) {
     throw new KernelError(
       'bad-parameter',
       `expected a line in the plane, found (${line.join(', ')})`,

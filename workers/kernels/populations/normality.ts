@@ -43,8 +43,11 @@ export function andersonDarling(values: ArrayLike<number>): AndersonDarling {
  * would turn up again, it stays.
  *
  * @param adjusted A* >= 0.
+ * @throws {KernelError} `bad-parameter` at NaN.
  */
 export function andersonDarlingP(adjusted: number): number {
+  if (Number.isNaN(adjusted))
+    throw new KernelError('bad-parameter', 'expected an adjusted statistic, found NaN');
   const a = Math.min(adjusted, 10);
   if (a < 0.2) return 1 - Math.exp(-13.436 + 101.14 * a - 223.73 * a * a);
   if (a < 0.34) return 1 - Math.exp(-8.318 + 42.796 * a - 59.938 * a * a);

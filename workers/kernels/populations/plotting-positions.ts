@@ -8,10 +8,12 @@ export type PlottingRule = keyof typeof PLOTTING_RULES;
 /**
  * Plotting positions of n sorted values: (i - a) / (n + 1 - 2a), i = 1..n.
  *
- * @throws {KernelError} `too-few-rows` for n < 1.
+ * @throws {KernelError} `too-few-rows` for n < 1; `bad-parameter` for an n that is no count.
  */
 export function plottingPositions(n: number, rule: PlottingRule = 'hazen'): Float64Array {
   if (!(n >= 1)) throw new KernelError('too-few-rows', `expected at least one value, found ${n}`);
+  if (!(Number.isInteger(n) && n < 2 ** 32))
+    throw new KernelError('bad-parameter', `expected a count of values, found ${n}`);
   const a = PLOTTING_RULES[rule];
   return Float64Array.from({ length: n }, (_, i) => (i + 1 - a) / (n + 1 - 2 * a));
 }

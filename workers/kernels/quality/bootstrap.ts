@@ -26,7 +26,7 @@ export function bootstrapInterval(
   options: { seed: number; draws?: number; level?: number },
 ): Interval | null {
   const { seed, draws = 999, level = 0.95 } = options;
-  if (!(n >= 1) || !(draws >= 19) || !(level > 0 && level < 1)) {
+  if (!(n >= 1 && n < 2 ** 32) || !(draws >= 19) || !(level > 0 && level < 1)) {
     const message = `expected rows, at least 19 draws and a level in (0, 1), found ${n}, ${draws}, ${level}`;
     throw new KernelError('bad-parameter', message);
   }

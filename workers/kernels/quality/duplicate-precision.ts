@@ -1,3 +1,4 @@
+import { KernelError } from '#kernels/kernel-error.ts';
 import { quantiles } from '#kernels/statistics/quantile.ts';
 import { bootstrapInterval, type Interval } from './bootstrap.ts';
 import { usablePairs, type PairOptions, type UsedPairs } from './pairs.ts';
@@ -73,8 +74,14 @@ export function duplicatePrecision(
   };
 }
 
-/** 100 |a - b| / (a + b), %; a + b > 0. */
+/**
+ * 100 |a - b| / (a + b), %.
+ *
+ * @throws {KernelError} `not-positive` unless a + b is finite and > 0.
+ */
 export function halfRelativeDifference(a: number, b: number): number {
+  if (!(a + b > 0 && a + b < Infinity))
+    throw new KernelError('not-positive', `expected a pair of sum > 0, found ${a} and ${b}`);
   return (100 * Math.abs(a - b)) / (a + b);
 }
 

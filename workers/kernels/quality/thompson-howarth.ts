@@ -48,7 +48,7 @@ export function thompsonHowarth(a: Float64Array, b: Float64Array): ThompsonHowar
 
 /** Relative precision at a concentration > 0, 2 sd / c as a fraction. */
 export function precisionAt({ s0, k }: PrecisionModel, concentration: number): number {
-  if (!(concentration > 0)) {
+  if (!(concentration > 0 && concentration < Infinity)) {
     throw new KernelError('bad-parameter', `expected a concentration > 0, found ${concentration}`);
   }
   return (2 * (s0 + k * concentration)) / concentration;

@@ -1,4 +1,4 @@
-import { crosstabLabels } from '#kernels/clustering/agreement.ts';
+import { adjustedRandIndex, crosstabLabels } from '#kernels/clustering/agreement.ts';
 import { logErrorSd } from '#kernels/clustering/assay-error.ts';
 import { averageLinkage } from '#kernels/clustering/average-linkage.ts';
 import {
@@ -7,7 +7,9 @@ import {
   logTransitions,
 } from '#kernels/clustering/chain-smoothing.ts';
 import { changePoints, labelSegments } from '#kernels/clustering/change-points.ts';
+import { consensus } from '#kernels/clustering/consensus.ts';
 import { contiguity, transitionStatistics } from '#kernels/clustering/contiguity.ts';
+import { cutTree } from '#kernels/clustering/cut-tree.ts';
 import { dbscan } from '#kernels/clustering/dbscan.ts';
 import { downHoleSequences } from '#kernels/clustering/down-hole-sequences.ts';
 import { fingerprints } from '#kernels/clustering/fingerprints.ts';
@@ -22,9 +24,10 @@ import { allMemberships, ownMembership, withinVariance } from '#kernels/clusteri
 import { mixtureMembership } from '#kernels/clustering/mixture-membership.ts';
 import { COVARIANCE_FAMILIES } from '#kernels/clustering/mixture-model.ts';
 import { sweepMixtures } from '#kernels/clustering/mixture-sweep.ts';
-import { modeFilter } from '#kernels/clustering/mode-filter.ts';
+import { changedShare, modeFilter } from '#kernels/clustering/mode-filter.ts';
 import { silhouette } from '#kernels/clustering/silhouette.ts';
 import { strengthForRun } from '#kernels/clustering/smoothing-strength.ts';
+import { bootstrapStability, type Regroup } from '#kernels/clustering/stability.ts';
 import { sweepGroups } from '#kernels/clustering/sweep.ts';
 import { groupValidity } from '#kernels/clustering/validity.ts';
 import { codesOf, metresOf, testHostileInputs } from '#tests/support/hostile-inputs.ts';
@@ -54,6 +57,14 @@ const squareOf = (column: Float64Array) =>
     const [row, col] = [at >> 2, at & 3];
     return row === col ? 0 : (column[Math.min(row, col) + Math.max(row, col)] ?? NaN);
   });
+
+/** A hole of every ten rows. */
+const tens = ({ length }: Float64Array) =>
+  Int32Array.from({ length }, (_, i) => Math.floor(i / 10));
+const halve =
+  (column: Float64Array): Regroup =>
+  (rows) =>
+    kMeans({ columns: [Float64Array.from(rows, (row) => column[row]!)], k: 2, ...seeded }).labels;
 
 testHostileInputs([
   ['crosstabLabels', (weights) => crosstabLabels(labels(weights), labels(weights), weights)],
@@ -175,4 +186,26 @@ testHostileInputs([
   ],
   ['silhouette', (x, y) => silhouette([x, y], labels(x)), 'missing'],
   ['groupValidity', (x, y) => groupValidity([x, y], labels(x))],
+  ['adjustedRandIndex', (a) => adjustedRandIndex(a.map(Math.round), labels(a))],
+  ['changedShare', (a) => changedShare(a.map(Math.round), labels(a))],
+  [
+    'bootstrapStability',
+    (x) =>
+      bootstrapStability({
+        labels: labels(x),
+        hole: tens(x),
+        regroup: halve(x),
+        seed: 1,
+        resamples: 5,
+      }),
+  ],
+  [
+    'consensus',
+    (x) => consensus({ hole: tens(x), regroup: halve(x), seed: 1, resamples: 5 }),
+    'missing',
+  ],
+  [
+    'cutTree',
+    (x, weights) => cutTree(hierarchicalTree({ columns: [x], linkage: 'average' }), 3, weights),
+  ],
 ]);

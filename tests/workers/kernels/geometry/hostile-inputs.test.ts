@@ -1,20 +1,28 @@
 import { polesOfAlpha } from '#kernels/geometry/alpha-circle.ts';
-import { categoryCurve, depthSteps, depthsOf, gradeCurve } from '#kernels/geometry/depth-log.ts';
-import { directionOf, gridAzimuth, tangentOf } from '#kernels/geometry/directions.ts';
+import { categoryCurve, depthsOf, depthSteps, gradeCurve } from '#kernels/geometry/depth-log.ts';
+import { directionOf, gridAzimuth, tangentOf, wrapAzimuth } from '#kernels/geometry/directions.ts';
 import { faultDistanceBins } from '#kernels/geometry/fault-distance-bins.ts';
 import { faultPieces } from '#kernels/geometry/fault-pieces.ts';
 import { fractureMeasures, samplingWeight } from '#kernels/geometry/fracture-measures.ts';
 import { desurvey } from '#kernels/geometry/minimum-curvature.ts';
 import { nearestOnTriangle } from '#kernels/geometry/nearest-on-triangle.ts';
-import { coreFromPlane, lineFromCore, planeFromCore } from '#kernels/geometry/oriented-core.ts';
+import {
+  coreFromPlane,
+  gammaFromLine,
+  lineFromCore,
+  planeFromCore,
+} from '#kernels/geometry/oriented-core.ts';
 import {
   lineOf,
   lineVector,
   planeNormal,
   planeOf,
+  planeOfPole,
+  poleOf,
+  strikeOf,
   upwardNormal,
 } from '#kernels/geometry/planes.ts';
-import { positionsAtDepths } from '#kernels/geometry/position-at-depth.ts';
+import { positionAtDepth, positionsAtDepths } from '#kernels/geometry/position-at-depth.ts';
 import { distancesToSurface } from '#kernels/geometry/surface-distance.ts';
 import { piecesOfLeg, traceHole } from '#kernels/geometry/trace.ts';
 import { prepareSurface } from '#kernels/geometry/triangulated-surface.ts';
@@ -124,4 +132,10 @@ testHostileInputs([
     },
   ],
   ['thicknessOnCore', each((alpha) => thicknessOnCore(10, alpha))],
+  ['wrapAzimuth', each(wrapAzimuth)],
+  ['gammaFromLine', vectors((line) => gammaFromLine(hole, { alpha: 40, beta: 40 }, line))],
+  ['poleOf', each((dip) => poleOf({ dip, dipDirection: dip }))],
+  ['planeOfPole', each((plunge) => planeOfPole({ plunge, trend: plunge }))],
+  ['strikeOf', each((dipDirection) => strikeOf({ dip: 30, dipDirection }))],
+  ['positionAtDepth', each((depthM) => positionAtDepth(path, depthM))],
 ]);

@@ -1,3 +1,5 @@
+import { linearDiscriminant } from '#kernels/classification/linear-discriminant.ts';
+import { nearestNeighbours } from '#kernels/classification/nearest-neighbours.ts';
 import { codeLikeness } from '#kernels/logging/code-likeness.ts';
 import { mapCodes } from '#kernels/logging/code-mapping.ts';
 import { centreDistances, codeSpace, standardisedDistances } from '#kernels/logging/code-space.ts';
@@ -7,8 +9,6 @@ import { consolidationTree } from '#kernels/logging/consolidation-tree.ts';
 import { suspectMislogging } from '#kernels/logging/mislogging.ts';
 import { nestedVariance } from '#kernels/logging/nested-variance.ts';
 import { rareCodes } from '#kernels/logging/rare-codes.ts';
-import { linearDiscriminant } from '#kernels/classification/linear-discriminant.ts';
-import { nearestNeighbours } from '#kernels/classification/nearest-neighbours.ts';
 import { codesOf, halves, metresOf, testHostileInputs } from '#tests/support/hostile-inputs.ts';
 
 const few = { seed: 1, draws: 19 };

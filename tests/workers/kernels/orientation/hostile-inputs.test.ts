@@ -1,8 +1,9 @@
 import { scaledBesselI0 } from '#kernels/orientation/bessel.ts';
-import { binghamFit } from '#kernels/orientation/bingham.ts';
 import { binghamMoments } from '#kernels/orientation/bingham-moments.ts';
+import { binghamFit } from '#kernels/orientation/bingham.ts';
 import { blindGrid, blindZone } from '#kernels/orientation/blind-zone.ts';
 import { besselRatio, circularSummary, vonMisesKappa } from '#kernels/orientation/circular.ts';
+import { densityBeyondRim } from '#kernels/orientation/density-beyond-rim.ts';
 import { countingCircle, densityGrid } from '#kernels/orientation/density-grid.ts';
 import { axialUniformity, directionalUniformity, fabric } from '#kernels/orientation/fabric.ts';
 import { fisherKappa, fisherMean } from '#kernels/orientation/fisher.ts';
@@ -103,4 +104,8 @@ testHostileInputs([
   ['strikeRose', (strikes) => strikeRose(strikes)],
   ['strengthTest', ofVectors((vectors) => strengthTest(vectors, { seed: 1, draws: 99 }))],
   ['flipToAxis', ofVectors((vectors) => flipToAxis(vectors, [0, 0, 1]))],
+  [
+    'densityBeyondRim',
+    ofVectors((v) => densityBeyondRim(densityGrid(v, 'equal-area', { size: 9 }), 'equal-area')),
+  ],
 ]);

@@ -1,8 +1,13 @@
-import { readBlanks, blankLimit } from '#kernels/quality/blanks.ts';
+import { blankLimit, readBlanks } from '#kernels/quality/blanks.ts';
+import { bootstrapInterval } from '#kernels/quality/bootstrap.ts';
 import { densityCoverage, densityLine } from '#kernels/quality/density-coverage.ts';
 import { drift } from '#kernels/quality/drift.ts';
-import { duplicatePrecision } from '#kernels/quality/duplicate-precision.ts';
+import {
+  duplicatePrecision,
+  halfRelativeDifference,
+} from '#kernels/quality/duplicate-precision.ts';
 import { compareMethods } from '#kernels/quality/method-comparison.ts';
+import { usablePairs } from '#kernels/quality/pairs.ts';
 import { passingBablok } from '#kernels/quality/passing-bablok.ts';
 import { compareQuantiles } from '#kernels/quality/quantile-comparison.ts';
 import { recoveryAgainstGrade, spearmanTest } from '#kernels/quality/recovery.ts';
@@ -14,7 +19,12 @@ import {
   withSiteSd,
 } from '#kernels/quality/reference-material.ts';
 import { logitOfRatio, solubleRatio } from '#kernels/quality/soluble-ratio.ts';
-import { precisionControl, thompsonHowarth } from '#kernels/quality/thompson-howarth.ts';
+import {
+  binomialTail,
+  precisionAt,
+  precisionControl,
+  thompsonHowarth,
+} from '#kernels/quality/thompson-howarth.ts';
 import { valuesOnIntervals } from '#kernels/quality/values-on-intervals.ts';
 import { halves, testHostileInputs } from '#tests/support/hostile-inputs.ts';
 
@@ -72,4 +82,19 @@ testHostileInputs([
       ),
     'missing',
   ],
+  [
+    'bootstrapInterval',
+    (values) => bootstrapInterval(values.length, (rows) => values[rows[0]!]!, { seed, draws: 19 }),
+  ],
+  [
+    'bootstrapInterval, rows',
+    (v) => Array.from(v, (n) => bootstrapInterval(n, () => 1, { seed, draws: 19 })),
+  ],
+  [
+    'halfRelativeDifference',
+    (a, b) => Array.from(a, (value, i) => halfRelativeDifference(value, b[i]!)),
+  ],
+  ['usablePairs', (a, b) => usablePairs(a, b)],
+  ['binomialTail', (v) => Array.from(v, (p) => binomialTail(9, 4, p / 7))],
+  ['precisionAt', (v) => Array.from(v, (x) => precisionAt({ s0: 0.1, k: 0.05 }, x))],
 ]);

@@ -1,4 +1,5 @@
-import { association, entropy } from '#kernels/tables/association.ts';
+import { association, entropy, strengthInWords } from '#kernels/tables/association.ts';
+import { campaignCheck } from '#kernels/tables/campaign-check.ts';
 import { chiSquareTest, residualSignificance } from '#kernels/tables/chi-square.ts';
 import { codeRuns } from '#kernels/tables/code-runs.ts';
 import { correctedInformation } from '#kernels/tables/corrected-information.ts';
@@ -6,6 +7,7 @@ import { crossTabulate } from '#kernels/tables/cross-tabulation.ts';
 import { domainSplitReport } from '#kernels/tables/domain-split-report.ts';
 import { energyDistance, energyTest } from '#kernels/tables/energy-distance.ts';
 import { groupValues } from '#kernels/tables/grouped-values.ts';
+import { holeShiftTest } from '#kernels/tables/hole-shift.ts';
 import { kolmogorovSmirnovPairs } from '#kernels/tables/kolmogorov-smirnov.ts';
 import { lengthWeightedCounts } from '#kernels/tables/length-weighted-counts.ts';
 import { marginsOf, rowShares } from '#kernels/tables/margins.ts';
@@ -89,4 +91,15 @@ testHostileInputs([
   ['fTail', each((x) => fTail(x, 3, 4))],
   ['studentTwoSided', each((x) => studentTwoSided(x, 4))],
   ['kolmogorovTail', each(kolmogorovTail)],
+  ['campaignCheck', (column) => campaignCheck(codesOf(column, 3), codesOf(column, 2))],
+  ['strengthInWords', (values) => Array.from(values, strengthInWords)],
+  [
+    'holeShiftTest',
+    (values) =>
+      holeShiftTest(
+        halves(values),
+        (source) => Float64Array.of(values[source[0]!]! - values[1]!),
+        few,
+      ),
+  ],
 ]);
