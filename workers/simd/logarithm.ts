@@ -12,12 +12,19 @@ const THIRD: f64 = 1.0 / 3.0;
 const FIFTH: f64 = 1.0 / 5.0;
 const SIXTH: f64 = 1.0 / 6.0;
 
+/** Place in the table of the cell of a normal number. */
+// @ts-ignore: decorator
+@inline
+function cellOf(bits: u64): usize {
+  return LOG_TABLE + (usize(bits >> 41) & 0x7f0);
+}
+
 /** ln x of a normal number > 0; `raised` powers of two are taken off again. */
 // @ts-ignore: decorator
 @inline
 function lnNormal(x: f64, raised: f64): f64 {
   const bits = reinterpret<u64>(x);
-  const cell = LOG_TABLE + (usize(bits >> 41) & 0x7f0);
+  const cell = cellOf(bits);
   const inverse = load<f64>(cell);
   const r = reinterpret<f64>((bits & FRACTION) | FIRST_POWER) * inverse - 1.0;
   const tail = r * r * (0.5 - r * (THIRD - r * (0.25 - r * (FIFTH - r * SIXTH))));
@@ -31,13 +38,12 @@ export function lnOne(x: f64): f64 {
   return reinterpret<u64>(x) >> 52 == 0 ? lnNormal(x * RAISE, 54.0) : lnNormal(x, 0.0);
 }
 
-/** ln of two normal numbers > 0, the way of `lnNormal` in both lanes. */
+/** ln of two normal numbers > 0, the way of `lnNormal` in both lanes; their cells are at `a` and `b`. */
 // @ts-ignore: decorator
 @inline
-function lnTwo(bits: v128, field: v128): v128 {
-  const cells = v128.and(i64x2.shr_u(bits, 41), i64x2.splat(0x7f0));
-  const a = v128.load(LOG_TABLE + usize(i64x2.extract_lane(cells, 0)));
-  const b = v128.load(LOG_TABLE + usize(i64x2.extract_lane(cells, 1)));
+function lnTwo(bits: v128, field: v128, cellA: usize, cellB: usize): v128 {
+  const a = v128.load(cellA);
+  const b = v128.load(cellB);
   const inverse = v128.shuffle<f64>(a, b, 0, 2);
   const ofCentre = v128.shuffle<f64>(a, b, 1, 3);
   const fraction = v128.or(v128.and(bits, i64x2.splat(FRACTION)), i64x2.splat(FIRST_POWER));
@@ -56,7 +62,7 @@ function lnTwo(bits: v128, field: v128): v128 {
 // @ts-ignore: decorator
 @inline
 export function lnTwoNormal(x: v128): v128 {
-  return lnTwo(x, i64x2.shr_u(x, 52));
+  return lnTwo(x, i64x2.shr_u(x, 52), cellOf(i64x2.extract_lane(x, 0)), cellOf(i64x2.extract_lane(x, 1)));
 }
 
 /** Replaces `count` values by their logarithms less `shift`; the place of one without a logarithm, or -1. */
@@ -77,7 +83,8 @@ function lnLessOf(x: usize, count: i32, shift: f64): i32 {
       }
       continue;
     }
-    v128.store(at, f64x2.sub(lnTwo(bits, field), less));
+    const ln = lnTwo(bits, field, cellOf(load<u64>(at)), cellOf(load<u64>(at, 8)));
+    v128.store(at, f64x2.sub(ln, less));
   }
   if (i < count) {
     const at = x + (usize(i) << 3);

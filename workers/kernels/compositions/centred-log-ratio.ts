@@ -1,5 +1,5 @@
 import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
-import { requireParts } from './require-parts.ts';
+import { notPositive, requireShape } from './require-parts.ts';
 
 /** Values worked on at a time: they stay in the first-level cache. */
 const BLOCK_VALUES = 4096;
@@ -17,7 +17,7 @@ const BLOCK_VALUES = 4096;
  * @see Aitchison (1986), The Statistical Analysis of Compositional Data, Chapman & Hall.
  */
 export function centredLogRatio(parts: Float64Array, nCols: number): Float64Array {
-  const nRows = requireParts(parts, nCols);
+  const nRows = requireShape(parts, nCols);
   const out = new Float64Array(parts.length);
   const step = Math.max(1, Math.floor(BLOCK_VALUES / nCols));
   withLab(f64Bytes(step * nCols, 1), (lab) => {
@@ -25,7 +25,8 @@ export function centredLogRatio(parts: Float64Array, nCols: number): Float64Arra
     for (let row = 0; row < nRows; row += step) {
       const [from, to] = [row * nCols, Math.min(row + step, nRows) * nCols];
       block.set(parts.subarray(from, to));
-      lab.math.lnLess(block, 0, to - from, 1, noShift);
+      const bad = lab.math.lnLess(block, 0, to - from, 1, noShift);
+      if (bad >= 0) throw notPositive(parts[from + bad]!, row + Math.floor(bad / nCols), bad % nCols);
       lab.math.centreRows(block, (to - from) / nCols, nCols);
       out.set(block.subarray(0, to - from), from);
     }

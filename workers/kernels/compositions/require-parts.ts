@@ -7,14 +7,25 @@ import { KernelError } from '#kernels/kernel-error.ts';
  * @throws {KernelError} `shape`; `not-positive` with { row, col } at the first bad value.
  */
 export function requireParts(parts: Float64Array, nCols: number): number {
-  if (!(nCols >= 2) || !Number.isInteger(nCols) || parts.length % nCols !== 0) {
-    throw new KernelError('shape', `${parts.length} values do not fill rows of ${nCols} parts`);
-  }
+  const nRows = requireShape(parts, nCols);
   for (let i = 0; i < parts.length; i++) {
     const value = parts[i]!;
     if (!(value > 0 && value < Infinity)) {
       throw notPositive(value, Math.floor(i / nCols), i % nCols);
     }
+  }
+  return nRows;
+}
+
+/**
+ * Checks that a row-major table has whole rows of at least two parts.
+ *
+ * @returns Number of rows.
+ * @throws {KernelError} `shape`.
+ */
+export function requireShape(parts: Float64Array, nCols: number): number {
+  if (!(nCols >= 2) || !Number.isInteger(nCols) || parts.length % nCols !== 0) {
+    throw new KernelError('shape', `${parts.length} values do not fill rows of ${nCols} parts`);
   }
   return parts.length / nCols;
 }
