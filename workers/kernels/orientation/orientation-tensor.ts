@@ -17,6 +17,9 @@ export interface OrientationTensor {
   axes: [Vector, Vector, Vector];
 }
 
+/** Entries under this share of the trace are 0: the decomposition fails on denormal numbers. */
+const NEGLIGIBLE = 1e-30;
+
 /**
  * Orientation tensor of axes or directions with its eigenvalues and principal axes.
  *
@@ -50,12 +53,13 @@ export function orientationTensor(
     total += weight;
     squares += weight * weight;
   });
-  const sums = new Matrix([
-    [xx, xy, xz],
-    [xy, yy, yz],
-    [xz, yz, zz],
+  const mean = (sum: number) => (Math.abs(sum) < NEGLIGIBLE * total ? 0 : sum / total);
+  const tensor = new Matrix([
+    [xx, xy, xz].map(mean),
+    [xy, yy, yz].map(mean),
+    [xz, yz, zz].map(mean),
   ]);
-  return { n, nEffective: (total * total) / squares, ...principal(sums.div(total)) };
+  return { n, nEffective: (total * total) / squares, ...principal(tensor) };
 }
 
 function principal(tensor: Matrix): Pick<OrientationTensor, 'tensor' | 'eigenvalues' | 'axes'> {

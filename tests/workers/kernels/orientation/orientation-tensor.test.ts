@@ -62,6 +62,15 @@ describe('tensor', () => {
   });
 });
 
+it.each([0, 5e-324, 1e-310, 1e-160, 1e-20])('axes off one line by %d stay on it', (off) => {
+  const { eigenvalues, axes } = orientationTensor(
+    Float64Array.of(1, off, 2 * off, -1, 3 * off, off, 1, -off, 5 * off),
+  );
+  expect(eigenvalues[0]).toBeCloseTo(1, 12);
+  expect(eigenvalues[1] + eigenvalues[2]).toBeCloseTo(0, 12);
+  expect(Math.abs(axes[0][0])).toBeCloseTo(1, 12);
+});
+
 describe('signs', () => {
   it('flips steep poles together: |sum| .069799 becomes 1.998782 (88 to 090 and 88 to 270)', () => {
     const [c, s] = [Math.cos((88 * Math.PI) / 180), Math.sin((88 * Math.PI) / 180)];
