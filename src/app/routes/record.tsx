@@ -3,7 +3,7 @@ import { PageHead } from '#src/components/layout/page-head.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
 import { auditQuery } from '#src/features/record/api/record-queries.ts';
 import { AuditPlate } from '#src/features/record/components/audit-plate.tsx';
-import { formatCount, formatHash } from '#src/lib/format.ts';
+import { countOf, formatCount, formatHash } from '#src/lib/format.ts';
 import { useDepositId } from '#src/lib/use-deposit.ts';
 
 export function RecordPage() {
@@ -13,7 +13,7 @@ export function RecordPage() {
     chain &&
     (chain.holds ? (
       <>
-        Each entry seals the one before it. {formatCount(chain.entries)} entries hold; the last is{' '}
+        Each entry seals the one before it. {countOf(chain.entries, 'entry', 'entries')} {chain.entries === 1 ? 'holds' : 'hold'}; the last is{' '}
         <span className="font-mono text-[0.9em]">{formatHash(chain.head)}</span>.
       </>
     ) : (

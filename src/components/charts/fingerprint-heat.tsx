@@ -24,6 +24,8 @@ const ROW_PX = 17;
 const LEGEND_PX = 24;
 /** A column narrower than this cannot be read: the least telling elements give way. */
 const LEAST_COLUMN_PX = 11;
+/** Names lean over columns at least so wide; over narrower ones they stand. */
+const UPRIGHT_BELOW_PX = 14;
 
 /** Step 1 to 9 of the diverging scale; 5 holds the centre, 1 and 9 lie beyond `reach`. */
 export function divergingStep(value: number, reach: number): number {
@@ -75,7 +77,8 @@ export function FingerprintHeat(props: FingerprintProps) {
         const note = cols.length < elements.length ? `${cols.length} of ${elements.length} analytes, those that part the groups most` : null;
         const legendPx = note === null ? LEGEND_PX : LEGEND_PX + 15;
         const isSteep = widestHead > width - 2;
-        const head = isSteep ? Math.ceil(widestHead * 0.82) + 10 : 20;
+        const turn = !isSteep ? 0 : width < UPRIGHT_BELOW_PX ? 90 : 60;
+        const head = turn === 0 ? 20 : Math.ceil(widestHead * (turn === 90 ? 1 : 0.82)) + 10;
         const height = Math.max(12, Math.min(26, (box.height - head - legendPx) / Math.max(1, groups.length)));
         const cell = { width, height };
         return (
@@ -86,7 +89,7 @@ export function FingerprintHeat(props: FingerprintProps) {
                 x={left + (place + 0.5) * cell.width}
                 width={cell.width}
                 height={head}
-                isSteep={isSteep}
+                turn={turn}
                 name={elements[col] ?? ''}
                 isSorted={byElement === col}
                 onSort={() => setByElement(byElement === col ? null : col)}
@@ -144,13 +147,14 @@ interface HeadProps {
   x: number;
   width: number;
   height: number;
-  isSteep: boolean;
+  /** Degrees the name is turned by, from level. */
+  turn: 0 | 60 | 90;
   name: string;
   isSorted: boolean;
   onSort: () => void;
 }
 
-function ColumnHead({ x, width, height, isSteep, name, isSorted, onSort }: HeadProps) {
+function ColumnHead({ x, width, height, turn, name, isSorted, onSort }: HeadProps) {
   return (
     <g
       role="button"
@@ -168,8 +172,8 @@ function ColumnHead({ x, width, height, isSteep, name, isSorted, onSort }: HeadP
     >
       <rect x={x - width / 2} y={0} width={width} height={height - 2} fill="transparent" />
       <text
-        transform={isSteep ? `translate(${x + 4} ${height - 5}) rotate(-60)` : `translate(${x} 13)`}
-        textAnchor={isSteep ? 'start' : 'middle'}
+        transform={turn === 0 ? `translate(${x} 13)` : `translate(${x + 4} ${height - 5}) rotate(-${turn})`}
+        textAnchor={turn === 0 ? 'middle' : 'start'}
         style={{ ...tickText, ...(isSorted ? { fill: 'var(--ink)', fontWeight: 600 } : {}) }}
       >
         {name}

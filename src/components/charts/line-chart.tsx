@@ -1,6 +1,6 @@
 import { plotArea, XAxis, YAxis, ZeroLine } from './axes.tsx';
 import { markPath } from './category-marks.tsx';
-import { axisTitle, halo, TICK_PX, type } from './chart-styles.ts';
+import { axisTitle, halo, LABEL_PX, TICK_PX, type } from './chart-styles.ts';
 import { ChartFrame } from './chart-frame.tsx';
 import type { Box, ChartBasics, PlotArea, ScaleKind, Tick } from './chart-types.ts';
 import { lineLabels } from './line-labels.ts';
@@ -46,6 +46,10 @@ const DASHES = [undefined, '5 3', '1.5 3', '8 3 1.5 3'];
 const MARK_SLOTS = [1, 2, 3, 4];
 const STROKES = ['var(--ink)', 'var(--ink-2)', 'var(--ink-2)', 'var(--ink-3)'];
 const PANEL_GAP = 14;
+/** Room above a panel for its name, where that is too long to stand on the line. */
+const HEAD_PX = 14;
+/** Share of the width a name on the line may take. */
+const LONG_NAME = 0.6;
 
 /** Lines over one x axis, in panels one under the other. */
 export function LineChart(props: LineChartProps) {
@@ -77,8 +81,10 @@ function Drawing({ box, props }: { box: Box; props: LineChartProps }) {
     return { panel, domain, ticks: linearTicks(domain, { lengthPx: (box.height - 60) / panels.length, vertical: true, most: panels.length > 1 ? 4 : 6 }) };
   });
   const yLabel = panels.some((panel) => panel.yLabel !== undefined) ? 'y' : undefined;
-  const whole = plotArea({ ...box, yTicks: rows.flatMap(({ ticks }) => ticks), xLabel, ...(yLabel === undefined ? {} : { yLabel }), top: 10 });
-  const height = (whole.height - PANEL_GAP * (panels.length - 1)) / panels.length;
+  const isHeaded = panels.length > 1 && panels.every(({ series }) => series.length === 1) && panels.some(({ series }) => textWidth(series[0]?.label ?? '', LABEL_PX) > LONG_NAME * (box.width - 50));
+  const [top, gap] = isHeaded ? [10 + HEAD_PX, PANEL_GAP + HEAD_PX] : [10, PANEL_GAP];
+  const whole = plotArea({ ...box, yTicks: rows.flatMap(({ ticks }) => ticks), xLabel, ...(yLabel === undefined ? {} : { yLabel }), top });
+  const height = (whole.height - gap * (panels.length - 1)) / panels.length;
   const x = (value: number) => whole.left + toShare(value, xKind, xDomain) * whole.width;
   const step = xs.length > 1 ? Math.min(...xs.slice(1).map((value, i) => x(value) - x(xs[i] ?? value))) : 30;
   const xTicks = xTicksOf(xs, xDomain, xKind, wholeX, whole.width);
@@ -90,7 +96,7 @@ function Drawing({ box, props }: { box: Box; props: LineChartProps }) {
       )}
       <XAxis area={whole} ticks={xTicks.map((tick) => ({ ...tick }))} at={x} grid={false} label={xLabel} />
       {rows.map(({ panel, domain, ticks }, index) => (
-        <Panel key={index} panel={panel} ticks={ticks} domain={domain} x={x} area={{ ...whole, top: whole.top + index * (height + PANEL_GAP), height }} />
+        <Panel key={index} panel={panel} ticks={ticks} domain={domain} x={x} area={{ ...whole, top: whole.top + index * (height + gap), height }} isHeaded={isHeaded} />
       ))}
       {chosen !== undefined && chosen !== null && <ChosenTick x={x(chosen)} y={whole.top + whole.height + 15} label={String(chosen)} />}
       {onChoose !== undefined && (
@@ -124,15 +130,17 @@ interface PanelProps {
   ticks: readonly Tick[];
   area: PlotArea;
   x: (value: number) => number;
+  /** Its one name stands above it, not on the line. */
+  isHeaded: boolean;
 }
 
-function Panel({ panel, domain, ticks, area, x }: PanelProps) {
+function Panel({ panel, domain, ticks, area, x, isHeaded }: PanelProps) {
   const y = (value: number) => area.top + (1 - toShare(value, 'linear', domain)) * area.height;
   const drawn = panel.series.map(({ label, points }) => ({
     label,
     points: points.filter((point) => Number.isFinite(point.y)).map((point) => ({ ...point, px: x(point.x), py: y(point.y) })),
   }));
-  const labels = lineLabels(drawn, { x: area.left, y: area.top - 8, width: area.width + 12, height: area.height + 8 });
+  const labels = isHeaded ? [] : lineLabels(drawn, { x: area.left, y: area.top - 8, width: area.width + 12, height: area.height + 8 });
   return (
     <g>
       <YAxis area={area} ticks={ticks} at={y} {...(panel.yLabel === undefined ? {} : { label: panel.yLabel })} line={false} />
@@ -158,6 +166,11 @@ function Panel({ panel, domain, ticks, area, x }: PanelProps) {
           <path d={points.map(({ px, py }) => markPath(MARK_SLOTS[index % MARK_SLOTS.length] ?? 1, 2.3, px, py)).join('')} fill={STROKES[index % STROKES.length]} />
         </g>
       ))}
+      {isHeaded && (
+        <text x={area.left} y={area.top - 8} style={{ ...axisTitle, fill: 'var(--ink)', ...halo }}>
+          {panel.series[0]?.label}
+        </text>
+      )}
       {labels.map(({ id, x: lx, y: ly }) => (
         <text key={id} x={lx} y={ly} dy="0.35em" textAnchor="middle" style={{ ...axisTitle, fill: 'var(--ink)', ...halo }}>
           {id}

@@ -32,7 +32,11 @@ export function ScatterRule({ xName, yName, categories, onRule }: Props) {
     const [xFrom, xTo, yFrom, yTo] = [limits.xFrom, limits.xTo, limits.yFrom, limits.yTo].map(readLimit);
     if (xFrom === undefined || xTo === undefined || yFrom === undefined || yTo === undefined) {
       const wrong = Object.values(limits).find((text) => readLimit(text) === undefined);
-      setError(`Expected a number for each limit, or nothing; found "${wrong ?? ''}".`);
+      setError(`Expected a number for each limit, or nothing; found “${wrong ?? ''}”.`);
+      return;
+    }
+    if ([xFrom, xTo, yFrom, yTo].every((bound) => bound === null) && category === '') {
+      setError(`Write at least one limit${categories.length > 0 ? ', or choose a group' : ''}.`);
       return;
     }
     setError(null);

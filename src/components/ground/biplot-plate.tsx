@@ -3,6 +3,7 @@ import { ChevronsUpDown } from 'lucide-react';
 import { useMemo, type ReactNode } from 'react';
 import type { ComponentRun } from '#contract/components.ts';
 import { columnQuery } from '#src/lib/columns.ts';
+import { cx } from '#src/lib/cx.ts';
 import { formatFigures, formatShare } from '#src/lib/format.ts';
 import type { Frame } from '#src/lib/frame.ts';
 import { hoverRow, useHoveredRow, useSelection } from '#src/lib/selection.ts';
@@ -73,7 +74,7 @@ export function BiplotPlate(props: Props) {
       })}
       help={BIPLOT_HELP}
       caption={whole}
-      className={props.className ?? ''}
+      className={cx(props.className, view.tool === 'rule' && 'lg:min-h-[31rem]')}
     >
       {x.data && y.data ? (
         <Scatter

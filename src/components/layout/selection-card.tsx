@@ -23,20 +23,31 @@ export function SelectionCard({ count, unit, detail, onClear, children, actions 
     <CardSlot>
       <aside
         aria-label="Selection"
-        className="flex h-full flex-col gap-2.5 overflow-auto border-rule bg-sheet px-3.5 py-3 max-lg:max-h-[40dvh] max-lg:border-t lg:w-64 lg:border-l"
+        className="flex h-full flex-col border-rule bg-sheet max-lg:max-h-[40dvh] max-lg:border-t lg:w-64 lg:border-l"
       >
-        <div className="flex items-center gap-2">
-          <h2 className="flex-1 text-head">Selection</h2>
-          <IconButton icon={X} label="Clear the selection" onClick={onClear} />
+        <div
+          role="group"
+          aria-label="What is selected, scrolls"
+          tabIndex={0}
+          className="grid min-h-0 flex-1 content-start gap-2.5 overflow-auto px-3.5 py-3"
+        >
+          <div className="flex items-center gap-2">
+            <h2 className="flex-1 text-head">Selection</h2>
+            <IconButton icon={X} label="Clear the selection" onClick={onClear} />
+          </div>
+          <div aria-live="polite">
+            <p>
+              <span className="font-read text-big">{formatCount(count)}</span> {unit}
+            </p>
+            <p className="text-body text-ink-3">{detail}</p>
+          </div>
+          {children}
         </div>
-        <div aria-live="polite">
-          <p>
-            <span className="font-read text-big">{formatCount(count)}</span> {unit}
-          </p>
-          <p className="text-body text-ink-3">{detail}</p>
-        </div>
-        {children}
-        {actions && <div className="mt-auto grid gap-1.5">{actions}</div>}
+        {actions && (
+          <div className="grid flex-none gap-1.5 border-t border-rule px-3.5 py-2.5 empty:hidden">
+            {actions}
+          </div>
+        )}
       </aside>
     </CardSlot>
   );

@@ -9,7 +9,7 @@ import type { DepthWindow } from '../charts/depth-window.ts';
 import type { RockKeyEntry } from '../charts/rock-patterns.tsx';
 import { fitText } from '../charts/text-width.ts';
 import { chosenRuns } from './interval-walk.ts';
-import { DomainCodes, TroughTracks } from './trough-tracks.tsx';
+import { DomainCodes, RockCodes, TroughTracks } from './trough-tracks.tsx';
 import { LABELS_PX, TROUGH_GAP_PX } from './trough-layout.ts';
 import type { TroughLayout } from './trough-layout.ts';
 import type { TrayHole } from './tray-types.ts';
@@ -62,6 +62,7 @@ export function TrayTrough(props: Props) {
           <rect x={along(0) - 4} y={0.5} width={Math.max(1, along(hole.lengthM) - along(0) + 8)} height={layout.height - 1} rx={3} fill="var(--trough)" stroke="var(--trough-deep)" />
           <TroughTracks hole={hole} layout={layout} along={along} window={own} rockKey={props.rockKey} highestGrade={props.highestGrade} prefix={props.prefix} />
           <Blocks along={along} window={own} lengthPx={lengthPx} lengthM={hole.lengthM} height={layout.height} />
+          <RockCodes rock={hole.rock} rockKey={props.rockKey} layout={layout} along={along} window={own} />
           <DomainCodes intervals={hole.intervals} layout={layout} along={along} window={own} />
           <Chosen runs={selectedRows === undefined ? [] : chosenRuns(hole.intervals, (row) => isPicked(selectedRows, row))} along={along} height={layout.height} />
           {drag !== null && <DragWash drag={drag} along={along} height={layout.height} />}

@@ -60,16 +60,7 @@ function RockTrack({ rock, rockKey, top, height, along, prefix }: Band & { rock:
       {joined(rock, (a, b) => a.code === b.code).map(({ fromM, toM, code }) => {
         const pattern = rockKey.find((entry) => entry.code === code)?.pattern ?? null;
         const width = Math.max(0.4, along(toM) - along(fromM));
-        return (
-          <g key={fromM}>
-            <rect x={along(fromM)} y={top} width={width} height={height} fill={rockFill(pattern, prefix)} stroke="var(--rock-mark)" strokeWidth={0.6} />
-            {pattern === null && width > textWidth(code, TICK_PX, 'mono') + 6 && (
-              <text x={along(fromM) + 4} y={top + height / 2} dy="0.36em" style={{ ...codeText, fontWeight: 400, fill: 'var(--ink-2)' }}>
-                {code}
-              </text>
-            )}
-          </g>
-        );
+        return <rect key={fromM} x={along(fromM)} y={top} width={width} height={height} fill={rockFill(pattern, prefix)} stroke="var(--rock-mark)" strokeWidth={0.6} />;
       })}
     </g>
   );
@@ -120,6 +111,26 @@ interface CodesProps {
   along: Along;
   window: DepthWindow;
 }
+
+/** Codes of rocks without a pattern, where they fit in the part on show; above the blocks so that none is cut. */
+export const RockCodes = memo(function RockCodes({ rock, rockKey, layout, along, window }: Omit<CodesProps, 'intervals'> & { rock: readonly RockInterval[]; rockKey: readonly RockKeyEntry[] }) {
+  const track = layout.tracks.find(({ name }) => name === 'rock');
+  if (track === undefined) return null;
+  const plain = new Set(rockKey.flatMap(({ code, pattern }) => (pattern === null ? [code] : [])));
+  return (
+    <g>
+      {joined(rock.filter((interval) => inWindow(interval, window)), (a, b) => a.code === b.code).map(({ fromM, toM, code }) => {
+        const from = along(Math.max(fromM, window[0]));
+        if (!plain.has(code) || along(Math.min(toM, window[1])) - from < textWidth(code, TICK_PX, 'mono') + 6) return null;
+        return (
+          <text key={fromM} x={from + 4} y={track.top + track.height / 2} dy="0.36em" style={{ ...codeText, fontWeight: 400, fill: 'var(--ink-2)', paintOrder: 'stroke', stroke: 'var(--rock-ground)', strokeWidth: 3 }}>
+            {code}
+          </text>
+        );
+      })}
+    </g>
+  );
+});
 
 /** Codes of domains, where they fit in the part on show; above the blocks so that none is cut. */
 export const DomainCodes = memo(function DomainCodes({ intervals, layout, along, window }: CodesProps) {

@@ -11,7 +11,7 @@ import { WindowButton } from '#src/components/tray/window-button.tsx';
 import { figureExports } from '#src/components/ui/figure-exports.ts';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { Select } from '#src/components/ui/select.tsx';
-import { countOf, formatDepth, formatMetres } from '#src/lib/format.ts';
+import { countOf, formatDepth, formatFigures, formatMetres } from '#src/lib/format.ts';
 import { stripIntervals, stripStructures, weatheringOrder } from '../hole-strip-data.ts';
 
 interface Props {
@@ -41,7 +41,9 @@ export function CorePlate({ hole, rockCodes, analyte, unit, onAnalyte, depth, on
   const fit = fitWindow([hole]);
   const [from, to] = depth;
   const window: DepthWindow = from !== undefined && to !== undefined && to > from ? clampWindow([from, to], fit) : fit;
-  const caption = `${countOf(hole.assays.length, 'assayed interval')}, ${formatMetres(hole.assayedM)} of ${formatMetres(hole.lengthM)} · grade on a root scale · dashed structures: poor confidence`;
+  const most = Math.max(0, ...intervals.map(({ grade }) => grade ?? 0));
+  const scale = most > 0 ? ` from 0 to ${formatFigures(most)} ${unit}` : '';
+  const caption = `${countOf(hole.assays.length, 'assayed interval')}, ${formatMetres(hole.assayedM)} of ${formatMetres(hole.lengthM)} · ${analyte} on a root scale${scale} · dashed structures: poor confidence`;
   const table = () => ({
     columns: ['From, m', 'To, m', `${analyte}, ${unit}`],
     rows: intervals.map(({ fromM, toM, grade }) => [fromM, toM, grade]),

@@ -8,7 +8,7 @@ import { Run } from '#src/components/ui/run.tsx';
 import type { Column } from '#src/components/ui/table/column.ts';
 import { Table } from '#src/components/ui/table/table.tsx';
 import { tableExports } from '#src/components/ui/table/table-tools.tsx';
-import { countOf, formatCount, formatFigures, formatShare, MISSING } from '#src/lib/format.ts';
+import { countOf, formatCount, formatFigures, formatShare, MISSING, THIN_SPACE } from '#src/lib/format.ts';
 
 interface Props {
   analytes: readonly AnalyteSummary[];
@@ -37,14 +37,14 @@ const reasonsOf = ({ reason, caution }: AnalyteSummary): string => [reason, caut
 function columnsFor(chosen: ReadonlySet<string>, toggle: (analyte: string) => void): Column<AnalyteSummary>[] {
   return [
     { header: 'Take', isControl: true, isSortable: false, widthRem: 3, cell: ({ analyte }) => <Checkbox label={`Take ${analyte}`} isLabelHidden checked={chosen.has(analyte)} onChange={() => toggle(analyte)} /> },
-    { header: 'Analyte', rowHeader: true, widthRem: 5, cell: ({ analyte }) => analyte },
+    { header: 'Analyte', rowHeader: true, widthRem: 4, cell: ({ analyte }) => analyte },
     { header: 'Advice', widthRem: 7, isWhole: true, value: ({ decision }) => DECISIONS[decision].word, cell: ({ decision }) => <Chip tone={DECISIONS[decision].tone}>{DECISIONS[decision].word}</Chip> },
     { header: 'Below detection', widthRem: 9, value: ({ belowShare }) => belowShare, cell: (row) => <BelowRun {...row} /> },
     { header: 'Missing', align: 'right', widthRem: 5, value: ({ missingShare }) => missingShare, cell: ({ missingShare }) => formatShare(missingShare) },
     {
       header: 'Limits',
       unit: 'ppm',
-      widthRem: 7,
+      widthRem: 5.5,
       value: ({ limitsPpm }) => limitsPpm.map(({ limit }) => limit).join(' '),
       cell: ({ limitsPpm }) => <span title={limitsPpm.map(({ limit, count }) => `${formatFigures(limit, 2)} ppm in ${countOf(count, 'row')}`).join(', ')}>{limitsPpm.length === 0 ? MISSING : limitsPpm.slice(0, 3).map(({ limit }) => formatFigures(limit, 2)).join(', ')}</span>,
     },
@@ -64,12 +64,15 @@ function BelowRun({ analyte, belowShare }: AnalyteSummary) {
   );
 }
 
+/** A number and its unit stay on one line. */
+const unbroken = (text: string): string => text.replaceAll(/(\d) (?=%|ppm)/g, `$1${THIN_SPACE}`);
+
 /** The reason, with a mark where the digestion asks for care. */
 function Because(row: AnalyteSummary) {
   return (
     <span className="block min-w-56 text-caption text-ink-2">
-      {row.reason}
-      {row.caution !== null && <span className="text-warn">; {row.caution}</span>}
+      {unbroken(row.reason)}
+      {row.caution !== null && <span className="text-warn">; {unbroken(row.caution)}</span>}
     </span>
   );
 }

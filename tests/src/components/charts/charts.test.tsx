@@ -50,6 +50,15 @@ describe('fingerprints', () => {
   });
 });
 
+it('stacked lines with long names carry them above their panels', () => {
+  const points = [{ x: 2, y: 10 }, { x: 3, y: 30 }];
+  const panels = [{ series: [{ label: 'silhouette', points }] }, { series: [{ label: 'a criterion with a name longer than its narrow panel is wide, which nobody could write on the line itself without crossing it', points }] }];
+  render(<LineChart {...words} panels={panels} xLabel="groups" />);
+  const names = [screen.getByText('silhouette'), screen.getByText(/^a criterion/)];
+  expect(new Set(names.map((name) => name.getAttribute('x'))).size).toBe(1);
+  expect(names.every((name) => name.getAttribute('text-anchor') === null)).toBe(true);
+});
+
 describe('distributions', () => {
   const values = [0.1, 0.2, 0.3, 0.9, 1.1, 1.4];
   const components = [{ label: 'A', share: 0.5, mean: -1.6, sd: 0.4 }, { label: 'B', share: 0.5, mean: 0.1, sd: 0.3 }];

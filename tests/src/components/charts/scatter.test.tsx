@@ -47,9 +47,12 @@ describe('a scatter', () => {
   it('takes points by typed limits, and says what is no number', async () => {
     const onSelect = vi.fn();
     render(<Scatter {...base} tool="rule" onSelect={onSelect} />);
+    await userEvent.click(screen.getByRole('button', { name: 'Take points' }));
+    expect(screen.getByRole('alert')).toHaveTextContent('Write at least one limit, or choose a group.');
+    expect(onSelect).not.toHaveBeenCalled();
     await userEvent.type(screen.getByLabelText('PC1 from'), 'five');
     await userEvent.click(screen.getByRole('button', { name: 'Take points' }));
-    expect(screen.getByRole('alert')).toHaveTextContent('Expected a number for each limit, or nothing; found "five".');
+    expect(screen.getByRole('alert')).toHaveTextContent('Expected a number for each limit, or nothing; found “five”.');
     await userEvent.clear(screen.getByLabelText('PC1 from'));
     await userEvent.type(screen.getByLabelText('PC1 from'), '5');
     await userEvent.click(screen.getByRole('button', { name: 'Take points' }));
