@@ -7,10 +7,12 @@ import { groupsBench } from './groups.ts';
 import { importBench } from './import.ts';
 import { importDelayBench } from './import-delay.ts';
 import { dipBench, mixturesBench } from './populations.ts';
+import { threadsBench } from './threads.ts';
 
 /** Every bench of the project by name: a file adds its maker here. */
 const BENCHES: Readonly<Record<string, () => Bench | Promise<Bench>>> = {
   'column-store': columnStoreBench,
+  threads: threadsBench,
   'components-package': componentsBench,
   'components-numpy': componentsNumpyBench,
   clr: clrBench,

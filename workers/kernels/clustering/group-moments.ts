@@ -35,14 +35,14 @@ export function groupedPoints(columns: readonly Float64Array[], labels: Labels):
   }
   const labelOfRow = (i: number) => labels[packed.rowOf ? packed.rowOf[i]! : i]!;
   const { labelOf, groupOf } = compactLabels(labels);
-  const points = new Float64Array(packed.n * p);
+  const { points } = packed; // labelled rows move forward in place
   const group = new Uint16Array(packed.n);
   let n = 0;
   for (let i = 0; i < packed.n; i++) {
     const label = labelOfRow(i);
     if (label === 0) continue;
     group[n] = groupOf[label]!;
-    for (let j = 0; j < p; j++) points[n * p + j] = packed.points[i * p + j]!;
+    if (n < i) points.copyWithin(n * p, i * p, (i + 1) * p);
     n += 1;
   }
   if (n === 0) throw new KernelError('too-few-rows', 'no complete row has a label');

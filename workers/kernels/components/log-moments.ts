@@ -153,8 +153,13 @@ function momentsOfChunk(
   return moments;
 }
 
-/** Covariance (n - 1) of ln x, row-major. */
+/**
+ * Covariance (n - 1) of ln x, row-major.
+ *
+ * @throws {KernelError} `too-few-rows` under two rows.
+ */
 export function logCovariance({ cross, nRows }: LogMoments): Float64Array {
+  if (nRows < 2) throw new KernelError('too-few-rows', `expected at least 2 rows, found ${nRows}`, { found: nRows });
   return cross.map((value) => value / (nRows - 1));
 }
 

@@ -25,7 +25,7 @@ const PAGE = 65_536;
 /** The tables of `workers/simd/memory.ts`. */
 const TABLE_BYTES = 4096;
 /** Larger memories are given back to the system rather than kept for the next work. */
-const KEPT_BYTES = 2 ** 26;
+const KEPT_BYTES = 2 ** 27;
 
 /** Bytes of arrays of doubles of these lengths in a lab. */
 export const f64Bytes = (...lengths: number[]): number =>
