@@ -97,6 +97,7 @@ export function lloydOf(
 /** Bytes of a lab for k groups of n rows of p coordinates. */
 export function groupBytes(n: number, k: number, p: number): number {
   const centreValues = k * evenStride(p);
+  // Leads and labels, a byte each; centres with their padded copy; sums; mass, counts and slack.
   return f64Bytes(n, n / 8, 2 * centreValues, centreValues, k, k, k);
 }
 

@@ -1,3 +1,4 @@
+import { KernelError } from '#kernels/kernel-error.ts';
 import { plainMath } from './plain-math.ts';
 import { simdMath } from './simd-math.ts';
 import { SIMD_BINARY } from './simd-binary.ts';
@@ -24,6 +25,8 @@ const ALIGNMENT = 16;
 const PAGE = 65_536;
 /** The tables of `workers/simd/memory.ts`. */
 const TABLE_BYTES = 4096;
+/** A WebAssembly memory ends here; a page is left over. */
+const LARGEST_BYTES = 2 ** 32 - 2 * PAGE;
 /** Larger memories are given back to the system rather than kept for the next work. */
 const KEPT_BYTES = 2 ** 27;
 
@@ -38,21 +41,34 @@ export function copyInto(lab: Lab, values: Float64Array): Float64Array {
   return copy;
 }
 
-const module = WebAssembly.validate(SIMD_BINARY) ? new WebAssembly.Module(SIMD_BINARY) : null;
+const loops = WebAssembly.validate(SIMD_BINARY) ? new WebAssembly.Module(SIMD_BINARY) : null;
 const spare: OwnedLab[] = [];
 
 /**
  * Does work with a lab that has room for `bytes`. Labs of a thread are used again; nested work gets
  * another one.
+ *
+ * @throws {KernelError} `too-large` beyond the 4 GiB one memory can have.
  */
 export function withLab<T>(bytes: number, work: (lab: Lab) => T): T {
-  const lab = spare.pop() ?? (module ? simdLab(module) : plainLab());
+  if (bytes > LARGEST_BYTES) {
+    const message = `expected work that fits in 4 GiB, found ${Math.ceil(bytes / 2 ** 30)} GiB; use fewer rows or columns`;
+    throw new KernelError('too-large', message, { bytes });
+  }
+  const lab = spareFor(bytes) ?? (loops ? simdLab(loops) : plainLab());
   lab.clear(bytes);
   try {
     return work(lab);
   } finally {
-    if (lab.size <= KEPT_BYTES) spare.push(lab);
+    if (lab.size <= KEPT_BYTES) spare.unshift(lab);
   }
+}
+
+/** Takes the smallest spare lab that is large enough, or else the largest, so that few ever grow. */
+function spareFor(bytes: number): OwnedLab | undefined {
+  spare.sort((a, b) => a.size - b.size);
+  const fit = spare.findIndex(({ size }) => size >= TABLE_BYTES + bytes);
+  return spare.splice(fit < 0 ? spare.length - 1 : fit, 1)[0];
 }
 
 /** A lab of ordinary arrays, for machines without SIMD and for tests of agreement. */
@@ -69,7 +85,7 @@ export function plainLab(): OwnedLab {
 
 /** A lab in a WebAssembly memory of its own; null where the machine has no SIMD. */
 export function newSimdLab(): OwnedLab | null {
-  return module && simdLab(module);
+  return loops && simdLab(loops);
 }
 
 function simdLab(compiled: WebAssembly.Module): OwnedLab {
@@ -78,6 +94,8 @@ function simdLab(compiled: WebAssembly.Module): OwnedLab {
   new Float64Array(memory.buffer).set(LOG_TABLE);
   new Float64Array(memory.buffer).set(EXP_TABLE, LOG_TABLE.length);
   let next = TABLE_BYTES;
+  /** End of what may not be zero. */
+  let used = TABLE_BYTES;
   const take = (bytes: number): number => {
     const at = next;
     next += ALIGNMENT * Math.ceil(bytes / ALIGNMENT);
@@ -89,9 +107,11 @@ function simdLab(compiled: WebAssembly.Module): OwnedLab {
       return memory.buffer.byteLength;
     },
     clear(bytes) {
-      new Uint8Array(memory.buffer, TABLE_BYTES, next - TABLE_BYTES).fill(0);
+      const end = TABLE_BYTES + bytes;
+      new Uint8Array(memory.buffer).fill(0, TABLE_BYTES, Math.min(end, used));
       next = TABLE_BYTES;
-      const missing = TABLE_BYTES + bytes - memory.buffer.byteLength;
+      used = Math.max(end, used);
+      const missing = end - memory.buffer.byteLength;
       if (missing > 0) memory.grow(Math.ceil(missing / PAGE));
     },
     f64: (length) => new Float64Array(memory.buffer, take(8 * length), length),

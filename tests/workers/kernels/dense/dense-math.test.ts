@@ -3,7 +3,7 @@ import { describe, expect, it } from 'vitest';
 import {
   NO_LABEL, SORT_COUNTS, type DenseMath, type MixtureRoom, type RowGroups, type RowTable,
 } from '#kernels/dense/dense-math.ts';
-import { newSimdLab, plainLab, type Lab } from '#kernels/dense/lab.ts';
+import { newSimdLab, plainLab, withLab, type Lab } from '#kernels/dense/lab.ts';
 import { lnByTable } from '#kernels/dense/plain-logarithm.ts';
 import { seededRandom } from '#kernels/random.ts';
 
@@ -225,9 +225,26 @@ describe('a lab', () => {
 
   it('gives zeros again after it was used', () => {
     const lab = newSimdLab()!;
-    lab.clear(4096);
-    lab.f64(100).fill(7);
-    lab.clear(200_000);
-    expect(lab.f64(20_000).every((value) => value === 0)).toBe(true);
+    lab.clear(160_000);
+    lab.f64(20_000).fill(7);
+    for (const length of [100, 20_000, 40_000]) {
+      lab.clear(8 * length);
+      expect(lab.f64(length).every((value) => value === 0)).toBe(true);
+    }
+  });
+
+  it('is another one for work within work, and the same again after it', () => {
+    const bufferOf = (lab: Lab): boolean => lab.f64(10).buffer === first;
+    const first = withLab(1000, (outer) => {
+      const array = outer.f64(10).fill(1);
+      withLab(1000, (inner) => inner.f64(10).fill(2));
+      expect(array.every((value) => value === 1)).toBe(true);
+      return array.buffer;
+    });
+    expect([withLab(1000, bufferOf), withLab(1000, bufferOf)]).toEqual([true, true]);
+  });
+
+  it('refuses more than one memory can hold', () => {
+    expect(() => withLab(2 ** 33, () => 0)).toThrow(expect.objectContaining({ code: 'too-large' }));
   });
 });
