@@ -1,5 +1,6 @@
 import * as z from 'zod';
 import type { Role } from './roles.ts';
+import './wording.ts';
 
 /**
  * Who may call an endpoint. `deposit` lists roles on the deposit named by `params.depositId`; a

@@ -6,7 +6,7 @@ import { JobStarted } from './jobs.ts';
 import { ANY_MEMBER, GEOMET_ANALYSTS } from './roles.ts';
 
 /** A limit in the unit people think in; compared in ppm. */
-export const Limit = z.strictObject({ analyte: Analyte, limit: z.number().positive(), unit: GradeUnit });
+export const Limit = z.strictObject({ analyte: Analyte, limit: z.number().positive('expected a limit above 0'), unit: GradeUnit });
 export type Limit = z.infer<typeof Limit>;
 
 export const ZoneRules = z.strictObject({

@@ -103,11 +103,17 @@ const BUG = new AppError(
   'Something went wrong on our side; nothing you sent was wrong. Quote the request id when you report it.',
 );
 
+/** What a status means to a person; others go by their standard name. */
+const TITLES: Record<number, string> = {
+  400: 'Not as expected', 401: 'Not signed in', 403: 'Not allowed', 404: 'Not found', 409: 'Something stands in the way', 412: 'Changed in the meantime', 413: 'Too large',
+  422: 'Cannot be read', 428: 'Not as expected', 429: 'Too many at once', 500: 'Something went wrong', 503: 'Not ready', 507: 'No room left',
+};
+
 export function sendProblem(res: Response, failure: AppError, requestId: string): void {
   const { fields, currentVersion, retryAfterS } = failure.extras;
   const problem: Problem = {
     type: `/problems/${failure.code}`,
-    title: STATUS_CODES[failure.status] ?? 'Error',
+    title: TITLES[failure.status] ?? STATUS_CODES[failure.status] ?? 'Error',
     status: failure.status,
     code: failure.code,
     detail: failure.message,

@@ -100,6 +100,7 @@ export function createDomains({ db, clock, jobs, record, snapshots }: AnalysisDe
       await transact(db, async (trx) => {
         checkBody({ code: row.code, name: row.name, rationale: row.rationale, slot: row.slot, groupLabels: labelsOf(row) }, grouping, await domainsRepository(trx).standing(depositId), domainId);
         await domainsRepository(trx).update(domainId, { deleted_at: null, updated_at: clock().toISOString(), version: row.version + 1 });
+        await evidenceRepository(trx).carryOver(domainId, row.version - 1, row.version + 1);
         await record.add(trx, { actor, depositId, action: 'domain.restored', subject: `domain ${domainId}`, sentence: `${actor.name} restored candidate domain ${row.code}` });
       });
       return get(depositId, domainId);

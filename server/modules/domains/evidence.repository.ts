@@ -25,6 +25,8 @@ export function evidenceRepository(db: Knex) {
       const result = EvidenceResult.parse(JSON.parse(row.result));
       return { ...result, snapshotId: row.snapshot_id, snapshotNumber: row.snapshot_number, createdAt: row.created_at, isStale: evidenceIsStale };
     },
+    /** Evidence of one version stands for another that is the same but for its number. */
+    carryOver: (domainId: number, from: number, to: number) => db<EvidenceRow>('domain_evidence').where({ domain_id: domainId, domain_version: from }).update({ domain_version: to }),
     put: (row: EvidenceRow) => db<EvidenceRow>('domain_evidence').insert(row).onConflict('domain_id').merge(),
   };
 }

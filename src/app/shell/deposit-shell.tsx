@@ -87,6 +87,13 @@ function useStageCommands(depositId: number, keysInOrder: string): void {
       return [
         ...stages,
         {
+          id: 'holes',
+          label: 'Holes',
+          group: 'Stages',
+          words: ['collar', 'survey', 'plan', 'core'],
+          run: () => void navigate(`/deposits/${depositId}/holes`),
+        },
+        {
           id: 'members',
           label: 'People and tokens',
           group: 'Stages',

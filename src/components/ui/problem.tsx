@@ -65,8 +65,9 @@ interface Description {
 
 function describe(error: unknown): Description {
   if (error instanceof ApiProblem) {
-    const { title, detail, fields = [], requestId } = error.problem;
-    return { title, detail: detail === title ? '' : detail, fields, requestId };
+    const { title, detail, fields = [], requestId, status } = error.problem;
+    // The number helps to find a fault of ours; a refusal needs none.
+    return { title, detail: detail === title ? '' : detail, fields, requestId: status >= 500 ? requestId : '' };
   }
   const detail = error instanceof Error ? error.message : String(error);
   return { title: 'This could not be done', detail, fields: [], requestId: '' };

@@ -2,7 +2,7 @@ import { beforeAll, describe, expect, test } from 'vitest';
 import { getCodeSet, listCodeSets, makeCodes, verifyCodes } from '#contract/codes.ts';
 import { getComponentRun, startComponents } from '#contract/components.ts';
 import { getOverview, listStages } from '#contract/deposits.ts';
-import { createDomain, gatherEvidence, getEvidence, listDomains, UNASSIGNED } from '#contract/domains.ts';
+import { createDomain, deleteDomain, gatherEvidence, getEvidence, listDomains, restoreDomain, UNASSIGNED } from '#contract/domains.ts';
 import { getZoneRules, listZoneRuns, listZones, saveZoneRules, startZones } from '#contract/geomet.ts';
 import { getGrouping, listSweeps, startGrouping, startSweep } from '#contract/groupings.ts';
 import { listUploads } from '#contract/files.ts';
@@ -121,6 +121,15 @@ describe('JO-01 from tables to codes by a program with a token of its own', { ti
     const evidence = await api.call(getEvidence, { params: { domainId } });
     expect(evidence).toMatchObject({ domainId, intervals: smallest?.intervals, isStale: false });
     expect(evidence?.populations.some(({ role, variable }) => role === 'domain' && variable === 'Cu')).toBe(true);
+  });
+
+  test('a domain taken back and restored is as it was, its evidence with it', async () => {
+    const before = (await api.call(listDomains)).domains.find(({ hasEvidence }) => hasEvidence);
+    const params = { domainId: before?.id ?? 0 };
+    await api.call(deleteDomain, { params, headers: { 'If-Match': `"${before?.version}"` } });
+    expect((await api.call(listDomains)).domains.map(({ id }) => id)).not.toContain(before?.id);
+    const after = await api.call(restoreDomain, { params });
+    expect(after).toMatchObject({ code: before?.code, groupLabels: before?.groupLabels, hasEvidence: true, evidenceIsStale: false });
   });
 
   test('limits flag zones, each at least as long as asked', async () => {

@@ -46,7 +46,8 @@ export function useTakeBack(depositId: number) {
         await refresh();
       };
     },
-    onSuccess: refresh,
+    // Not waited for: its own page is left before the list is read again without it.
+    onSuccess: () => void refresh(),
   });
 }
 

@@ -8,6 +8,7 @@ import { Field } from '#src/components/ui/field.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
 import { Select } from '#src/components/ui/select.tsx';
+import { cx } from '#src/lib/cx.ts';
 import { formatWhen } from '#src/lib/format-dates.ts';
 import { useDeposit, useRefusal } from '#src/lib/use-deposit.ts';
 import { useSaveRules } from '../api/geomet-queries.ts';
@@ -45,11 +46,11 @@ export function RulesPlate({ rules, snapshot }: Props) {
         <fieldset disabled={refusal !== undefined} className="grid gap-2">
           <legend className="mb-1 text-caption font-semibold text-ink-2">An interval is flagged at or over</legend>
           {fields.map((field, i) => (
-            <div key={field.id} className="grid grid-cols-[5.5rem_minmax(0,1fr)_5rem_auto] items-end gap-2">
+            <div key={field.id} className="grid grid-cols-[5.5rem_minmax(0,1fr)_5rem_auto] items-start gap-2">
               <Select label="Element" isLabelHidden={i > 0} options={analytes} {...register(`limits.${i}.analyte`)} />
               <Field label="Limit" isLabelHidden={i > 0} inputMode="decimal" error={errors.limits?.[i]?.limit} {...register(`limits.${i}.limit`, asNumber)} />
               <Select label="Unit" isLabelHidden={i > 0} options={UNITS} {...register(`limits.${i}.unit`)} />
-              <Button kind="bare" onClick={() => remove(i)} aria-label={`Remove the limit of ${field.analyte}`}>Remove</Button>
+              <div className={cx('flex h-8 items-center max-md:h-11', i === 0 && 'mt-[1.4rem]')}><Button kind="bare" onClick={() => remove(i)} aria-label={`Remove the limit of ${field.analyte}`}>Remove</Button></div>
             </div>
           ))}
           {fields.length === 0 && <p className="text-small text-ink-2">No limit yet. Add the elements that cost money in your concentrate, leach or tailings.</p>}

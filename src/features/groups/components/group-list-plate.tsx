@@ -1,8 +1,10 @@
+import { useQuery } from '@tanstack/react-query';
 import type { Grouping } from '#contract/groupings.ts';
 import { createDomain } from '#contract/domains.ts';
 import { Button, LinkButton } from '#src/components/ui/button.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { tableExports } from '#src/components/ui/table/table-tools.tsx';
+import { domainListQuery } from '#src/lib/analysis-queries.ts';
 import { countOf } from '#src/lib/format.ts';
 import { stagePath } from '#src/lib/stages.ts';
 import { useDeposit, useRefusal } from '#src/lib/use-deposit.ts';
@@ -46,7 +48,10 @@ export function GroupListPlate({ grouping, ticked, onTick, stale, caption }: Pro
 export function DomainLink({ grouping, labels, isWide = false }: { grouping: Grouping; labels: readonly number[]; isWide?: boolean }) {
   const deposit = useDeposit();
   const refusal = useRefusal(createDomain);
-  const reason = refusal ?? (grouping.isActive ? (labels.length === 0 ? 'Tick the groups it is made of first' : undefined) : 'Domains stand on another grouping: let them stand on this one first');
+  const { data: domains } = useQuery(domainListQuery(deposit.id));
+  const owner = domains?.domains.find(({ groupLabels }) => groupLabels.some((label) => labels.includes(label)));
+  const owned = grouping.groups.find(({ label }) => labels.includes(label) && owner?.groupLabels.includes(label) === true);
+  const reason = refusal ?? (owner && owned && grouping.isActive ? `${owned.name} is in ${owner.code} already` : undefined) ?? (grouping.isActive ? (labels.length === 0 ? 'Tick the groups it is made of first' : undefined) : 'Domains stand on another grouping: let them stand on this one first');
   if (reason !== undefined) {
     return (
       <Button size={isWide ? 'normal' : 'tiny'} isWide={isWide} unavailable={reason}>

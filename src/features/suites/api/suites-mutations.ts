@@ -2,7 +2,7 @@ import { useMutation, useQueryClient } from '@tanstack/react-query';
 import { createSuite, deleteSuite, updateSuite, type Suite, type SuiteBody } from '#contract/suites.ts';
 import { suitesQuery } from '#src/lib/analysis-queries.ts';
 import { call } from '#src/lib/api-client.ts';
-import { notify, notifyEdit, notifyProblem } from '#src/lib/toasts.ts';
+import { notifyEdit, notifyProblem } from '#src/lib/toasts.ts';
 
 export function useCreateSuite(depositId: number) {
   const queryClient = useQueryClient();
@@ -12,14 +12,18 @@ export function useCreateSuite(depositId: number) {
   });
 }
 
-/** Deletes a suite nothing stands on. Its row is gone by then, so the notice is given here. */
+/** Deletes a suite nothing stands on, with the way back. Its row is gone by then, so the notice is given here. */
 export function useDeleteSuite(depositId: number) {
   const queryClient = useQueryClient();
   return useMutation({
     mutationFn: ({ id, version }: Suite) =>
       call(deleteSuite, { params: { depositId, suiteId: id }, ifMatch: version }),
-    onSuccess: (_, { name }) => {
-      notify(`“${name}” deleted`);
+    onSuccess: (_, suite) => {
+      const undo = async () => {
+        await call(createSuite, { params: { depositId }, body: bodyOf(suite, suite.name) });
+        await queryClient.invalidateQueries({ queryKey: suitesQuery(depositId).queryKey });
+      };
+      notifyEdit({ label: `“${suite.name}” deleted`, undo });
       return queryClient.invalidateQueries({ queryKey: suitesQuery(depositId).queryKey });
     },
     onError: notifyProblem,
