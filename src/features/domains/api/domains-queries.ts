@@ -35,8 +35,8 @@ export function useUpdateDomain(depositId: number, domain: Domain) {
   });
 }
 
-/** Takes a domain back, and gives a way to put it there again. */
-export function useTakeBack(depositId: number) {
+/** Takes a domain back. `onTaken` gets the way to put it there again, even where its page has closed meanwhile. */
+export function useTakeBack(depositId: number, onTaken: (domain: Domain, undo: () => Promise<void>) => void) {
   const refresh = useRefreshDomains(depositId);
   return useMutation({
     mutationFn: async ({ id, version }: Domain) => {
@@ -46,8 +46,10 @@ export function useTakeBack(depositId: number) {
         await refresh();
       };
     },
-    // Not waited for: its own page is left before the list is read again without it.
-    onSuccess: () => void refresh(),
+    onSuccess: (undo, domain) => {
+      onTaken(domain, undo);
+      return refresh();
+    },
   });
 }
 

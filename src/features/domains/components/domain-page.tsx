@@ -6,7 +6,7 @@ import { deleteDomain, gatherEvidence, updateDomain, type Domain, type DomainBod
 import type { Grouping } from '#contract/groupings.ts';
 import { CategoryMark } from '#src/components/charts/category-marks.tsx';
 import { PageHead } from '#src/components/layout/page-head.tsx';
-import { Button } from '#src/components/ui/button.tsx';
+import { Button, LinkButton } from '#src/components/ui/button.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
 import { Empty } from '#src/components/ui/empty.tsx';
 import { Skeleton } from '#src/components/ui/loading.tsx';
@@ -32,7 +32,11 @@ export function DomainPage({ domainId }: { domainId: number }) {
   if (!list.data || !groupings.data) return <Skeleton lines={10} />;
   const domain = list.data.domains.find(({ id }) => id === domainId);
   const grouping = groupings.data.find(({ id }) => id === domain?.groupingId);
-  if (!domain || !grouping) throw new Absent();
+  if (!domain || !grouping) {
+    // Its evidence was read here: it has been there, and was taken back meanwhile.
+    if (evidence.data !== undefined) return <TakenBack />;
+    throw new Absent();
+  }
   return <DomainView domain={domain} list={list.data} grouping={grouping} evidence={evidence.data ?? null} isRead={evidence.data !== undefined} />;
 }
 
@@ -53,15 +57,15 @@ function DomainView({ domain, list, grouping, evidence, isRead }: ViewProps) {
   const [jobId, setJobId] = useState<number | null>(null);
   const { job, isRunning } = useJob(depositId, jobId);
   const gather = useGatherEvidence(depositId);
-  const takeBack = useTakeBack(depositId);
+  const takeBack = useTakeBack(depositId, ({ code }, undo) => {
+    notifyEdit({ label: `${code} taken back; its intervals are unassigned`, undo });
+    void navigate(`/deposits/${depositId}/domains`);
+  });
   const mayEdit = useRefusal(updateDomain);
   const mayDelete = useRefusal(deleteDomain);
   const mayGather = useRefusal(gatherEvidence);
   const run = (): void => gather.mutate([domain.id], { onSuccess: (answer) => setJobId(answer.job.id), onError: notifyProblem });
-  const remove = (): void => takeBack.mutate(domain, {
-    onSuccess: (undo) => { notifyEdit({ label: `${domain.code} taken back; its intervals are unassigned`, undo }); void navigate(`/deposits/${depositId}/domains`); },
-    onError: notifyProblem,
-  });
+  const remove = (): void => takeBack.mutate(domain, { onError: notifyProblem });
   const busy = isRunning ? { progress: job?.progress ?? null, phase: job?.phase ?? 'waiting its turn' } : null;
   const needsTest = evidence === null || evidence.isStale;
   return (
@@ -87,6 +91,16 @@ function DomainView({ domain, list, grouping, evidence, isRead }: ViewProps) {
         {!isRead && <Skeleton lines={8} />}
         {evidence && <EvidencePlates evidence={evidence} domain={domain} />}
       </div>
+    </>
+  );
+}
+
+function TakenBack() {
+  const depositId = useDepositId();
+  return (
+    <>
+      <PageHead title="Domain" />
+      <Plate title="Taken back" empty={<Empty action={<LinkButton to={`/deposits/${depositId}/domains`}>All domains</LinkButton>}>This domain has been taken back; its intervals are unassigned.</Empty>} />
     </>
   );
 }

@@ -27,6 +27,8 @@ interface Props {
   subset: Subset;
   variable: string;
   values: SubsetValues | null;
+  /** Its snapshot is the current one, so that its values can be read. */
+  isDrawn: boolean;
   view: CellView;
   onView: (view: CellView) => void;
 }
@@ -45,7 +47,7 @@ function captionOf(cell: CellDetail, { snapshotNumber, support }: Screen): strin
 }
 
 /** One cell of the matrix drawn large, with the reasons of its verdict. */
-export function CellPlate({ screen, subset, variable, values, view, onView }: Props) {
+export function CellPlate({ screen, subset, variable, values, isDrawn, view, onView }: Props) {
   const { id: depositId, payAnalytes } = useDeposit();
   const { data: cell, error, refetch } = useQuery(cellQuery(depositId, screen.id, subset.key, variable));
   const chartRef = useRef<ChartHandle>(null);
@@ -69,9 +71,9 @@ export function CellPlate({ screen, subset, variable, values, view, onView }: Pr
       onRetry={() => void refetch()}
       exports={exports}
     >
-      {!cell || !grades ? <Skeleton lines={9} /> : (
+      {!cell || (!grades && isDrawn) ? <Skeleton lines={9} /> : (
         <>
-          <CellDrawing cell={cell} grades={grades} weights={values?.weights ?? null} belowShare={values?.belowShare ?? 0} slot={subset.slot} unit={unit} view={view} title={title} chartRef={chartRef} />
+          {grades ? <CellDrawing cell={cell} grades={grades} weights={values?.weights ?? null} belowShare={values?.belowShare ?? 0} slot={subset.slot} unit={unit} view={view} title={title} chartRef={chartRef} /> : <p className="py-6 text-center text-ink-2">The tables have changed since this screen ran: screen again to draw its cells.</p>}
           <Reasons cell={cell} unit={unit} />
         </>
       )}

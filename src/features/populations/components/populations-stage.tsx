@@ -4,7 +4,7 @@ import type { Grouping } from '#contract/groupings.ts';
 import type { Screen } from '#contract/screens.ts';
 import { VERDICT_HELP } from '#kernels/populations/verdict-power.ts';
 import { PageHead } from '#src/components/layout/page-head.tsx';
-import { LinkButton } from '#src/components/ui/button.tsx';
+import { Button, LinkButton } from '#src/components/ui/button.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
 import { Empty } from '#src/components/ui/empty.tsx';
 import { Skeleton } from '#src/components/ui/loading.tsx';
@@ -111,13 +111,10 @@ function ScreenPlates({ screen, groupings, busy }: PlatesProps) {
       </Plate>
       {cell && subset && (
         <div className="grid content-start gap-2">
-          <CellPlate screen={screen} subset={subset} variable={cell.variable} values={own ? values : null} view={view.plot} onView={(plot) => setView({ plot })} />
+          <CellPlate screen={screen} subset={subset} variable={cell.variable} values={own ? values : null} isDrawn={own !== null} view={view.plot} onView={(plot) => setView({ plot })} />
           {values && values.rows.length > 0 && (
-            <button type="button" className="justify-self-end text-small text-copper underline underline-offset-2" onClick={take}>
-              Mark these {formatCount(values.rows.length)} in the core
-            </button>
+            <div className="justify-self-end"><Button size="tiny" onClick={take}>Mark these {formatCount(values.rows.length)} in the core</Button></div>
           )}
-          {!own && <p className="text-small text-ink-2">The tables have changed since this screen ran: screen again to draw its cells.</p>}
         </div>
       )}
     </div>
