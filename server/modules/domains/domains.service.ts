@@ -54,7 +54,9 @@ export function createDomains({ db, clock, jobs, record, snapshots }: AnalysisDe
     get,
 
     async list(depositId: number): Promise<DomainList> {
-      const [grouping, domains, snapshot] = await Promise.all([groupings.active(depositId), repository.list(depositId, await snapshots.currentId(depositId)), snapshots.latest(depositId)]);
+      const [grouping, domains] = await Promise.all([groupings.active(depositId), repository.list(depositId, await snapshots.currentId(depositId))]);
+      // What the domains cover is counted in the tables they stand on, which may not be the newest.
+      const snapshot = await (grouping ? snapshots.find(depositId, grouping.snapshotId) : snapshots.latest(depositId));
       const total = totalsOf(grouping, snapshot);
       const coded = domains.reduce((sum, { intervals, metres }) => ({ intervals: sum.intervals + intervals, metres: sum.metres + metres }), { intervals: 0, metres: 0 });
       const unassigned = { intervals: total.intervals - coded.intervals, metres: Math.max(0, total.metres - coded.metres) };

@@ -5,7 +5,7 @@ import { getOverview, listStages } from '#contract/deposits.ts';
 import { createDomain, deleteDomain, gatherEvidence, getEvidence, listDomains, restoreDomain, UNASSIGNED } from '#contract/domains.ts';
 import { getZoneRules, listZoneRuns, listZones, saveZoneRules, startZones } from '#contract/geomet.ts';
 import { getGrouping, listSweeps, startGrouping, startSweep } from '#contract/groupings.ts';
-import { listUploads } from '#contract/files.ts';
+import { listRevisions, listUploads, useRevision as stepBack } from '#contract/files.ts';
 import { getScreen, getScreenCell, startScreen } from '#contract/screens.ts';
 import { createSuite } from '#contract/suites.ts';
 import { adjustedRandIndex } from '#kernels/clustering/agreement.ts';
@@ -184,5 +184,15 @@ describe('JO-01 from tables to codes by a program with a token of its own', { ti
     expect(metres.at(-1)?.metres).toBeCloseTo(coded.reduce((sum, { length_m }) => sum + Number(length_m), 0), 0);
     const stages = await api.call(listStages);
     expect(stages.filter(({ state }) => state === 'stale' || state === 'empty')).toEqual([]);
+  });
+
+  test('under an older table the domains turn stale, and are still counted in the tables they stand on', async () => {
+    const before = await api.call(listDomains);
+    const older = (await api.call(listRevisions)).find(({ kind, isCurrent }) => kind === 'assay' && !isCurrent);
+    await api.call(stepBack, { params: { revisionId: older?.id ?? 0 } });
+    expect((await api.snapshot()).rows).toBeLessThan(before.total.intervals);
+    const after = await api.call(listDomains);
+    expect(after.isStale).toBe(true);
+    expect([after.total, after.unassigned]).toEqual([before.total, before.unassigned]);
   });
 });
