@@ -27,6 +27,24 @@ export function readAssayCell(text: string, decimalMark: DecimalMark): AssayCell
   if (text === '') return NOT_ANALYSED;
   const number = plainNumber(text, decimalMark);
   if (number !== null && number > 0) return told(number, QUALIFIER.measured);
+  return remembered(decimalMark, text) ?? remember(decimalMark, text, readMarkedCell(text, decimalMark, number));
+}
+
+/** Marked cells of a table are few different ones, such as `<0.5`, many times over. */
+const MOST_REMEMBERED = 1000;
+const readBefore = { '.': new Map<string, AssayCell>(), ',': new Map<string, AssayCell>() };
+
+const remembered = (decimalMark: DecimalMark, text: string): AssayCell | undefined => readBefore[decimalMark].get(text);
+
+function remember(decimalMark: DecimalMark, text: string, cell: AssayCell): AssayCell {
+  const cells = readBefore[decimalMark];
+  if (cells.size >= MOST_REMEMBERED) cells.clear();
+  cells.set(text, cell);
+  return cell;
+}
+
+/** A cell that is no plain number > 0. */
+function readMarkedCell(text: string, decimalMark: DecimalMark, number: number | null): AssayCell {
   const cell = parseAssayCell(text, { decimalMark, columnLimit: LIMIT_TO_COME });
   switch (cell.censoring) {
     case 'none':

@@ -1,6 +1,7 @@
 import { GrowingBytes, GrowingCategory, GrowingNumbers } from './growable.ts';
 
-interface AssayDraft {
+/** Determinations of one analyte column while rows are read. */
+export interface AssayDraft {
   unit: string;
   method: string | null;
   values: GrowingNumbers;

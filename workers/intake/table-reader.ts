@@ -6,7 +6,8 @@ import { ColumnLimits, readAssayCell, type AssayCell } from './assay-cells.ts';
 import { planColumns, type AnalyteColumn, type ColumnPlan } from './column-plan.ts';
 import type { FoundProblem, ProblemList } from './problem-list.ts';
 import { checkRow, type CheckContext, type RowValues } from './row-checks.ts';
-import type { TableDraft } from './table-draft.ts';
+import type { GrowingCategory, GrowingNumbers } from './growable.ts';
+import type { AssayDraft, TableDraft } from './table-draft.ts';
 
 interface PendingCell {
   column: AnalyteColumn;
@@ -14,6 +15,15 @@ interface PendingCell {
   row: number;
   text: string;
   magnitude: number | null;
+}
+
+type Into<Column> = readonly { role: ColumnRole; column: Column }[];
+
+interface KeptColumns {
+  numbers: Into<GrowingNumbers>;
+  categories: Into<GrowingCategory>;
+  texts: Into<string[]>;
+  assays: readonly AssayDraft[];
 }
 
 type Teller = (column: string, code: string, message: string, severity: FoundProblem['severity'], value: string) => void;
@@ -42,6 +52,8 @@ export class TableReader implements RowValues {
   readonly #headers = new Map<ColumnRole, string>();
   /** Columns in which a line end is text: in the others it is no number anyway. */
   readonly #wordy: { index: number; header: string }[];
+  /** Where kept rows go, from the first one on. */
+  #kept: KeptColumns | null = null;
   /** Cells of the file's own header. */
   #headerWidth = Number.POSITIVE_INFINITY;
 
@@ -168,19 +180,33 @@ export class TableReader implements RowValues {
 
   #keep(row: number, cells: readonly string[]): void {
     const draft = this.#draft;
-    for (const { role } of this.plan.numbers) draft.numberColumn(columnName(role)).push(this.number(role));
-    for (const { role } of this.plan.categories) draft.categoryColumn(columnName(role)).push(this.text(role));
-    for (const { role } of this.plan.texts) draft.textColumn(columnName(role)).push(this.text(role));
-    this.plan.analytes.forEach((column, place) => {
+    const kept = (this.#kept ??= this.#keptColumns());
+    for (const { role, column } of kept.numbers) column.push(this.number(role));
+    for (const { role, column } of kept.categories) column.push(this.text(role));
+    for (const { role, column } of kept.texts) column.push(this.text(role));
+    for (let place = 0; place < kept.assays.length; place++) {
       const cell = this.#assays[place];
-      if (!cell || cell.kind === 'refused') return;
+      const column = this.plan.analytes[place];
+      const assay = kept.assays[place];
+      if (!cell || !column || !assay || cell.kind === 'refused') continue;
       this.limits[place]?.see(cell);
-      const { values, qualifiers } = draft.assayColumn(determinationName(column), column.unit, column.method);
       const isTold = cell.kind === 'told';
-      values.push(isTold ? cell.value * column.toPpm : Number.NaN);
-      qualifiers.push(isTold ? cell.qualifier : QUALIFIER.missing);
+      assay.values.push(isTold ? cell.value * column.toPpm : Number.NaN);
+      assay.qualifiers.push(isTold ? cell.qualifier : QUALIFIER.missing);
       if (!isTold) this.pending.push({ column, index: draft.rows, row, text: cells[column.index] ?? '', magnitude: cell.magnitude });
-    });
+    }
     draft.sourceRow.push(row);
+  }
+
+  /** The draft's columns in the order of the plan, looked up once: tables have millions of cells. */
+  #keptColumns(): KeptColumns {
+    const draft = this.#draft;
+    const { numbers, categories, texts, analytes } = this.plan;
+    return {
+      numbers: numbers.map(({ role }) => ({ role, column: draft.numberColumn(columnName(role)) })),
+      categories: categories.map(({ role }) => ({ role, column: draft.categoryColumn(columnName(role)) })),
+      texts: texts.map(({ role }) => ({ role, column: draft.textColumn(columnName(role)) })),
+      assays: analytes.map((column) => draft.assayColumn(determinationName(column), column.unit, column.method)),
+    };
   }
 }
