@@ -6,11 +6,13 @@ import { deleteDomain, gatherEvidence, updateDomain, type Domain, type DomainBod
 import type { Grouping } from '#contract/groupings.ts';
 import { CategoryMark } from '#src/components/charts/category-marks.tsx';
 import { PageHead } from '#src/components/layout/page-head.tsx';
+import { PageWait } from '#src/components/layout/page-wait.tsx';
 import { Button, LinkButton } from '#src/components/ui/button.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
 import { Empty } from '#src/components/ui/empty.tsx';
 import { Skeleton } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
+import { Problem } from '#src/components/ui/problem.tsx';
 import { Absent } from '#src/lib/absent.ts';
 import { domainListQuery, groupingsQuery } from '#src/lib/analysis-queries.ts';
 import { useJob } from '#src/lib/jobs.ts';
@@ -29,7 +31,7 @@ export function DomainPage({ domainId }: { domainId: number }) {
   const list = useQuery(domainListQuery(depositId));
   const groupings = useQuery(groupingsQuery(depositId));
   const evidence = useQuery(evidenceQuery(depositId, domainId));
-  if (!list.data || !groupings.data) return <Skeleton lines={10} />;
+  if (!list.data || !groupings.data) return <PageWait title="Domain" reads={[list, groupings]} />;
   const domain = list.data.domains.find(({ id }) => id === domainId);
   const grouping = groupings.data.find(({ id }) => id === domain?.groupingId);
   if (!domain || !grouping) {
@@ -37,7 +39,7 @@ export function DomainPage({ domainId }: { domainId: number }) {
     if (evidence.data !== undefined) return <TakenBack />;
     throw new Absent();
   }
-  return <DomainView domain={domain} list={list.data} grouping={grouping} evidence={evidence.data ?? null} isRead={evidence.data !== undefined} />;
+  return <DomainView domain={domain} list={list.data} grouping={grouping} evidence={evidence.data ?? null} isRead={evidence.data !== undefined} unread={evidence.data === undefined ? evidence.error : null} onRead={() => void evidence.refetch()} />;
 }
 
 interface ViewProps {
@@ -46,11 +48,14 @@ interface ViewProps {
   grouping: Grouping;
   evidence: DomainEvidence | null;
   isRead: boolean;
+  /** Why the evidence could not be read. */
+  unread: Error | null;
+  onRead: () => void;
 }
 
 const bodyOf = ({ code, name, rationale, slot, groupLabels }: Domain): DomainBody => ({ code, name, rationale, slot, groupLabels });
 
-function DomainView({ domain, list, grouping, evidence, isRead }: ViewProps) {
+function DomainView({ domain, list, grouping, evidence, isRead, unread, onRead }: ViewProps) {
   const depositId = useDepositId();
   const navigate = useNavigate();
   const [isEditing, setIsEditing] = useState(false);
@@ -88,7 +93,7 @@ function DomainView({ domain, list, grouping, evidence, isRead }: ViewProps) {
         {isEditing && <EditPlate domain={domain} list={list} grouping={grouping} onDone={() => setIsEditing(false)} />}
         {!evidence && <WhyPlate domain={domain} evidence={null} />}
         {!evidence && isRead && <Plate title="Evidence" busy={busy} empty={<Empty action={<Button kind="main" unavailable={mayGather} onClick={run}>Gather evidence</Button>}>Nothing is tested yet: how it splits by rock, weathering and faults, how its structures lie, and whether its grades are one population.</Empty>} />}
-        {!isRead && <Skeleton lines={8} />}
+        {unread ? <Problem error={unread} action={{ label: 'Try again', run: onRead }} /> : !isRead && <Skeleton lines={8} />}
         {evidence && <EvidencePlates evidence={evidence} domain={domain} />}
       </div>
     </>

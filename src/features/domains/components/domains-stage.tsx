@@ -4,10 +4,10 @@ import { useState } from 'react';
 import { createDomain, gatherEvidence, type Domain, type DomainList } from '#contract/domains.ts';
 import type { Grouping } from '#contract/groupings.ts';
 import { PageHead } from '#src/components/layout/page-head.tsx';
+import { PageWait } from '#src/components/layout/page-wait.tsx';
 import { Button, LinkButton } from '#src/components/ui/button.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
 import { Empty } from '#src/components/ui/empty.tsx';
-import { Skeleton } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { domainListQuery, groupingsQuery } from '#src/lib/analysis-queries.ts';
 import { countOf, formatMetres } from '#src/lib/format.ts';
@@ -41,7 +41,7 @@ export function DomainsStage() {
   const mayCreate = useRefusal(createDomain);
   const mayGather = useRefusal(gatherEvidence);
   const grouping = groupings.data?.find(({ isActive }) => isActive) ?? null;
-  if (!list.data || !groupings.data) return <><PageHead title="Domains" /><Skeleton lines={8} /></>;
+  if (!list.data || !groupings.data) return <PageWait title="Domains" reads={[list, groupings]} />;
 
   const { domains } = list.data;
   const isAllTaken = grouping !== null && grouping.groups.every(({ label }) => domains.some(({ groupLabels }) => groupLabels.includes(label)));

@@ -4,10 +4,10 @@ import type { Grouping } from '#contract/groupings.ts';
 import type { Screen } from '#contract/screens.ts';
 import { VERDICT_HELP } from '#kernels/populations/verdict-power.ts';
 import { PageHead } from '#src/components/layout/page-head.tsx';
+import { PageWait } from '#src/components/layout/page-wait.tsx';
 import { Button, LinkButton } from '#src/components/ui/button.tsx';
 import { Chip } from '#src/components/ui/chip.tsx';
 import { Empty } from '#src/components/ui/empty.tsx';
-import { Skeleton } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import type { Column } from '#src/components/ui/table/column.ts';
 import { tableExports } from '#src/components/ui/table/table-tools.tsx';
@@ -62,7 +62,7 @@ export function PopulationsStage() {
   const usable = groupings.find(({ isActive, isStale }) => isActive && !isStale) ?? null;
   const busy = isRunning ? { progress: job?.progress ?? null, phase: job?.phase ?? 'waiting its turn' } : null;
 
-  if (!snapshotAnswer.data || !screens.data) return <><PageHead title="Populations" /><Skeleton lines={8} /></>;
+  if (!snapshotAnswer.data || !screens.data) return <PageWait title="Populations" reads={[snapshotAnswer, screens]} />;
   const panel = snapshot && <ScreenPanel snapshot={snapshot} grouping={usable} started={setJobId} isRunning={isRunning} hasScreen={screen !== null} lastVariables={screen?.variables ?? []} />;
   return (
     <>
