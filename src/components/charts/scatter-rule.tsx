@@ -63,7 +63,7 @@ export function ScatterRule({ xName, yName, categories, onRule }: Props) {
       {categories.length > 0 && (
         <label className="flex items-center gap-1">
           in
-          <select className={FIELD} value={category} onChange={(event) => setCategory(event.target.value)}>
+          <select className={`${FIELD} chevron pr-7`} value={category} onChange={(event) => setCategory(event.target.value)}>
             <option value="">all groups</option>
             {categories.map(({ label }, index) => (
               <option key={index} value={index}>

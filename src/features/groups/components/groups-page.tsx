@@ -10,6 +10,7 @@ import { Loading } from '#src/components/ui/loading.tsx';
 import { Plate } from '#src/components/ui/plate.tsx';
 import { Problem } from '#src/components/ui/problem.tsx';
 import { componentRunsQuery, sweepsQuery } from '#src/lib/analysis-queries.ts';
+import { cx } from '#src/lib/cx.ts';
 import { useJobOfKind } from '#src/lib/job-of-kind.ts';
 import { stagePath } from '#src/lib/stages.ts';
 import { useUrlState } from '#src/lib/url-state.ts';
@@ -65,7 +66,7 @@ export function GroupsPage({ onHole }: Props) {
   if (grouping === null || run === null || runs.data === undefined) {
     return (
       <Framed actions={actions}>
-        <div className="grid gap-3 lg:grid-cols-2">
+        <div className={cx('grid gap-3', (sweep !== null || sweeping !== null) && 'lg:grid-cols-2')}>
           <Plate title="Groups" busy={running}>
             <NoGroups hasRuns={(runs.data ?? []).length > 0} />
           </Plate>
