@@ -54,15 +54,14 @@ export async function groupBy(page: Page, k: number): Promise<void> {
 /** Accepts every group as a candidate domain of its own; the number of domains made. */
 export async function acceptEachGroup(page: Page): Promise<number> {
   for (let made = 0; ; made++) {
-    await page.getByRole('button', { name: 'Accept groups' }).click();
+    const accept = page.getByRole('button', { name: 'Accept groups' });
+    await accept.waitFor();
+    // Once every group belongs to a domain there is nothing left to accept.
+    if ((await accept.getAttribute('aria-disabled')) === 'true') return made;
+    await accept.click();
     const groups = page.getByRole('group', { name: 'Groups that make it' });
     await groups.waitFor();
-    const free = groups.getByRole('checkbox', { disabled: false });
-    if ((await free.count()) === 0) {
-      await page.getByRole('button', { name: 'Cancel', exact: true }).click();
-      return made;
-    }
-    await free.first().check();
+    await groups.getByRole('checkbox', { disabled: false }).first().check();
     await page.getByLabel('Name', { exact: true }).fill(`Rock ${made + 1}`);
     await page.getByLabel('Why this is one domain').fill('One rock by its fingerprint; looked at in the core.');
     await page.getByRole('button', { name: 'Accept as candidate domain' }).click();
