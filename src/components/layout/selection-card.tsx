@@ -69,7 +69,7 @@ interface FactsProps {
 /** Terms at the left, figures at the right. */
 export function Facts({ facts }: FactsProps) {
   return (
-    <dl className="m-0 grid grid-cols-[1fr_auto] gap-x-2 gap-y-0.5 text-small">
+    <dl className="m-0 grid grid-cols-[1fr_auto] content-start gap-x-2 gap-y-0.5 text-small">
       {facts.map(({ term, value, isMono }, index) => (
         <div key={index} className="contents">
           <dt className={`min-w-0 text-ink-2 ${isMono ? 'font-mono text-caption' : ''}`}>{term}</dt>
