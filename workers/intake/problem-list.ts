@@ -6,7 +6,7 @@ export interface FoundProblem extends RowProblem {
 }
 
 /** More than this many are counted but not listed. */
-const LISTED = 50_000;
+export const MOST_LISTED = 50_000;
 const MARKS = 400;
 
 /** Collects row problems, counts them by code and remembers which rows they touch. */
@@ -16,7 +16,7 @@ export class ProblemList {
   readonly #rows = new Map<number, RowProblem['severity']>();
 
   add(problem: FoundProblem): void {
-    if (this.listed.length < LISTED) this.listed.push(problem);
+    if (this.listed.length < MOST_LISTED) this.listed.push(problem);
     const key = `${problem.severity} ${problem.code}`;
     const entry = this.#counts.get(key) ?? { code: problem.code, severity: problem.severity, count: 0 };
     entry.count += 1;

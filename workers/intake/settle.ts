@@ -16,10 +16,10 @@ export type LeftOut = Uint8Array;
 export function settlePending(reader: TableReader, draft: TableDraft, problems: ProblemList): LeftOut {
   const leftOut = new Uint8Array(draft.rows);
   const limitsOf = new Map(reader.plan.analytes.map((column, place) => [column.index, reader.limits[place]]));
-  for (const { column, index, row, text, magnitude } of reader.pending) {
+  for (const { column, index, row, text, magnitude, original } of reader.pending) {
     const limits = limitsOf.get(column.index);
     const { values, qualifiers } = draft.assayColumn(determinationName(column), column.unit, column.method);
-    const problem = { row, column: column.header, value: text, original: '' };
+    const problem = { row, column: column.header, value: text, original };
     const limit = magnitude === null ? (limits?.usual() ?? null) : limits?.isLimit(magnitude) ? magnitude : null;
     if (limit !== null) {
       values.set(index, limit * column.toPpm);

@@ -4,7 +4,7 @@ import { KernelError } from '#kernels/kernel-error.ts';
 import { readNumber } from '#kernels/units/number-text.ts';
 import { ColumnLimits, readAssayCell, type AssayCell } from './assay-cells.ts';
 import { planColumns, type AnalyteColumn, type ColumnPlan } from './column-plan.ts';
-import type { FoundProblem, ProblemList } from './problem-list.ts';
+import { MOST_LISTED, type FoundProblem, type ProblemList } from './problem-list.ts';
 import { checkRow, type CheckContext, type RowValues } from './row-checks.ts';
 import type { GrowingCategory, GrowingNumbers } from './growable.ts';
 import type { AssayDraft, TableDraft } from './table-draft.ts';
@@ -14,7 +14,10 @@ interface PendingCell {
   index: number;
   row: number;
   text: string;
+  /** What a negative cell would be the limit of; null for a zero or a word. */
   magnitude: number | null;
+  /** The record, for a zero or a word, which is told in any case; '' otherwise. */
+  original: string;
 }
 
 type Into<Column> = readonly { role: ColumnRole; column: Column }[];
@@ -184,6 +187,7 @@ export class TableReader implements RowValues {
     for (const { role, column } of kept.numbers) column.push(this.number(role));
     for (const { role, column } of kept.categories) column.push(this.text(role));
     for (const { role, column } of kept.texts) column.push(this.text(role));
+    let original = '';
     for (let place = 0; place < kept.assays.length; place++) {
       const cell = this.#assays[place];
       const column = this.plan.analytes[place];
@@ -193,7 +197,12 @@ export class TableReader implements RowValues {
       const isTold = cell.kind === 'told';
       assay.values.push(isTold ? cell.value * column.toPpm : Number.NaN);
       assay.qualifiers.push(isTold ? cell.qualifier : QUALIFIER.missing);
-      if (!isTold) this.pending.push({ column, index: draft.rows, row, text: cells[column.index] ?? '', magnitude: cell.magnitude });
+      if (isTold) continue;
+      const isTellable = cell.magnitude === null && this.pending.length < MOST_LISTED;
+      if (isTellable && original === '') original = cells.join(this.#mapping.delimiter);
+      this.pending.push({
+        column, index: draft.rows, row, text: cells[column.index] ?? '', magnitude: cell.magnitude, original: isTellable ? original : '',
+      });
     }
     draft.sourceRow.push(row);
   }
