@@ -50,7 +50,7 @@ const LOOSE_SPELLINGS: ReadonlyMap<string, UnitReading> = new Map(
   (
     [
       ['oz/t', 'oz/t ozt'],
-      ['oz/st', 'opt'],
+      ['oz/st', 'opt oz'],
     ] as const
   ).flatMap(([unit, words]) =>
     words.split(' ').map((word): [string, UnitReading] => [word, { unit, isLoose: true }]),

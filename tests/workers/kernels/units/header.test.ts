@@ -59,6 +59,7 @@ describe('parseHeader of analytes', () => {
 
   it('asks about ounces per ton and about a method against the symbol', () => {
     expect(parseHeader('Au_opt')).toMatchObject({ unit: 'oz/st', certainty: 'check' });
+    expect(parseHeader('Ag_oz')).toMatchObject({ element: 'Ag', unit: 'oz/st', method: null, certainty: 'check' });
     expect(parseHeader('Au oz/t')).toMatchObject({ unit: 'oz/t', certainty: 'check' });
     expect(parseHeader('AuFA_ppm')).toMatchObject({
       element: 'Au',
