@@ -245,7 +245,7 @@ describe('identities', () => {
             return { from: from / 100, to: depth / 100, ...rest };
           });
         });
-        const starts = rowsOfHoles.reduce((at, steps) => [...at, at.at(-1)! + steps.length], [0]);
+        const starts = rowsOfHoles.reduce((at, steps) => [...at, at.at(-1) + steps.length], [0]);
         const intervals = {
           holeStarts: Int32Array.from(starts),
           ...tableOf(rows.map(({ from, to }) => [from, to] as const)),
