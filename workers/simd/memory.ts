@@ -1,6 +1,6 @@
 /** Places of the tables that are written once by the host; what lies beyond is the caller's. */
 export const LOG_TABLE: usize = 0;
-export const EXP_TABLE: usize = 2048;
+export const EXP_TABLE: usize = 16384;
 
 /** Sum of both lanes. */
 // @ts-ignore: decorator

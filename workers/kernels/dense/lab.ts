@@ -24,7 +24,7 @@ interface OwnedLab extends Lab {
 const ALIGNMENT = 16;
 const PAGE = 65_536;
 /** The tables of `workers/simd/memory.ts`. */
-const TABLE_BYTES = 4096;
+const TABLE_BYTES = 20_480;
 /** A WebAssembly memory ends here; a page is left over. */
 const LARGEST_BYTES = 2 ** 32 - 2 * PAGE;
 /** Larger memories are given back to the system rather than kept for the next work. */

@@ -1,5 +1,5 @@
 /** Cells [1, 2) is divided into for logarithms. */
-export const LOG_CELLS = 128;
+export const LOG_CELLS = 1024;
 
 /** For each cell 1 / c and ln c, side by side, with c its middle. */
 export const LOG_TABLE = Float64Array.from({ length: 2 * LOG_CELLS }, (_, i) => {
