@@ -8,12 +8,17 @@ import type { CheckFileInput, CheckFileOutput } from '#workers/tasks/check-file.
 import type { LoadFileInput, LoadFileOutput } from '#workers/tasks/load-file.ts';
 import type { IntakeDeps } from './intake.service.ts';
 import { revisionsRepository } from './revisions.repository.ts';
-import { LOADED_ALREADY, mappingOf, uploadsRepository } from './uploads.repository.ts';
+import { LOADED_ALREADY, mappingOf, uploadsRepository, type UploadRow } from './uploads.repository.ts';
 
 const CheckParams = z.strictObject({ uploadId: Id });
 const LoadParams = CheckParams.extend({ mode: z.enum(['replace', 'add']) });
 
 const sha256 = (text: string): string => createHash('sha256').update(text).digest('hex');
+
+/** Two requests of one instant are both taken; the load that comes second, at its start or its end, finds it done. */
+function refuseSecond({ state }: Pick<UploadRow, 'state'>): void {
+  if (state === 'loaded') throw new AppError(409, 'upload-loaded', LOADED_ALREADY);
+}
 
 /** Registers checking and loading of files as jobs; a load is followed by putting the tables together. */
 export function registerIntakeJobs({ clock, jobs, record, files, uploads, revisions }: IntakeDeps): void {
@@ -44,8 +49,7 @@ export function registerIntakeJobs({ clock, jobs, record, files, uploads, revisi
     async prepare({ id, depositId, params }) {
       const { uploadId, mode } = LoadParams.parse(params);
       const { row, input } = await readInput(depositId, uploadId);
-      // Two requests of one instant are both taken; the load that comes second finds it done.
-      if (row.state === 'loaded') throw new AppError(409, 'upload-loaded', LOADED_ALREADY);
+      refuseSecond(row);
       const base = mode === 'add' ? await revisions.currentTable(depositId, mappingOf(row).kind) : undefined;
       return { ...input, baseTableId: base?.table_id ?? null, depositId, uploadId, jobId: id };
     },
@@ -54,6 +58,7 @@ export function registerIntakeJobs({ clock, jobs, record, files, uploads, revisi
       // The pool holds one connection, and the transaction has it: read through it too.
       const inside = { uploads: uploadsRepository(trx), revisions: revisionsRepository(trx) };
       const row = orNotFound(await inside.uploads.row(depositId, uploadId), 'upload');
+      refuseSecond(row);
       const { kind } = mappingOf(row);
       const base = mode === 'add' ? await inside.revisions.currentTable(depositId, kind) : undefined;
       const number = await inside.revisions.nextNumber(trx, depositId);
