@@ -71,14 +71,14 @@ function mixtureReason(
     return `No fit of two populations passed the guards: ${why}.`;
   }
   if (gainLognormal < VERDICT_RULES.gain) {
-    return `One lognormal population is enough: two lower BIC by ${Math.max(0, gainLognormal).toFixed(0)}, less than ${VERDICT_RULES.gain}.`;
+    return `One lognormal population is enough: two lower BIC by ${whole(Math.max(0, gainLognormal))}, less than ${VERDICT_RULES.gain}.`;
   }
-  const several = `${COUNT_WORDS[mixture.k] ?? mixture.k} lognormal populations beat one by BIC ${gainLognormal.toFixed(0)}`;
+  const several = `${COUNT_WORDS[mixture.k] ?? mixture.k} lognormal populations beat one by BIC ${whole(gainLognormal)}`;
   if (bestSingle.kind === 'lognormal' || mixtureClear) {
     const other =
       bestSingle.kind === 'lognormal'
         ? ''
-        : `, and any single population tried by ${gainBestSingle.toFixed(0)}`;
+        : `, and any single population tried by ${whole(gainBestSingle)}`;
     return `${several}${other} (10 is very strong evidence).`;
   }
   const form =
@@ -86,12 +86,12 @@ function mixtureReason(
       ? `one skewed population (power ${skewed.power.toFixed(2)} in place of the logarithm)`
       : `one population cut off at ${grade(Math.exp(truncated?.from ?? NaN), unit)} and ${grade(Math.exp(truncated?.to ?? NaN), unit)}`;
   if (gainBestSingle <= 0)
-    return `${several}, but ${form} explains the grades at least as well (BIC lower by ${(-gainBestSingle).toFixed(0)}).`;
+    return `${several}, but ${form} explains the grades at least as well (BIC lower by ${whole(-gainBestSingle)}).`;
   const small =
     gainBestSingle < VERDICT_RULES.gain
       ? 'less than 10'
       : `${(gainBestSingle / effectiveN).toFixed(3)} per row`;
-  return `${several}, but ${form} comes within ${gainBestSingle.toFixed(0)} of that (${small}).`;
+  return `${several}, but ${form} comes within ${whole(gainBestSingle)} of that (${small}).`;
 }
 
 /** How far the sides stand apart; nothing when no mixture is preferred. */
@@ -114,6 +114,9 @@ function dipReason({ dip }: VerdictInput, { dipClear }: Evidence): string {
     ? `A second mode is significant but too slight to matter (${found}).`
     : `No second mode is shown (${found}).`;
 }
+
+/** A whole number in figures: 621,878. */
+const whole = (value: number): string => Math.round(value).toLocaleString('en');
 
 /** A grade with three significant digits, never in exponents, and its unit. */
 function grade(value: number, unit?: string): string {

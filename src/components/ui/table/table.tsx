@@ -23,8 +23,11 @@ export interface TableProps<Row extends object> {
   /** Further look of a row: set aside, stale. */
   rowClass?: (row: Row) => string | false | undefined;
   firstSort?: SortBy;
-  /** Height in rem above which the table scrolls in itself; long tables need one (28 when left out). */
-  maxHeightRem?: number;
+  /**
+   * Height in rem above which the table scrolls in itself; long tables need one (28 when left out).
+   * `place`: as high as the place its class name gives it.
+   */
+  maxHeightRem?: number | 'place';
   isDense?: boolean;
   /** Shown when there are no rows. */
   empty?: ReactNode;
@@ -71,7 +74,7 @@ export function Table<Row extends object>(props: TableProps<Row>) {
       ref={scroller}
       {...(isScrolling ? { tabIndex: 0, role: 'group', 'aria-label': `${caption}, scrolls` } : {})}
       className={cx('scroll-edge relative min-w-0 overflow-auto', className)}
-      style={maxHeightRem ? { maxHeight: `${maxHeightRem}rem` } : undefined}
+      style={typeof maxHeightRem === 'number' ? { maxHeight: `${maxHeightRem}rem` } : undefined}
     >
       <table
         aria-rowcount={isVirtual ? model.rows.length + 1 : undefined}

@@ -55,6 +55,7 @@ export function HolesTable({ depositId, holes, find, onFind, chosen, onChoose, f
           onPick={({ hole }) => onChoose(hole === chosen ? '' : hole)}
           isPicked={({ hole }) => hole === chosen}
           firstSort={{ header: 'Hole' }}
+          maxHeightRem="place"
           className="min-h-0 flex-1 max-lg:max-h-[32rem]"
           empty={<Empty>No hole or campaign holds “{find.trim()}”.</Empty>}
         />
