@@ -1,4 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import { sortedAscending } from '#kernels/statistics/sort-ascending.ts';
 import { VALUE_STATE } from './replacement.ts';
 
 /** How complete one analyte is: what screening rests on. */
@@ -54,12 +55,12 @@ export function profilePart(values: Float64Array, states: Uint8Array): PartProfi
 /** The four longest runs of equal values, by sorting. */
 function steppedShare(values: Float64Array, states: Uint8Array, nMeasured: number): number {
   if (nMeasured === 0) return 0;
-  const measured = new Float64Array(nMeasured);
+  const found = new Float64Array(nMeasured);
   let count = 0;
   for (let row = 0; row < values.length; row++) {
-    if (states[row] === VALUE_STATE.measured) measured[count++] = values[row]!;
+    if (states[row] === VALUE_STATE.measured) found[count++] = values[row]!;
   }
-  measured.sort();
+  const measured = sortedAscending(found);
   const longest = [0, 0, 0, 0];
   let run = 0;
   for (let i = 0; i < nMeasured; i++) {

@@ -1,6 +1,7 @@
 import { quantileSorted } from 'simple-statistics';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { requireFinite, requireWeights } from './require-finite.ts';
+import { sortedAscending } from './sort-ascending.ts';
 
 function requireProbabilities(probabilities: readonly number[]): void {
   const bad = probabilities.find((p) => !(p >= 0 && p <= 1));
@@ -21,7 +22,7 @@ function requireProbabilities(probabilities: readonly number[]): void {
 export function quantiles(values: ArrayLike<number>, probabilities: readonly number[]): number[] {
   requireFinite(values, 'values');
   requireProbabilities(probabilities);
-  const sorted = Array.from(Float64Array.from(values).sort());
+  const sorted = Array.from(sortedAscending(values));
   return probabilities.map((p) => quantileSorted(sorted, p));
 }
 
