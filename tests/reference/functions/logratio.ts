@@ -60,7 +60,7 @@ const alr: Kernel = (values, nCols, { id, inputs }) => {
 /** Log-ratio coordinates, their moments and the geometry of compositions. */
 export const LOGRATIO: Adapters = {
   closure: table((values, nCols, check) => close(values, nCols, inputNumber(check, 'total'))),
-  clr: table(centredLogRatio),
+  clr: table((parts, nCols) => centredLogRatio(parts, nCols)),
   ilr_helmert: table((values, nCols) => isometricLogRatio(values, helmertBasis(nCols))),
   ilr_pivot: table((values, nCols) => isometricLogRatio(values, pivotBasis(nCols))),
   alr: table(alr),

@@ -1,3 +1,4 @@
+import { KernelError } from '#kernels/kernel-error.ts';
 import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
 import { notPositive, requireShape } from './require-parts.ts';
 
@@ -9,16 +10,23 @@ const BLOCK_VALUES = 4096;
  * Output rows sum to zero, so their covariance matrix is singular (rank at most nCols - 1).
  *
  * @param parts Row-major, shape (nRows, nCols), all in one unit (ppm), every value > 0: replace
- *   values below detection first. Not modified.
+ *   values below detection first. Not modified unless it is `out` too.
  * @param nCols Parts per row, >= 2.
- * @returns New table of the same shape, dimensionless.
+ * @param out Where to write, of the same length; `parts` itself will do. A new table unless given.
+ * @returns `out`, dimensionless.
  * @throws {KernelError} `shape`; `not-positive` with { row, col } at the first value that is not a
  *   finite number > 0.
  * @see Aitchison (1986), The Statistical Analysis of Compositional Data, Chapman & Hall.
  */
-export function centredLogRatio(parts: Float64Array, nCols: number): Float64Array {
+export function centredLogRatio(
+  parts: Float64Array,
+  nCols: number,
+  out: Float64Array = new Float64Array(parts.length),
+): Float64Array {
   const nRows = requireShape(parts, nCols);
-  const out = new Float64Array(parts.length);
+  if (out.length !== parts.length) {
+    throw new KernelError('shape', `expected room for ${parts.length} values, found ${out.length}`);
+  }
   const step = Math.max(1, Math.floor(BLOCK_VALUES / nCols));
   withLab(f64Bytes(step * nCols, 1), (lab) => {
     const [block, noShift] = [lab.f64(step * nCols), lab.f64(1)];

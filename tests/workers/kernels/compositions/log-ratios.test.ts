@@ -169,6 +169,7 @@ describe('refusals', () => {
 
   it.each([
     ['shape', () => centredLogRatio(Float64Array.of(1), 1)],
+    ['shape', () => centredLogRatio(Float64Array.of(1, 2), 2, new Float64Array(3))],
     ['bad-parameter', () => close(x, 3, 0)],
     ['bad-parameter', () => additiveLogRatio(x, 3, 3)],
     ['too-few-parts', () => pivotBasis(1)],
@@ -213,4 +214,14 @@ describe('refusals', () => {
     const { matrix, totalVariance } = variation(Float64Array.of(1, 2, 1, 2, 1, 2), 2);
     expect([...matrix, totalVariance]).toEqual([0, 0, 0, 0, 0]);
   });
+});
+
+it('centredLogRatio writes where it is told, the table itself included', () => {
+  const table = Float64Array.from({ length: 3 * 2000 }, (_, i) => 1 + ((7 * i) % 13));
+  const expected = centredLogRatio(table, 3);
+  const room = new Float64Array(table.length);
+  expect(centredLogRatio(table, 3, room)).toBe(room);
+  expect(room).toEqual(expected);
+  expect(centredLogRatio(table, 3, table)).toBe(table);
+  expect(table).toEqual(expected);
 });
