@@ -2,7 +2,7 @@ import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { pairIndex } from './condensed-distances.ts';
 import { drawRows } from './k-means-starts.ts';
-import type { OnProgress } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 import { byHole, type Regroup } from './stability.ts';
 
 /** Input of `consensus`. */

@@ -1,7 +1,8 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { disjointSets } from './disjoint-sets.ts';
 import { numberGroups } from './number-groups.ts';
-import { packPoints, type OnProgress, type PackedPoints } from './points.ts';
+import { packPoints, type PackedPoints } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Input of `dbscan`. */
 export interface DbscanInput {

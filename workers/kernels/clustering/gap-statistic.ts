@@ -2,7 +2,8 @@ import { Matrix, SVD } from 'ml-matrix';
 import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom, type Random } from '#kernels/random.ts';
 import { kMeans } from './k-means.ts';
-import { packPoints, type OnProgress } from './points.ts';
+import { packPoints } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Input of `gapStatistic`. */
 export interface GapInput {

@@ -9,13 +9,8 @@ import {
 } from './mixture-model.ts';
 import { scaledPoints, unscaleModel } from './mixture-scale.ts';
 import { bestMixtureStart, mixtureRows } from './mixture-search.ts';
-import {
-  hasDistinctRows,
-  packedWeights,
-  packPoints,
-  type OnProgress,
-  type PackedPoints,
-} from './points.ts';
+import { hasDistinctRows, packedWeights, packPoints, type PackedPoints } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Input of `gaussianMixture`. */
 export interface GaussianMixtureInput {

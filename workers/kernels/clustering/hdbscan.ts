@@ -3,7 +3,8 @@ import { condenseTree, pickBranches, type CondensedTree } from './condensed-tree
 import { MAX_DENSITY_ROWS, requireDensityRows } from './dbscan.ts';
 import { treeOfJoins } from './hierarchical.ts';
 import { numberGroups } from './number-groups.ts';
-import { packPoints, type OnProgress } from './points.ts';
+import { packPoints } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 import { coreDistances, reachabilityTree } from './reachability-tree.ts';
 
 /** Input of `hdbscan`. */

@@ -7,7 +7,8 @@ import {
 } from './hierarchical.ts';
 import { kMeans } from './k-means.ts';
 import { numberGroups } from './number-groups.ts';
-import { packPoints, type OnProgress } from './points.ts';
+import { packPoints } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Input of `hierarchicalGroups`. */
 export interface HierarchicalGroupsInput {

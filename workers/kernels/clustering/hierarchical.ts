@@ -1,7 +1,8 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { condensedDistances, pairIndex } from './condensed-distances.ts';
 import { disjointSets } from './disjoint-sets.ts';
-import { packPoints, type OnProgress } from './points.ts';
+import { packPoints } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** How the distance between two groups follows from those of their rows. */
 export type Linkage = 'ward' | 'average' | 'complete';

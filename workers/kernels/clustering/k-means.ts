@@ -4,14 +4,8 @@ import { seededRandom } from '#kernels/random.ts';
 import { exchangeRows } from './exchange.ts';
 import { drawRows, kMeansStarts } from './k-means-starts.ts';
 import { groupBytes, lloyd, lloydOf, type LloydResult } from './lloyd.ts';
-import {
-  hasDistinctRows,
-  packedWeights,
-  packPoints,
-  takeRows,
-  type OnProgress,
-  type PackedPoints,
-} from './points.ts';
+import { hasDistinctRows, packedWeights, packPoints, takeRows, type PackedPoints } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 import { evenStride, rowTableBytes, unpadded } from './row-table.ts';
 
 /** Input of `kMeans`. */

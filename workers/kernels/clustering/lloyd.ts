@@ -2,7 +2,7 @@ import { copyInto, f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
 import { NO_LABEL, type DenseMath, type RowGroups, type RowTable } from '#kernels/dense/dense-math.ts';
 import { squaredDistance } from '#kernels/dense/squared-distance.ts';
 import { evenStride, rowTableBytes, rowTableOf, unpadded } from './row-table.ts';
-import type { OnProgress } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Where Lloyd's iterations start and when they stop. */
 export interface LloydInput {

@@ -2,7 +2,7 @@ import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { errorSource, redraw, type ErrorSource, type PartUnderError } from './assay-error.ts';
 import type { Labels } from './group-moments.ts';
-import type { OnProgress } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Input of `membershipUnderError`. */
 export interface MembershipUnderErrorInput {

@@ -5,7 +5,8 @@ import { kMeans } from './k-means.ts';
 import { mixtureEm, type EmRest, type EmRules } from './mixture-em-steps.ts';
 import type { CovarianceFamily, MixtureModel } from './mixture-model.ts';
 import type { MixtureRows } from './mixture-sums.ts';
-import { hasDistinctRows, takeRows, type OnProgress } from './points.ts';
+import { hasDistinctRows, takeRows } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** What the search works on. */
 export interface MixtureSearchInput {

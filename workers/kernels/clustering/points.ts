@@ -12,9 +12,6 @@ export interface PackedPoints {
   nDropped: number;
 }
 
-/** Progress of a long loop, 0 to 1; may throw to cancel. */
-export type OnProgress = (share: number) => void;
-
 /** Where rows are packed. */
 export interface PackingOptions {
   /** Coordinates per row once padded with zeros, at least as many as columns. */

@@ -1,6 +1,6 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import type { Join } from './hierarchical.ts';
-import type { OnProgress } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /**
  * Distance of each row to its `minSamples`-th nearest row, itself counted as the first.

@@ -2,7 +2,8 @@ import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { groupedPoints, type GroupedPoints, type Labels } from './group-moments.ts';
 import { drawRows } from './k-means-starts.ts';
-import { takeRows, type OnProgress } from './points.ts';
+import { takeRows } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Settings of `silhouette`. */
 export interface SilhouetteOptions {

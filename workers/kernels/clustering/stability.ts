@@ -1,7 +1,7 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { compactLabels, type Labels } from './group-moments.ts';
-import type { OnProgress } from './points.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 /** Groups the given rows afresh: labels 1..K in their order, 0 = unassigned. */
 export type Regroup = (rows: Uint32Array, resample: number) => Labels;

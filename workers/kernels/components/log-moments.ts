@@ -1,10 +1,8 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 import { requireColumns } from '#kernels/compositions/require-parts.ts';
 import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
 import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, paddedParts, type LogBlock } from './log-block.ts';
-
-/** Called with the share done, some hundreds of times; it may throw to cancel. */
-export type OnProgress = (share: number) => void;
 
 /** Means and centred cross products of ln x over some rows. */
 export interface LogMoments {

@@ -1,7 +1,7 @@
 import { EVD, Matrix } from 'ml-matrix';
 import { KernelError } from '#kernels/kernel-error.ts';
 import type { Random } from '#kernels/random.ts';
-import type { OnProgress } from './log-moments.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 import {
   candidateOf,
   concentrate,

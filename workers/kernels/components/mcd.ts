@@ -3,7 +3,7 @@ import { seededRandom } from '#kernels/random.ts';
 import { quantiles } from '#kernels/statistics/quantile.ts';
 import { chiSquareQuantile } from './chi-square-quantile.ts';
 import { cholesky, squaredDistances } from './cholesky.ts';
-import type { OnProgress } from './log-moments.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 import { consistencyFactor, smallSampleFactor } from './mcd-factors.ts';
 import { searchSubset } from './mcd-search.ts';
 import { subsetMoments } from './mcd-steps.ts';

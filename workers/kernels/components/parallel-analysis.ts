@@ -8,7 +8,7 @@ import { matrixOf, type ComponentBasis } from './components.ts';
 import { countAbove } from './component-count.ts';
 import { eigenOfCovariance } from './eigen.ts';
 import { BLOCK_ROWS, paddedParts } from './log-block.ts';
-import type { OnProgress } from './log-moments.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 export interface ParallelOptions {
   seed: number;

@@ -3,7 +3,7 @@ import { requireColumns } from '#kernels/compositions/require-parts.ts';
 import type { Components } from './components.ts';
 import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
 import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, paddedParts, type LogBlock } from './log-block.ts';
-import type { OnProgress } from './log-moments.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 
 export interface ScoreOptions {
   /** Rows to score: those with a value other than 0; all when left out. */

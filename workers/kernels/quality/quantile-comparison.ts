@@ -1,4 +1,5 @@
 import { KernelError } from '#kernels/kernel-error.ts';
+import type { OnProgress } from '#kernels/progress.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { quantiles } from '#kernels/statistics/quantile.ts';
 import { requireFinite } from '#kernels/statistics/require-finite.ts';
@@ -30,7 +31,7 @@ const FEWEST = 5;
 export function compareQuantiles(
   first: Float64Array,
   second: Float64Array,
-  { seed }: { seed: number },
+  { seed, onProgress }: { seed: number; onProgress?: OnProgress },
 ): QuantileComparison {
   for (const side of [first, second]) {
     requireFinite(side, 'values');
@@ -51,7 +52,10 @@ export function compareQuantiles(
     for (let i = 0; i < values.length; i++) sum += values[random.below(values.length)]!;
     return sum / values.length;
   };
-  const draws = Array.from({ length: DRAWS }, () => 100 * (drawMean(second) / drawMean(first) - 1));
+  const draws = Array.from({ length: DRAWS }, (_, draw) => {
+    onProgress?.(draw / DRAWS);
+    return 100 * (drawMean(second) / drawMean(first) - 1);
+  });
   const [low = NaN, high = NaN] = quantiles(
     draws.filter((draw) => Number.isFinite(draw)),
     [0.025, 0.975],
