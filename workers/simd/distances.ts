@@ -1,7 +1,6 @@
 import { both } from './memory';
 
-/** Distances of one row to eight others, or to fewer by `step` pairs. */
-// @ts-ignore: decorator
+/** Squared distances of one row to two others. */
 @inline
 function squaresTo(x: usize, step: usize, p: i32, a: usize, b: usize): v128 {
   let sq = f64x2.splat(0);

@@ -10,7 +10,6 @@ const STEP_HIGH: f64 = f64(f32(LN_2 / STEPS));
 const STEP_LOW: f64 = LN_2 / STEPS - STEP_HIGH + LN_2_REST / STEPS;
 
 /** e^x in both lanes for -700 <= x <= 0, the way of `expOfNegative` in `workers/kernels/exp.ts`. */
-// @ts-ignore: decorator
 @inline
 export function expTwo(x: v128): v128 {
   const steps = i32x4.trunc_sat_f64x2_s_zero(f64x2.sub(f64x2.splat(0.5), f64x2.mul(x, f64x2.splat(PER_UNIT))));

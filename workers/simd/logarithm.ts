@@ -11,14 +11,12 @@ const LN_2: f64 = 0.6931471805599453;
 const THIRD: f64 = 1.0 / 3.0;
 
 /** Place in the table of the cell of a normal number. */
-// @ts-ignore: decorator
 @inline
 function cellOf(bits: u64): usize {
   return LOG_TABLE + (usize(bits >> 38) & 0x3ff0);
 }
 
 /** ln x of a normal number > 0; `raised` powers of two are taken off again. */
-// @ts-ignore: decorator
 @inline
 function lnNormal(x: f64, raised: f64): f64 {
   const bits = reinterpret<u64>(x);
@@ -37,7 +35,6 @@ export function lnOne(x: f64): f64 {
 }
 
 /** ln of two normal numbers > 0, the way of `lnNormal` in both lanes; their cells are at `a` and `b`. */
-// @ts-ignore: decorator
 @inline
 function lnTwo(bits: v128, field: v128, cellA: usize, cellB: usize): v128 {
   const a = v128.load(cellA);
@@ -55,14 +52,12 @@ function lnTwo(bits: v128, field: v128, cellA: usize, cellB: usize): v128 {
 }
 
 /** ln of two normal numbers > 0. */
-// @ts-ignore: decorator
 @inline
 export function lnTwoNormal(x: v128): v128 {
   return lnTwo(x, i64x2.shr_u(x, 52), cellOf(i64x2.extract_lane(x, 0)), cellOf(i64x2.extract_lane(x, 1)));
 }
 
 /** True in the lanes of zero, subnormal, negative and infinite numbers and of what is none: a field outside 1 to 2046. */
-// @ts-ignore: decorator
 @inline
 function isOdd(field: v128): v128 {
   return v128.or(i64x2.gt_s(field, i64x2.splat(2046)), i64x2.lt_s(field, i64x2.splat(1)));

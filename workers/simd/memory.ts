@@ -3,7 +3,6 @@ export const LOG_TABLE: usize = 0;
 export const EXP_TABLE: usize = 16384;
 
 /** Sum of both lanes. */
-// @ts-ignore: decorator
 @inline
 export function both(v: v128): f64 {
   return f64x2.extract_lane(v, 0) + f64x2.extract_lane(v, 1);

@@ -1,14 +1,13 @@
 import { both } from './memory';
 
 /** Adds to four cells of a row-major square the sums of four pairs of lanes. */
-// @ts-ignore: decorator
 @inline
 function addTwo(cell: usize, a: v128, b: v128): void {
   store<f64>(cell, load<f64>(cell) + both(a));
   store<f64>(cell, load<f64>(cell, 8) + both(b), 8);
 }
 
-/** cross[i, j] += Σ x_i[r] x_j[r] of four columns i by two columns j; rows go two by two. */
+/** cross[i, j] += Σ x_i[r] x_j[r] of four columns i by two columns j, over whole pairs of rows. */
 function addTile(x: usize, step: usize, count: i32, cell: usize, width: usize, i: i32, j: i32): void {
   let p = x + usize(i) * step;
   let q = x + usize(j) * step;
@@ -39,26 +38,21 @@ function addTile(x: usize, step: usize, count: i32, cell: usize, width: usize, i
     d0 = f64x2.add(d0, f64x2.mul(value, y0));
     d1 = f64x2.add(d1, f64x2.mul(value, y1));
   }
-  if (count & 1) {
-    const y0 = v128.load64_zero(q);
-    const y1 = v128.load64_zero(q + step);
-    let value = v128.load64_zero(p);
-    a0 = f64x2.add(a0, f64x2.mul(value, y0));
-    a1 = f64x2.add(a1, f64x2.mul(value, y1));
-    value = v128.load64_zero(p + step);
-    b0 = f64x2.add(b0, f64x2.mul(value, y0));
-    b1 = f64x2.add(b1, f64x2.mul(value, y1));
-    value = v128.load64_zero(p + step2);
-    c0 = f64x2.add(c0, f64x2.mul(value, y0));
-    c1 = f64x2.add(c1, f64x2.mul(value, y1));
-    value = v128.load64_zero(p + step3);
-    d0 = f64x2.add(d0, f64x2.mul(value, y0));
-    d1 = f64x2.add(d1, f64x2.mul(value, y1));
-  }
   addTwo(cell, a0, a1);
   addTwo(cell + width, b0, b1);
   addTwo(cell + 2 * width, c0, c1);
   addTwo(cell + 3 * width, d0, d1);
+}
+
+/** Adds the products of one row, the last of an odd number. */
+function addRowProducts(row: usize, step: usize, nCols: i32, cross: usize): void {
+  for (let i = 0; i < nCols; i++) {
+    const value = load<f64>(row + usize(i) * step);
+    for (let j = i & ~3; j < nCols; j++) {
+      const cell = cross + (usize(i * nCols + j) << 3);
+      store<f64>(cell, load<f64>(cell) + value * load<f64>(row + usize(j) * step));
+    }
+  }
 }
 
 /** See `DenseMath.addCrossProducts`. */
@@ -70,6 +64,7 @@ export function addCrossProducts(x: usize, stride: i32, count: i32, nCols: i32, 
       addTile(x, step, count, cross + usize(i) * width + (usize(j) << 3), width, i, j);
     }
   }
+  if (count & 1) addRowProducts(x + (usize(count - 1) << 3), step, nCols, cross);
 }
 
 /** See `DenseMath.addColumnSums`. */
@@ -86,7 +81,6 @@ export function addColumnSums(x: usize, stride: i32, count: i32, nCols: i32, sum
 }
 
 /** Four weighted sums of the columns for two rows, or for the last one. */
-// @ts-ignore: decorator
 @inline
 function projectTwo(x: usize, step: usize, nCols: i32, weights: usize, out: usize, isPair: bool): void {
   let a = f64x2.splat(0);
@@ -114,7 +108,6 @@ function projectTwo(x: usize, step: usize, nCols: i32, weights: usize, out: usiz
 }
 
 /** Four weighted sums of the columns for four rows. */
-// @ts-ignore: decorator
 @inline
 function projectFour(x: usize, step: usize, nCols: i32, weights: usize, out: usize): void {
   let a0 = f64x2.splat(0);

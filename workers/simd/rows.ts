@@ -1,7 +1,6 @@
 import { both } from './memory';
 
 /** Squared distance of two stretches of an even number of coordinates. */
-// @ts-ignore: decorator
 @inline
 export function squaredDistance(a: usize, b: usize, stride: i32): f64 {
   let sum = f64x2.splat(0);
@@ -14,7 +13,6 @@ export function squaredDistance(a: usize, b: usize, stride: i32): f64 {
 }
 
 /** The same for eight coordinates whose first row is in registers. */
-// @ts-ignore: decorator
 @inline
 function squaredDistance8(x0: v128, x1: v128, x2: v128, x3: v128, centre: usize): f64 {
   const d0 = f64x2.sub(x0, v128.load(centre));
@@ -31,7 +29,6 @@ let nearestSq: f64 = 0;
 let nextSq: f64 = 0;
 
 /** The nearest centre of a row, the first one on a tie. */
-// @ts-ignore: decorator
 @inline
 function nearestOf(row: usize, stride: i32, centres: usize, k: i32): i32 {
   let best = 0;
@@ -79,7 +76,6 @@ export function nearestTwo(
 const NONE: u8 = 255;
 
 /** Adds a row, `weight` times, to the sums of a group. */
-// @ts-ignore: decorator
 @inline
 function addRow(sums: usize, row: usize, stride: i32, weight: f64): void {
   const w = f64x2.splat(weight);
@@ -141,7 +137,6 @@ export function sumGroups(
 }
 
 /** Moves a centre by `share` of the way to a row; returns how far, squared. */
-// @ts-ignore: decorator
 @inline
 function shift(centre: usize, row: usize, stride: i32, share: f64): f64 {
   const part = f64x2.splat(share);

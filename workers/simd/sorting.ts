@@ -3,13 +3,11 @@ const BUCKETS = 1 << DIGITS;
 const PASSES = 6;
 
 /** Bits that order like the double: negative numbers turned over, the sign of the others set. */
-// @ts-ignore: decorator
 @inline
 function ordered(bits: u64): u64 {
   return bits ^ (u64(i64(bits) >> 63) | 0x8000000000000000);
 }
 
-// @ts-ignore: decorator
 @inline
 function restored(key: u64): u64 {
   return key ^ (u64(i64(~key) >> 63) | 0x8000000000000000);

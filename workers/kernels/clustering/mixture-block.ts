@@ -1,17 +1,14 @@
 import { copyInto, f64Bytes, type Lab } from '#kernels/dense/lab.ts';
-import type { MixtureRoom, MixtureTables } from '#kernels/dense/dense-math.ts';
+import { columnsByFour, type MixtureRoom, type MixtureTables } from '#kernels/dense/dense-math.ts';
 import { isAxial, type MixtureDensity } from './mixture-model.ts';
 import { packedSize } from './packed-cholesky.ts';
 
 /** Rows worked on together, so that every inner loop runs over rows and everything stays in cache. */
 export const BLOCK_ROWS = 256;
 
-/** Coordinates rounded up to a multiple of four columns. */
-export const paddedColumns = (p: number): number => 4 * Math.ceil(p / 4);
-
 /** Bytes of a lab that a block and a density take. */
 export const mixtureBlockBytes = (k: number, p: number): number =>
-  f64Bytes(...[p, k, paddedColumns(p), 1, 1, 1].map((columns) => columns * BLOCK_ROWS)) +
+  f64Bytes(...[p, k, columnsByFour(p), 1, 1, 1].map((columns) => columns * BLOCK_ROWS)) +
   f64Bytes(k * p, k * packedSize(p), k);
 
 /** A block of rows for models of K groups and p coordinates. */
@@ -22,7 +19,7 @@ export function mixtureBlock(lab: Lab, k: number, p: number): MixtureRoom {
     x: lab.f64(p * BLOCK_ROWS),
     shares: lab.f64(k * BLOCK_ROWS),
     logDensity: lab.f64(BLOCK_ROWS),
-    deviations: lab.f64(paddedColumns(p) * BLOCK_ROWS),
+    deviations: lab.f64(columnsByFour(p) * BLOCK_ROWS),
     rows: lab.u32(BLOCK_ROWS),
     roots: lab.f64(BLOCK_ROWS),
   };

@@ -1,6 +1,6 @@
 import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
-import type { MixtureMoments } from '#kernels/dense/dense-math.ts';
-import { BLOCK_ROWS, densityTables, fillBlock, mixtureBlock, mixtureBlockBytes, paddedColumns } from './mixture-block.ts';
+import { columnsByFour, type MixtureMoments } from '#kernels/dense/dense-math.ts';
+import { BLOCK_ROWS, densityTables, fillBlock, mixtureBlock, mixtureBlockBytes } from './mixture-block.ts';
 import { isAxial, type MixtureDensity, type MixtureModel } from './mixture-model.ts';
 import { packedSize } from './packed-cholesky.ts';
 
@@ -41,7 +41,7 @@ export function sumResponsibilities(
   sums: MixtureSums,
 ): void {
   const { k, p, family } = density.model;
-  const nCols = paddedColumns(p);
+  const nCols = columnsByFour(p);
   const momentBytes = f64Bytes(k * p, k * p, k * nCols * nCols);
   withLab(mixtureBlockBytes(k, p) + momentBytes, (lab) => {
     const { math } = lab;

@@ -1,6 +1,6 @@
 import { notPositive } from '#kernels/compositions/require-parts.ts';
 import { f64Bytes, type Lab } from '#kernels/dense/lab.ts';
-import type { DenseMath } from '#kernels/dense/dense-math.ts';
+import { columnsByFour, type DenseMath } from '#kernels/dense/dense-math.ts';
 
 /** Rows logs are taken of at a time: 256 rows of 48 parts stay in the second-level cache. */
 export const BLOCK_ROWS = 256;
@@ -18,21 +18,17 @@ export interface LogBlock {
 
 /** Bytes of a lab that a block takes. */
 export const logBlockBytes = (nParts: number): number =>
-  f64Bytes(paddedParts(nParts) * BLOCK_ROWS, nParts);
+  f64Bytes(columnsByFour(nParts) * BLOCK_ROWS, nParts);
 
 /** Room for a block; the number of parts is rounded up to a multiple of four. */
 export function emptyLogBlock(lab: Lab, nParts: number): LogBlock {
   return {
     math: lab.math,
-    logs: lab.f64(paddedParts(nParts) * BLOCK_ROWS),
+    logs: lab.f64(columnsByFour(nParts) * BLOCK_ROWS),
     shift: lab.f64(nParts),
     rows: new Uint32Array(BLOCK_ROWS),
     count: 0,
   };
-}
-
-export function paddedParts(nParts: number): number {
-  return 4 * Math.ceil(nParts / 4);
 }
 
 /**

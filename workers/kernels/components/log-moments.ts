@@ -2,7 +2,8 @@ import { KernelError } from '#kernels/kernel-error.ts';
 import type { OnProgress } from '#kernels/progress.ts';
 import { requireColumns } from '#kernels/compositions/require-parts.ts';
 import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
-import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, paddedParts, type LogBlock } from './log-block.ts';
+import { columnsByFour } from '#kernels/dense/dense-math.ts';
+import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, type LogBlock } from './log-block.ts';
 
 /** Means and centred cross products of ln x over some rows. */
 export interface LogMoments {
@@ -57,7 +58,7 @@ export function logMomentsOfSpan(
   }
   const [from, to] = [span * SPAN_ROWS, Math.min((span + 1) * SPAN_ROWS, nRows)];
   const nParts = columns.length;
-  const padded = paddedParts(nParts);
+  const padded = columnsByFour(nParts);
   return withLab(logBlockBytes(nParts) + f64Bytes(padded * padded, nParts), (lab) => {
     const room = chunkRoom(lab, nParts);
     const total = emptyMoments(nParts);
@@ -112,7 +113,7 @@ interface ChunkRoom {
 function chunkRoom(lab: Lab, nParts: number): ChunkRoom {
   return {
     block: emptyLogBlock(lab, nParts),
-    cross: lab.f64(paddedParts(nParts) ** 2),
+    cross: lab.f64(columnsByFour(nParts) ** 2),
     sums: lab.f64(nParts),
   };
 }
@@ -126,7 +127,7 @@ function momentsOfChunk(
   { block, cross, sums }: ChunkRoom,
 ): LogMoments {
   const nParts = columns.length;
-  const padded = paddedParts(nParts);
+  const padded = columnsByFour(nParts);
   const moments = emptyMoments(nParts);
   const first = mask ? mask.subarray(from, to).findIndex((use) => use !== 0) + from : from;
   if (first < from) return moments;

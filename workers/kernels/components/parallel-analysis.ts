@@ -1,13 +1,13 @@
 import { KernelError } from '#kernels/kernel-error.ts';
 import { requireColumns, notPositive } from '#kernels/compositions/require-parts.ts';
 import { f64Bytes, withLab } from '#kernels/dense/lab.ts';
-import type { DenseMath } from '#kernels/dense/dense-math.ts';
+import { columnsByFour, type DenseMath } from '#kernels/dense/dense-math.ts';
 import { seededRandom, type Random } from '#kernels/random.ts';
 import { quantiles } from '#kernels/statistics/quantile.ts';
 import { matrixOf, type ComponentBasis } from './components.ts';
 import { countAbove } from './component-count.ts';
 import { eigenOfCovariance } from './eigen.ts';
-import { BLOCK_ROWS, paddedParts } from './log-block.ts';
+import { BLOCK_ROWS } from './log-block.ts';
 import type { OnProgress } from '#kernels/progress.ts';
 
 export interface ParallelOptions {
@@ -63,7 +63,7 @@ export function parallelAnalysis(
   }
   const random = seededRandom(seed);
   const rows = sampleRows(nRows, options.mask, maxRows, random);
-  const padded = paddedParts(columns.length);
+  const padded = columnsByFour(columns.length);
   return withLab(f64Bytes(padded * rows.length, padded * padded), (lab) => {
     const table: LogTable = {
       math: lab.math,
@@ -151,7 +151,7 @@ interface LogTable {
 }
 
 function spectrum({ math, basis, n, nParts, logs, cross }: LogTable): number[] {
-  const padded = paddedParts(nParts);
+  const padded = columnsByFour(nParts);
   cross.fill(0);
   for (let from = 0; from < n; from += BLOCK_ROWS) {
     math.addCrossProducts(logs.subarray(from), n, Math.min(BLOCK_ROWS, n - from), padded, cross);

@@ -2,7 +2,8 @@ import { KernelError } from '#kernels/kernel-error.ts';
 import { requireColumns } from '#kernels/compositions/require-parts.ts';
 import type { Components } from './components.ts';
 import { f64Bytes, withLab, type Lab } from '#kernels/dense/lab.ts';
-import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, paddedParts, type LogBlock } from './log-block.ts';
+import { columnsByFour } from '#kernels/dense/dense-math.ts';
+import { BLOCK_ROWS, emptyLogBlock, fillLogBlock, logBlockBytes, type LogBlock } from './log-block.ts';
 import type { OnProgress } from '#kernels/progress.ts';
 
 export interface ScoreOptions {
@@ -38,7 +39,7 @@ export function scoreComponents(
   const scores = options.out ?? Array.from({ length: k }, () => new Float64Array(nRows).fill(NaN));
   requireScoring(columns, components, k, nRows, { scores, mask, from, to });
   const nParts = columns.length;
-  const outputs = paddedParts(k);
+  const outputs = columnsByFour(k);
   withLab(logBlockBytes(nParts) + f64Bytes(outputs * nParts, outputs * BLOCK_ROWS), (lab) => {
     const block = emptyLogBlock(lab, nParts);
     block.shift.set(components.logMean);
@@ -95,7 +96,7 @@ function requireScoring(
 
 /** Weights of the first k components, four after four: a group's four stand together per part. */
 function scoreTable(lab: Lab, { weights, eigenvalues, nParts }: Components, k: number): Float64Array {
-  const table = lab.f64(paddedParts(k) * nParts);
+  const table = lab.f64(columnsByFour(k) * nParts);
   for (let component = 0; component < k; component++) {
     const group = (component >> 2) * 4 * nParts;
     for (let part = 0; part < nParts; part++) {

@@ -129,6 +129,9 @@ export interface MixtureMoments {
   nCols: number;
 }
 
+/** Columns rounded up to the multiple of four that products are taken of. */
+export const columnsByFour = (n: number): number => 4 * Math.ceil(n / 4);
+
 /** Numbers `DenseMath.sort` counts with. */
 export const SORT_COUNTS = 6 * 2048;
 /** No group yet. */

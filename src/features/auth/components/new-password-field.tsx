@@ -17,7 +17,7 @@ export function NewPasswordField({ label, error, register, controlSize = 'normal
       type="password"
       autoComplete="new-password"
       controlSize={controlSize}
-      hint="At least 12 characters: any sentence will do. Not a common password, nor one with your name in it."
+      hint="12 to 72 characters, accented letters counting double: a sentence will do. Not a common password, nor one with your name in it."
       error={error}
       {...register}
     />
