@@ -46,6 +46,14 @@ export function* kMeansStarts(input: StartsInput): Generator<Float64Array> {
   }
 }
 
+/** Growth from one sample to the next. */
+const SAMPLE_GROWTH = 10;
+
+/** Sizes of the samples on the way from a first one to all n rows, ten times larger each. */
+export function* largerSamples(first: number, n: number): Generator<number> {
+  for (let size = first * SAMPLE_GROWTH; size < n; size *= SAMPLE_GROWTH) yield size;
+}
+
 /** `count` different rows of n in ascending order, one drawn from each of `count` equal stretches. */
 export function drawRows(n: number, count: number, random: Random): Uint32Array {
   const rows = new Uint32Array(count);

@@ -2,7 +2,7 @@ import { KernelError } from '#kernels/kernel-error.ts';
 import { copyInto, withLab, type Lab } from '#kernels/dense/lab.ts';
 import { seededRandom } from '#kernels/random.ts';
 import { exchangeRows } from './exchange.ts';
-import { drawRows, kMeansStarts } from './k-means-starts.ts';
+import { drawRows, kMeansStarts, largerSamples } from './k-means-starts.ts';
 import { groupBytes, lloyd, lloydOf, type LloydResult } from './lloyd.ts';
 import { hasDistinctRows, packedWeights, packPoints, takeRows, type PackedPoints } from './points.ts';
 import type { OnProgress } from '#kernels/progress.ts';
@@ -61,8 +61,6 @@ const LAST_SHARE = 0.4;
 const EXCHANGE_PASSES = 20;
 /** How much coarser than the final tolerance a restart may stop (squared distances). */
 const START_LOOSENESS = 100;
-/** Growth from one sample to the next on the way to all rows. */
-const SAMPLE_GROWTH = 10;
 
 /** Most groups that can be asked for. */
 const MOST_GROUPS = 250;
@@ -208,13 +206,12 @@ const byInertia = (a: { inertia: number }, b: { inertia: number }): number => a.
 const distinct = (sorted: readonly LloydResult[]): LloydResult[] =>
   sorted.filter(({ inertia }, i) => i === 0 || inertia > sorted[i - 1]!.inertia * (1 + 1e-9));
 
-
 /** Lloyd on samples of growing size, at last on all rows. */
 function polish(lab: Lab, plan: Plan, start: Float64Array): LloydResult {
   const { packed, weights, maxIterations, minMove, onProgress } = plan;
   const { points, n, p } = packed;
   let centres = start;
-  for (let size = plan.sampleSize * SAMPLE_GROWTH; size < n; size *= SAMPLE_GROWTH) {
+  for (const size of largerSamples(plan.sampleSize, n)) {
     centres = lloyd({ ...sampleOf(plan, size), p, centres, maxIterations, minMove }).centres;
   }
   const rows = { points, n, stride: p, weights: weights && copyInto(lab, weights) };

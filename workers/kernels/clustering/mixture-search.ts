@@ -1,6 +1,6 @@
 import { seededRandom } from '#kernels/random.ts';
 import { gaussianMixtureStarts } from './gaussian-mixture-starts.ts';
-import { drawRows } from './k-means-starts.ts';
+import { drawRows, largerSamples } from './k-means-starts.ts';
 import { kMeans } from './k-means.ts';
 import { mixtureEm, type EmRest, type EmRules } from './mixture-em-steps.ts';
 import type { CovarianceFamily, MixtureModel } from './mixture-model.ts';
@@ -27,9 +27,6 @@ export interface MixtureSearchInput {
 const HEAT = { rows: 3000, maxSteps: 100, tolerance: 1e-5 };
 /** ... after which this share of the starts goes on, at least three. */
 const FINALIST_SHARE = 0.5;
-
-/** Growth from one sample to the next on the way to all rows. */
-const SAMPLE_GROWTH = 10;
 
 /** Rows with their weights for EM. */
 export const mixtureRows = (
@@ -76,7 +73,7 @@ export function bestMixtureStart(input: MixtureSearchInput): MixtureModel {
 /** EM on samples of growing size: few steps are then left to take on all rows. */
 function throughLargerSamples(input: MixtureSearchInput, start: MixtureModel): MixtureModel {
   let model = start;
-  for (let size = input.sampleSize * SAMPLE_GROWTH; size < input.points.length / input.p; size *= SAMPLE_GROWTH) {
+  for (const size of largerSamples(input.sampleSize, input.points.length / input.p)) {
     ({ model } = mixtureEm(model, sampled(input, size), input.rules));
   }
   return model;
